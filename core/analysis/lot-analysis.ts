@@ -1,0 +1,144 @@
+/**
+ * What one run of the pipeline found: columns a site, a row a wafer, one lot. The window, the command line and the
+ * report all read this and compute nothing of their own.
+ */
+import type { Readings } from '../ingest/readings'
+import type { Outline } from '../wafer/outline'
+import type { Problem } from '../problems/problem'
+import type { Procedure } from '../procedure/schema'
+
+export type Verdict = 'in-spec' | 'out-of-spec' | 'undecided' | 'not-assessed'
+/** Order of the codes in verdict columns. */
+export const VERDICTS = ['in-spec', 'out-of-spec', 'undecided', 'not-assessed'] as const satisfies readonly Verdict[]
+
+export interface LotAnalysis {
+  readonly procedure: Procedure
+  /** Dotted keys of every procedure default that was used, with its value. */
+  readonly defaults: readonly { readonly key: string; readonly value: string }[]
+  readonly readings: Readings
+  readonly outline: Outline
+  readonly quantity: Quantity
+  readonly sites: SiteColumns
+  readonly dies: DieColumns | null
+  readonly wafers: readonly WaferAnalysis[]
+  readonly lot: LotSummary
+  /** Rejected rows and everything else that was wrong, in reading order. */
+  readonly problems: readonly Problem[]
+  /** What was assumed or left undone, in sentences ("no temperature correction: ..."). */
+  readonly notes: readonly string[]
+}
+
+/** What is judged and mapped: statistics, limits and maps are all of this. */
+export interface Quantity {
+  readonly id: 'sheet-resistance' | 'resistivity'
+  readonly title: string
+  readonly symbol: string
+  readonly unit: string
+  /** For JSON and CSV. */
+  readonly asciiUnit: 'ohm/sq' | 'ohm.cm'
+}
+
+/** One entry a reading of `readings`, same order. A quantity not given or not computable is NaN. */
+export interface SiteColumns {
+  readonly count: number
+  readonly vOverI_ohm: Float64Array
+  readonly vOverIB_ohm: Float64Array | null
+  /** Rs/(V/I) of the thin sheet: geometry and pin spacing together. */
+  readonly geometryFactor: Float64Array
+  readonly thicknessFactor: Float64Array
+  readonly temperatureFactor: Float64Array
+  readonly sheetResistance_ohm_sq: Float64Array
+  readonly resistivity_ohm_cm: Float64Array
+  readonly concentration_cm3: Float64Array
+  readonly dose_cm2: Float64Array
+  readonly thickness_um: Float64Array
+  /** Combined standard uncertainties. */
+  readonly uSheetResistance_ohm_sq: Float64Array
+  readonly uResistivity_ohm_cm: Float64Array
+  readonly uConcentration_cm3: Float64Array
+  /** The judged quantity's uncertainty, apart: common to all sites, and each site's own. */
+  readonly uShared: Float64Array
+  readonly uIndependent: Float64Array
+  /** The column that is judged: one of the above, not a copy. */
+  readonly value: Float64Array
+  readonly u: Float64Array
+  readonly conformanceProbability: Float64Array
+  /** Codes in the order of VERDICTS. */
+  readonly verdict: Uint8Array
+  /** Bits of SITE_FLAGS. */
+  readonly flags: Uint32Array
+}
+
+export interface Statistics {
+  readonly count: number
+  readonly mean: number
+  readonly median: number
+  /** Sample standard deviation, divisor n-1; NaN for one site. */
+  readonly standardDeviation: number
+  readonly min: number
+  readonly max: number
+  readonly range: number
+  /** Every non-uniformity in use, each with its formula; see statistics/nonuniformity.ts. */
+  readonly nonuniformity: readonly { readonly id: string; readonly formula: string; readonly percent: number }[]
+  /** SEMI MF1618 SUP, 100 s / mean. */
+  readonly nonuniformityPercent: number
+  /** SEMI MF1618 HLV, 200 (max - min) / (max + min). */
+  readonly rangePercent: number
+}
+
+export interface WaferAnalysis {
+  /** Index into readings.wafers. */
+  readonly index: number
+  readonly id: string
+  readonly slot: number
+  /** Indices into the site columns, in reading order. */
+  readonly sites: Uint32Array
+  /** Of the judged quantity over the sites that count: a value, and outside the edge exclusion. */
+  readonly statistics: Statistics
+  /** Standard uncertainty of the wafer mean: shared part whole, independent parts averaged. */
+  readonly uMean: number
+  /** Means over the same sites of what the layer gives; NaN where it gives none. */
+  readonly means: { readonly resistivity_ohm_cm: number; readonly concentration_cm3: number; readonly dose_cm2: number; readonly thickness_um: number }
+  readonly sitesOut: number
+  readonly sitesNotAssessed: number
+  readonly rejectedRows: number
+  readonly dieCounts: Readonly<Record<Verdict, number>> | null
+  readonly verdict: Verdict
+  /** In words, the reason that decided first. */
+  readonly reasons: readonly string[]
+}
+
+export interface LotSummary {
+  readonly name: string
+  readonly verdict: Verdict
+  /** One sentence a person would say. */
+  readonly sentence: string
+  readonly reasons: readonly string[]
+  /** Over wafer means. */
+  readonly statistics: Statistics
+  readonly varianceComponents: VarianceComponents | null
+}
+
+/** One-way random-effects analysis: site in wafer, wafer in lot. The wafer component may come out negative and is left so. */
+export interface VarianceComponents {
+  readonly withinWafer: { readonly variance: number; readonly standardDeviation: number; readonly degreesOfFreedom: number }
+  readonly betweenWafers: { readonly variance: number; readonly standardDeviation: number; readonly degreesOfFreedom: number }
+  readonly source: string
+}
+
+export interface DieColumns {
+  readonly count: number
+  /** Index into wafers. */
+  readonly wafer: Uint32Array
+  readonly dieX: Int32Array
+  readonly dieY: Int32Array
+  /** Die centre. */
+  readonly x_mm: Float64Array
+  readonly y_mm: Float64Array
+  readonly value: Float64Array
+  readonly u: Float64Array
+  readonly conformanceProbability: Float64Array
+  readonly verdict: Uint8Array
+  /** 0 measured, 1 interpolated. */
+  readonly basis: Uint8Array
+}

@@ -1,0 +1,163 @@
+/**
+ * The procedure: everything decided before the measurement, as a JSON file. This schema is the one place its keys,
+ * ranges and safe defaults are written; what a person reads of a wrong key is made in `parse-procedure.ts`.
+ */
+import { z } from 'zod'
+import { COLUMN_IDS } from '../ingest/readings'
+import { DOPANTS } from '../silicon/dopants'
+import { mobilityIds } from '../silicon/mobility/registry'
+import { nonuniformityIds } from '../statistics/nonuniformity'
+
+export const PROCEDURE_FORMAT = 'persquare-procedure/1'
+
+const positive = (max: number) => z.number().gt(0).max(max)
+const concentration = z.number().min(1e10).max(1e22)
+const limits = z
+  .strictObject({ target: z.number().gt(0), lower: z.number().gt(0), upper: z.number().gt(0) })
+  .partial()
+
+const wafer = z.strictObject({
+  shape: z.enum(['disc', 'rectangle']).default('disc'),
+  /** Absent: the edges are unknown and geometry is that of the infinite sheet. */
+  diameterMm: positive(1000).optional(),
+  widthMm: positive(1000).optional(),
+  heightMm: positive(1000).optional(),
+  thicknessUm: positive(20000).optional(),
+  fiducial: z.enum(['notch', 'flat', 'none']).default('notch'),
+  flatLengthMm: positive(300).optional(),
+  edgeExclusionMm: z.number().min(0).max(100).default(0),
+  /** What the wafer lies on, for layers that conduct through the wafer. */
+  back: z.enum(['insulating', 'conducting']).default('insulating'),
+})
+
+const probe = z.strictObject({
+  spacingMm: positive(50).optional(),
+  pinSpacingsMm: z.tuple([positive(50), positive(50), positive(50)]).optional(),
+  orientation: z
+    .union([z.strictObject({ angleDeg: z.number().min(-360).max(360) }), z.enum(['radial', 'tangential'])])
+    .default({ angleDeg: 0 }),
+  technique: z.enum(['single', 'dual']).default('single'),
+})
+
+const silicon = {
+  dopant: z.enum(DOPANTS),
+  mobility: z.enum(mobilityIds).default('masetti'),
+  /** Only with mobility "constant" [cm^2/(V s)]. */
+  constantMobility: z.strictObject({ electronsCm2Vs: positive(1e5), holesCm2Vs: positive(1e5) }).optional(),
+}
+const background = z.strictObject({ dopant: z.enum(DOPANTS), concentrationCm3: concentration })
+
+const layer = z.discriminatedUnion('kind', [
+  z.strictObject({ kind: z.literal('sheet') }),
+  z.strictObject({ kind: z.literal('bulk'), ...silicon }),
+  z.strictObject({
+    kind: z.literal('doped-layer'),
+    ...silicon,
+    profile: z.enum(['uniform', 'gaussian', 'erfc', 'exponential']),
+    /** Junction depth: where the profile has come down to the background. */
+    depthUm: positive(1000),
+    background,
+  }),
+  z.strictObject({
+    kind: z.literal('implant'),
+    ...silicon,
+    rangeUm: positive(100),
+    straggleUm: positive(100),
+    background: background.optional(),
+  }),
+  z.strictObject({
+    kind: z.literal('film'),
+    resistivityOhmCm: positive(1e12).optional(),
+    thicknessUm: positive(1e4).optional(),
+  }),
+])
+
+const temperature = z.strictObject({
+  referenceC: z.number().min(18).max(28).default(23),
+  /** Used where the readings carry no temperature of their own. */
+  measuredC: z.number().min(-50).max(200).optional(),
+  /** Percent per kelvin at the reference temperature. Bulk silicon has a published one; other layers need this. */
+  coefficientPercentPerC: z.number().min(-10).max(10).optional(),
+})
+
+const procedureLimits = z.strictObject({
+  sheetResistanceOhmSq: limits.optional(),
+  waferMeanOhmSq: limits.optional(),
+  resistivityOhmCm: limits.optional(),
+  waferMeanOhmCm: limits.optional(),
+  uniformityPercent: z
+    .strictObject({ upper: z.number().gt(0).max(1000), definition: z.enum(nonuniformityIds).default('sup') })
+    .optional(),
+  /** How many sites of a wafer may lie outside the site limits before the wafer does. */
+  allowedSitesOut: z.number().int().min(0).max(1e6).default(0),
+})
+
+const dieGrid = z.strictObject({
+  pitchXMm: positive(500),
+  pitchYMm: positive(500),
+  offsetXMm: z.number().min(-500).max(500).default(0),
+  offsetYMm: z.number().min(-500).max(500).default(0),
+})
+
+export const UNCERTAINTY_COMPONENTS = [
+  'currentRel', 'voltageRel', 'spacingMm', 'thicknessUm', 'temperatureC', 'diameterMm', 'positionMm', 'depthUm',
+  'mobilityRel', 'reportedRel',
+] as const // prettier-ignore
+export type UncertaintyComponent = (typeof UNCERTAINTY_COMPONENTS)[number]
+
+const fraction = z.number().min(0).max(1).default(0)
+/** Standard uncertainties (one sigma). */
+const uncertainty = z.strictObject({
+  currentRel: fraction,
+  voltageRel: fraction,
+  /** Of each pin spacing. */
+  spacingMm: z.number().min(0).max(10).default(0),
+  thicknessUm: z.number().min(0).max(1000).default(0),
+  temperatureC: z.number().min(0).max(50).default(0),
+  diameterMm: z.number().min(0).max(50).default(0),
+  /** Of the probe's place on the wafer, in x and in y. */
+  positionMm: z.number().min(0).max(50).default(0),
+  depthUm: z.number().min(0).max(1000).default(0),
+  /** Spread of the mobility model about real silicon; enters the concentration alone. */
+  mobilityRel: fraction,
+  /** Of a sheet resistance or resistivity that the file reports ready made. */
+  reportedRel: fraction,
+  /** The components that are the same at every site, so that averaging doesn't lessen them. */
+  shared: z
+    .array(z.enum(UNCERTAINTY_COMPONENTS))
+    .default(['currentRel', 'spacingMm', 'thicknessUm', 'temperatureC', 'diameterMm', 'depthUm', 'mobilityRel']),
+})
+
+const columnMapping = z.partialRecord(
+  z.enum(COLUMN_IDS),
+  z.union([z.string().min(1), z.strictObject({ header: z.string().min(1), unit: z.string().optional() })]),
+)
+
+const readings = z.strictObject({
+  /** Our column to the file's header, where the matcher can't or shouldn't decide. */
+  columns: columnMapping.default({}),
+  delimiter: z.enum([',', ';', '\t']).optional(),
+  decimalMark: z.enum(['.', ',']).optional(),
+})
+
+export const procedureSchema = z.strictObject({
+  format: z.literal(PROCEDURE_FORMAT),
+  title: z.string().max(200).default(''),
+  /** What is judged. Absent: resistivity where limits are on resistivity or the readings give nothing else. */
+  quantity: z.enum(['sheet-resistance', 'resistivity']).optional(),
+  wafer: wafer.prefault({}),
+  probe: probe.prefault({}),
+  layer: layer.default({ kind: 'sheet' }),
+  temperature: temperature.prefault({}),
+  limits: procedureLimits.prefault({}),
+  dieGrid: dieGrid.optional(),
+  uncertainty: uncertainty.prefault({}),
+  readings: readings.prefault({}),
+  /** With which constant a reported sheet resistance was made, so that V/I can be recovered and corrected anew. */
+  reported: z.strictObject({ factor: positive(100) }).optional(),
+})
+
+/** As written: every defaulted key may be absent. */
+export type ProcedureInput = z.input<typeof procedureSchema>
+/** As used: every default filled in. */
+export type Procedure = z.output<typeof procedureSchema>
