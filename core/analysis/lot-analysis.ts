@@ -2,14 +2,16 @@
  * What one run of the pipeline found: columns a site, a row a wafer, one lot. The window, the command line and the
  * report all read this and compute nothing of their own.
  */
+import type { Verdict } from '../conformity/verdict'
 import type { Readings } from '../ingest/readings'
 import type { Outline } from '../wafer/outline'
 import type { Problem } from '../problems/problem'
 import type { Procedure } from '../procedure/schema'
+import type { Statistics } from '../statistics/summarize'
+import type { VarianceComponents } from '../statistics/components-of-variance'
 
-export type Verdict = 'in-spec' | 'out-of-spec' | 'undecided' | 'not-assessed'
-/** Order of the codes in verdict columns. */
-export const VERDICTS = ['in-spec', 'out-of-spec', 'undecided', 'not-assessed'] as const satisfies readonly Verdict[]
+export { VERDICTS } from '../conformity/verdict'
+export type { Statistics, VarianceComponents, Verdict }
 
 export interface LotAnalysis {
   readonly procedure: Procedure
@@ -69,23 +71,6 @@ export interface SiteColumns {
   readonly flags: Uint32Array
 }
 
-export interface Statistics {
-  readonly count: number
-  readonly mean: number
-  readonly median: number
-  /** Sample standard deviation, divisor n-1; NaN for one site. */
-  readonly standardDeviation: number
-  readonly min: number
-  readonly max: number
-  readonly range: number
-  /** Every non-uniformity in use, each with its formula; see statistics/nonuniformity.ts. */
-  readonly nonuniformity: readonly { readonly id: string; readonly formula: string; readonly percent: number }[]
-  /** SEMI MF1618 SUP, 100 s / mean. */
-  readonly nonuniformityPercent: number
-  /** SEMI MF1618 HLV, 200 (max - min) / (max + min). */
-  readonly rangePercent: number
-}
-
 export interface WaferAnalysis {
   /** Index into readings.wafers. */
   readonly index: number
@@ -117,13 +102,6 @@ export interface LotSummary {
   /** Over wafer means. */
   readonly statistics: Statistics
   readonly varianceComponents: VarianceComponents | null
-}
-
-/** One-way random-effects analysis: site in wafer, wafer in lot. The wafer component may come out negative and is left so. */
-export interface VarianceComponents {
-  readonly withinWafer: { readonly variance: number; readonly standardDeviation: number; readonly degreesOfFreedom: number }
-  readonly betweenWafers: { readonly variance: number; readonly standardDeviation: number; readonly degreesOfFreedom: number }
-  readonly source: string
 }
 
 export interface DieColumns {
