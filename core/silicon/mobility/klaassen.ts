@@ -64,7 +64,7 @@ function repulsionMinimumAt(mass: number, tn: number): number {
 
 function screening(scatterers_cm3: number, carriers_cm3: number, mass: number, tn: number): number {
   const conwellWeisskopf = 3.97e13 * Math.pow(Math.pow(tn, 3) / scatterers_cm3, 2 / 3)
-  const brooksHerring = ((1.36e20 / carriers_cm3) * tn * tn) / mass
+  const brooksHerring = (1.36e20 / carriers_cm3) * mass * tn * tn
   return 1 / (2.459 / conwellWeisskopf + 3.828 / brooksHerring)
 }
 
