@@ -1,0 +1,106 @@
+/** The verdict on a wafer: its sites, its mean, its uniformity, each against its limit. */
+import type { NonuniformityId } from '../statistics/nonuniformity'
+import type { Statistics } from '../statistics/summarize'
+import type { SiteFindings } from './judge-sites'
+import { hasLimits, sideOf, type Limits } from './limits'
+import {
+  NO_LIMITS,
+  judgedSites,
+  meanReason,
+  notAssessedSitesReason,
+  sitesReason,
+  undecidedSitesReason,
+  uniformityReason,
+  uniformityUnknownReason,
+  waferName,
+} from './reasons'
+import type { Verdict } from './verdict'
+
+/** All in the unit of the judged quantity, uniformity in percent. An absent one isn't judged. */
+export interface WaferLimits {
+  readonly site?: Limits | undefined
+  readonly mean?: Limits | undefined
+  readonly uniformity?: { readonly upper: number; readonly definition: NonuniformityId } | undefined
+  /** How many sites may lie outside the site limits before the wafer does. */
+  readonly allowedSitesOut: number
+}
+
+export interface WaferToJudge {
+  readonly id: string
+  readonly findings: SiteFindings
+  readonly statistics: Statistics
+  readonly limits: WaferLimits
+  readonly unit: string
+}
+
+/** One thing that was judged, and how it came out. */
+export interface Finding {
+  readonly about: 'sites' | 'mean' | 'uniformity'
+  readonly verdict: Verdict
+  readonly reason: string
+}
+
+export interface WaferJudgement {
+  readonly id: string
+  readonly verdict: Verdict
+  /** In words; those that decided come first. */
+  readonly reasons: readonly string[]
+  /** What decided: of an out-of-spec wafer the findings that are out of spec, and so on. */
+  readonly deciding: readonly Finding[]
+  readonly findings: SiteFindings
+  readonly statistics: Statistics
+  readonly limits: WaferLimits
+}
+
+export function hasAnyLimit(limits: WaferLimits): boolean {
+  return hasLimits(limits.site) || hasLimits(limits.mean) || limits.uniformity !== undefined
+}
+
+/**
+ * Out of spec where anything judged is; else undecided where anything is; else in spec. Not assessed without limits or
+ * without a single site that counts. Sites without a reading are said, and decide nothing while others are judged.
+ */
+export function judgeWafer(wafer: WaferToJudge): WaferJudgement {
+  const { id, findings, statistics, limits } = wafer
+  const known = { id, findings, statistics, limits }
+  const unjudged = !hasAnyLimit(limits) ? NO_LIMITS : statistics.count === 0 ? 'no site has a usable reading' : null
+  if (unjudged !== null) {
+    return { ...known, verdict: 'not-assessed', reasons: [`${waferName(id)}: ${unjudged}`], deciding: [] }
+  }
+  const all = [judgeSites(wafer), judgeMean(wafer), judgeUniformity(wafer)].filter((finding) => finding !== null)
+  const verdict = (['out-of-spec', 'undecided'] as const).find((v) => all.some((f) => f.verdict === v)) ?? 'in-spec'
+  const deciding = all.filter((finding) => finding.verdict === verdict)
+  const missing = findings.counts['not-assessed']
+  const remarks = missing > 0 ? [notAssessedSitesReason(missing)] : []
+  const reasons = [...deciding.map((finding) => finding.reason), ...remarks]
+  return { ...known, verdict, reasons: reasons.map((reason) => `${waferName(id)}: ${reason}`), deciding }
+}
+
+function judgeSites({ findings, limits, unit }: WaferToJudge): Finding | null {
+  if (!hasLimits(limits.site)) return null
+  const allowed = limits.allowedSitesOut
+  const out = findings.counts['out-of-spec']
+  const { undecided } = findings.counts
+  const sites = sitesReason({ findings, limits: limits.site, unit, allowed })
+  if (out > allowed) return { about: 'sites', verdict: 'out-of-spec', reason: sites }
+  if (out + undecided <= allowed) return { about: 'sites', verdict: 'in-spec', reason: sites }
+  return { about: 'sites', verdict: 'undecided', reason: undecidedSitesReason(undecided, judgedSites(findings)) }
+}
+
+function judgeMean({ statistics, limits, unit }: WaferToJudge): Finding | null {
+  if (!hasLimits(limits.mean)) return null
+  const side = sideOf(statistics.mean, limits.mean)
+  const reason = meanReason(statistics.mean, side, limits.mean, unit)
+  return { about: 'mean', verdict: side === 'inside' ? 'in-spec' : 'out-of-spec', reason }
+}
+
+function judgeUniformity({ statistics, limits }: WaferToJudge): Finding | null {
+  if (!limits.uniformity) return null
+  const { upper, definition } = limits.uniformity
+  const { formula, percent } = statistics.nonuniformity.find((entry) => entry.id === definition)!
+  if (Number.isNaN(percent)) {
+    return { about: 'uniformity', verdict: 'undecided', reason: uniformityUnknownReason(statistics.count, formula) }
+  }
+  const verdict = percent > upper ? 'out-of-spec' : 'in-spec'
+  return { about: 'uniformity', verdict, reason: uniformityReason(percent, upper, formula) }
+}
