@@ -33,9 +33,13 @@ export const MF723_RESISTIVITY_RANGE_OHM_CM: Readonly<Record<'boron' | 'phosphor
 /** Arsenic's polynomial starts here; below, the standard sends arsenic to the phosphorus curve. */
 export const ARSENIC_FIT_FROM_CM3 = 1e19
 
+/**
+ * Eq. 10 re-expanded about 1e20 cm^-3: coefficients of (log10 N - 20)^i, from the printed ones of (log10 N)^i in exact decimal
+ * arithmetic. As printed, terms of +-1e4 cancel and leave noise of some 1e-12 in resistivity; so written they don't.
+ */
 const arsenicCoefficients = [
-  -6633.667, 768.2531, -25.77373, 0.9658177, -0.05643443, -8.008543e-4, 9.055838e-5, -1.776701e-6, 1.953279e-7,
-  -5.754599e-9, -1.31657e-11,
+  -3.016136, -0.6515096, 0.29894928, -0.168754764, -0.4001747048, -0.04398077422, -0.002279965328, -6.60295346e-5,
+  -1.07748252e-6, -8.387739e-9, -1.31657e-11,
 ] as const
 
 function boronResistivity(n: number): number {
@@ -50,22 +54,35 @@ function phosphorusResistivity(n: number): number {
 }
 
 function arsenicResistivity(n: number): number {
-  if (n < ARSENIC_FIT_FROM_CM3) return phosphorusResistivity(n)
-  const x = Math.log10(n)
+  const z = Math.log10(n) - 20
   let sum = 0
-  for (let i = arsenicCoefficients.length - 1; i >= 0; i--) sum = sum * x + (arsenicCoefficients[i] ?? 0)
+  for (let i = arsenicCoefficients.length - 1; i >= 0; i--) sum = sum * z + arsenicCoefficients[i]
   return Math.pow(10, sum)
 }
 
-const curves: Readonly<Record<Dopant, (n: number) => number>> = {
-  boron: boronResistivity,
-  phosphorus: phosphorusResistivity,
-  arsenic: arsenicResistivity,
+/** One smooth stretch of a published curve; both ends belong to it. */
+export interface CurvePiece {
+  readonly min_cm3: number
+  readonly max_cm3: number
+  /** No range check: runs on outside. */
+  resistivity_ohm_cm(concentration_cm3: number): number
+}
+
+/** The published curves, from low density up. */
+export const MF723_PIECES: Readonly<Record<Dopant, readonly CurvePiece[]>> = {
+  boron: [{ min_cm3: 1e12, max_cm3: 1e21, resistivity_ohm_cm: boronResistivity }],
+  phosphorus: [{ min_cm3: 1e12, max_cm3: 5e20, resistivity_ohm_cm: phosphorusResistivity }],
+  arsenic: [
+    { min_cm3: 1e12, max_cm3: ARSENIC_FIT_FROM_CM3, resistivity_ohm_cm: phosphorusResistivity },
+    { min_cm3: ARSENIC_FIT_FROM_CM3, max_cm3: 6e20, resistivity_ohm_cm: arsenicResistivity },
+  ],
 }
 
 /** The published curve without a range check, for loops whose caller keeps to `MF723_DENSITY_RANGE_CM3`. */
 export function mf723Curve_ohm_cm(dopant: Dopant, concentration_cm3: number): number {
-  return curves[dopant](concentration_cm3)
+  if (dopant === 'boron') return boronResistivity(concentration_cm3)
+  if (dopant === 'arsenic' && concentration_cm3 >= ARSENIC_FIT_FROM_CM3) return arsenicResistivity(concentration_cm3)
+  return phosphorusResistivity(concentration_cm3)
 }
 
 /**

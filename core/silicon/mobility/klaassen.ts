@@ -1,3 +1,4 @@
+import { findRoot } from '../../numeric/find-root'
 import { isAcceptor } from '../dopants'
 import type { Dopant } from '../dopants'
 import type { MobilityModel, MobilityQuery } from '../mobility-model'
@@ -47,19 +48,10 @@ function repulsionSlope(p: number, mass: number, tn: number): number {
   return first - 0.005978 * 1.80618 * inSecond * Math.pow(p * inSecond, -2.80618)
 }
 
-/**
- * The P below which `repulsion` would rise again, which the paper holds at its minimum. About 0.3 at 300 K. Bisection on
- * the sign of the slope in ln P: sixty halvings of a fixed interval reach the last digit at any temperature.
- */
-function repulsionMinimumAt(mass: number, tn: number): number {
-  let low = Math.log(1e-3)
-  let high = Math.log(1e2)
-  for (let i = 0; i < 60; i++) {
-    const middle = (low + high) / 2
-    if (repulsionSlope(Math.exp(middle), mass, tn) < 0) low = middle
-    else high = middle
-  }
-  return Math.exp((low + high) / 2)
+/** The P below which `repulsion` would rise again, which the paper holds at its minimum: 0.3246 for electrons at 300 K. */
+export function repulsionMinimumAt(mass: number, tn: number): number {
+  const f = (logP: number) => repulsionSlope(Math.exp(logP), mass, tn)
+  return Math.exp(findRoot({ f, low: Math.log(1e-3), high: Math.log(1e2), tolerance: 1e-9 }))
 }
 
 function screening(scatterers_cm3: number, carriers_cm3: number, mass: number, tn: number): number {

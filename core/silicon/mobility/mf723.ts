@@ -2,19 +2,18 @@ import { CoreError } from '../../problems/problem'
 import { ELEMENTARY_CHARGE_C, STANDARD_TEMPERATURE_K } from '../../units/constants'
 import { isAcceptor } from '../dopants'
 import type { Dopant } from '../dopants'
-import { MF723_DENSITY_RANGE_CM3, mf723Curve_ohm_cm } from '../mf723'
+import { MF723_PIECES, mf723Curve_ohm_cm } from '../mf723'
+import type { CurvePiece } from '../mf723'
 import type { MobilityModel, MobilityQuery } from '../mobility-model'
 
 /** A model made from a resistivity curve: uncompensated material takes the curve itself, not the mobility. */
 export interface ResistivityCurveModel extends MobilityModel {
-  /** Where the curve of this dopant is published [cm^-3]. */
-  curveRange_cm3(dopant: Dopant): { readonly min: number; readonly max: number }
-  /** The curve [ohm cm]; no range check. */
-  curve_ohm_cm(dopant: Dopant, concentration_cm3: number): number
+  /** The published curve of a dopant, as smooth pieces from low density up; their ends are its range. */
+  curvePieces(dopant: Dopant): readonly CurvePiece[]
 }
 
 export function isResistivityCurve(model: MobilityModel): model is ResistivityCurveModel {
-  return 'curve_ohm_cm' in model
+  return 'curvePieces' in model
 }
 
 /**
@@ -46,10 +45,9 @@ export const mf723 = {
   title: 'SEMI MF723 resistivity and dopant density',
   source: 'SEMI MF723 (ASTM F723-99), after W. R. Thurber et al., J. Electrochem. Soc. 127 (1980) 1807 and 2291',
   dopants: ['boron', 'phosphorus', 'arsenic'],
-  /** Where all three dopants are published; one dopant's own range is `curveRange_cm3`. */
+  /** Where all three dopants are published; one dopant's own range is that of `curvePieces`. */
   range_cm3: { min: 1e12, max: 5e20 },
   temperature_K: { min: STANDARD_TEMPERATURE_K, max: STANDARD_TEMPERATURE_K },
   mobility_cm2_per_Vs: mf723Mobility_cm2_per_Vs,
-  curveRange_cm3: (dopant: Dopant) => MF723_DENSITY_RANGE_CM3[dopant],
-  curve_ohm_cm: mf723Curve_ohm_cm,
+  curvePieces: (dopant: Dopant) => MF723_PIECES[dopant],
 } as const satisfies ResistivityCurveModel
