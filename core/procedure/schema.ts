@@ -8,13 +8,14 @@ import { DOPANTS } from '../silicon/dopants'
 import { mobilityIds } from '../silicon/mobility/registry'
 import { nonuniformityIds } from '../statistics/nonuniformity'
 
+// No parsers made from text at run time: a page whose security policy forbids `eval` must read procedures too.
+z.config({ jitless: true })
+
 export const PROCEDURE_FORMAT = 'persquare-procedure/1'
 
 const positive = (max: number) => z.number().gt(0).max(max)
 const concentration = z.number().min(1e10).max(1e22)
-const limits = z
-  .strictObject({ target: z.number().gt(0), lower: z.number().gt(0), upper: z.number().gt(0) })
-  .partial()
+const limits = z.strictObject({ target: z.number().gt(0), lower: z.number().gt(0), upper: z.number().gt(0) }).partial()
 
 const wafer = z.strictObject({
   shape: z.enum(['disc', 'rectangle']).default('disc'),

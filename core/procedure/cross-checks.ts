@@ -1,0 +1,151 @@
+/** What no single key can tell: keys that need each other, exclude each other or contradict each other. */
+import { isAcceptor } from '../silicon/dopants'
+import type { ProcedureProblem } from '../problems/problem'
+import { limitChecks } from './limit-checks'
+import type { Procedure } from './schema'
+import { foundText } from './shape-problems'
+import { whyNeeded } from './why-needed'
+
+/** The sections that read well on their own; a bad one must not hide what is wrong in the others. */
+export type Sections = Partial<Procedure>
+
+/** Makes the problem of one key; the file's name is put in once. */
+export interface Blame {
+  readonly missing: (key: string) => ProcedureProblem
+  readonly bad: (key: string, found: unknown, allowed: string) => ProcedureProblem
+  readonly reversed: (key: string, lower: number, upper: number) => ProcedureProblem
+}
+
+export function blameIn(file: string): Blame {
+  return {
+    missing: (key) => ({ kind: 'missing-key', file, key, why: whyNeeded(key) }),
+    bad: (key, found, allowed) => ({ kind: 'bad-value', file, key, found: foundText(found), allowed }),
+    reversed: (key, lower, upper) => ({ kind: 'limits-reversed', file, key, lower, upper }),
+  }
+}
+
+export function crossChecks(sections: Sections, file: string): readonly ProcedureProblem[] {
+  const blame = blameIn(file)
+  return [
+    ...waferChecks(sections, blame),
+    ...probeChecks(sections, blame),
+    ...layerChecks(sections, blame),
+    ...limitChecks(sections, blame),
+  ]
+}
+
+type Checks = readonly ProcedureProblem[]
+
+function waferChecks({ wafer, dieGrid }: Sections, blame: Blame): Checks {
+  if (!wafer) return []
+  return wafer.shape === 'disc' ? discChecks(wafer, dieGrid !== undefined, blame) : rectangleChecks(wafer, blame)
+}
+
+type Wafer = Procedure['wafer']
+
+function discChecks(wafer: Wafer, hasDies: boolean, blame: Blame): Checks {
+  const problems: ProcedureProblem[] = []
+  const { diameterMm, edgeExclusionMm, fiducial, flatLengthMm } = wafer
+  for (const side of ['widthMm', 'heightMm'] as const) {
+    if (wafer[side] !== undefined) {
+      problems.push(
+        blame.bad(`wafer.${side}`, wafer[side], 'nothing for a disc; leave it out, or write "shape": "rectangle"'),
+      )
+    }
+  }
+  if (flatLengthMm !== undefined && fiducial !== 'flat') {
+    problems.push(blame.bad('wafer.flatLengthMm', flatLengthMm, 'a length only together with "fiducial": "flat"'))
+  }
+  if (diameterMm === undefined) {
+    if (edgeExclusionMm > 0 || hasDies) problems.push(blame.missing('wafer.diameterMm'))
+    return problems
+  }
+  if (edgeExclusionMm >= diameterMm / 2) problems.push(exclusion(edgeExclusionMm, diameterMm / 2, 'radius', blame))
+  if (flatLengthMm !== undefined && flatLengthMm >= diameterMm) {
+    problems.push(blame.bad('wafer.flatLengthMm', flatLengthMm, `less than the diameter, ${diameterMm} mm`))
+  }
+  return problems
+}
+
+function rectangleChecks(wafer: Wafer, blame: Blame): Checks {
+  const problems: ProcedureProblem[] = []
+  const { widthMm, heightMm, diameterMm, edgeExclusionMm, flatLengthMm } = wafer
+  if (diameterMm !== undefined) {
+    problems.push(
+      blame.bad('wafer.diameterMm', diameterMm, 'nothing for a rectangle; leave it out, or write "shape": "disc"'),
+    )
+  }
+  if (flatLengthMm !== undefined) {
+    problems.push(blame.bad('wafer.flatLengthMm', flatLengthMm, 'nothing for a rectangle; leave it out'))
+  }
+  if (widthMm === undefined) problems.push(blame.missing('wafer.widthMm'))
+  if (heightMm === undefined) problems.push(blame.missing('wafer.heightMm'))
+  const half = Math.min(widthMm ?? Infinity, heightMm ?? Infinity) / 2
+  if (edgeExclusionMm >= half) problems.push(exclusion(edgeExclusionMm, half, 'half of the shorter side', blame))
+  return problems
+}
+
+function exclusion(found: number, half: number, what: string, blame: Blame): ProcedureProblem {
+  return blame.bad('wafer.edgeExclusionMm', found, `less than the ${what}, ${half} mm`)
+}
+
+/** A nominal spacing that is off the measured ones by more than this is a slip of the pen, not a worn pin. */
+const SPACING_TOLERANCE = 0.2
+
+function probeChecks({ probe }: Sections, blame: Blame): Checks {
+  if (probe?.spacingMm === undefined || probe.pinSpacingsMm === undefined) return []
+  const mean = probe.pinSpacingsMm.reduce((sum, spacing) => sum + spacing, 0) / 3
+  if (Math.abs(probe.spacingMm - mean) <= SPACING_TOLERANCE * mean) return []
+  const allowed = `within 20 % of the mean of probe.pinSpacingsMm, ${Number(mean.toPrecision(4))} mm`
+  return [blame.bad('probe.spacingMm', probe.spacingMm, allowed)]
+}
+
+function layerChecks({ layer, wafer }: Sections, blame: Blame): Checks {
+  if (!layer || layer.kind === 'sheet') return []
+  if (layer.kind === 'film') return filmChecks(layer, blame)
+  const problems = [...mobilityChecks(layer, blame)]
+  if (layer.kind === 'bulk') return problems
+  const { background, dopant } = layer
+  if (background && isAcceptor(background.dopant) === isAcceptor(dopant)) {
+    const opposite = isAcceptor(dopant) ? '"phosphorus" or "arsenic"' : '"boron"'
+    problems.push(
+      blame.bad(
+        'layer.background.dopant',
+        background.dopant,
+        `${opposite}: of the opposite type to the layer's ${dopant}`,
+      ),
+    )
+  }
+  const thickness_um = wafer?.thicknessUm
+  if (layer.kind === 'doped-layer' && thickness_um !== undefined && layer.depthUm >= thickness_um) {
+    problems.push(blame.bad('layer.depthUm', layer.depthUm, `less than wafer.thicknessUm, ${thickness_um} µm`))
+  }
+  return problems
+}
+
+type Layer<Kind> = Extract<Procedure['layer'], { kind: Kind }>
+
+function filmChecks(layer: Layer<'film'>, blame: Blame): Checks {
+  const { resistivityOhmCm, thicknessUm } = layer
+  if (resistivityOhmCm !== undefined && thicknessUm !== undefined) {
+    return [
+      blame.bad(
+        'layer.thicknessUm',
+        thicknessUm,
+        'nothing beside layer.resistivityOhmCm: give one, the other is the result',
+      ),
+    ]
+  }
+  return resistivityOhmCm === undefined && thicknessUm === undefined ? [blame.missing('layer.resistivityOhmCm')] : []
+}
+
+function mobilityChecks(layer: Layer<'bulk' | 'doped-layer' | 'implant'>, blame: Blame): Checks {
+  const { mobility, constantMobility } = layer
+  const problems: ProcedureProblem[] = []
+  if (mobility === 'constant' && constantMobility === undefined) problems.push(blame.missing('layer.constantMobility'))
+  if (mobility !== 'constant' && constantMobility !== undefined) {
+    const allowed = `an entry only together with "mobility": "constant", not with ${JSON.stringify(mobility)}`
+    problems.push(blame.bad('layer.constantMobility', constantMobility, allowed))
+  }
+  return problems
+}
