@@ -21,8 +21,8 @@ export interface MeasuredValue extends Limits {
  * Sources: JCGM 106:2012 clause 7, p_c = Phi((T_U - y)/u) - Phi((T_L - y)/u).
  */
 export function conformanceProbability({ value, u, lower, upper }: MeasuredValue): number {
-  requireRange('value', value, '', -Number.MAX_VALUE, Number.MAX_VALUE)
-  requireRange('standard uncertainty', u, '', 0, Number.MAX_VALUE)
+  requireRange('value', value, '', -1e300, 1e300)
+  requireRange('standard uncertainty', u, '', 0, 1e300)
   requireOrder({ lower, upper })
   return probability(value, u, { lower, upper })
 }

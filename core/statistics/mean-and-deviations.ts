@@ -2,7 +2,7 @@
  * Mean and sums of squares to the last bits of double precision, in passes over the values. A textbook one-pass sum
  * of squares keeps two digits of the standard deviation of 1000000.2 +/- 0.1 and none of 10000000.2 +/- 0.1.
  */
-import { requireRange } from '../problems/problem'
+import { CoreError } from '../problems/problem'
 
 /** A mean as an unevaluated sum of two doubles: `high` is the mean rounded, `low` what the rounding left. */
 export interface PreciseMean {
@@ -44,7 +44,8 @@ export function gather(values: Float64Array, indices?: Uint32Array): Float64Arra
   if (indices) for (let i = 0; i < indices.length; i++) chosen[i] = values[indices[i]!] ?? NaN
   for (let i = 0; i < chosen.length; i++) {
     const value = chosen[i]!
-    if (!Number.isFinite(value)) requireRange('value', value, '', -Number.MAX_VALUE, Number.MAX_VALUE)
+    if (Number.isFinite(value)) continue
+    throw new CoreError({ kind: 'out-of-range', quantity: 'value', value, unit: '', min: -Infinity, max: Infinity })
   }
   return chosen
 }

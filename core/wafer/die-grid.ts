@@ -78,13 +78,13 @@ export function dieAt(grid: DieGrid, x_mm: number, y_mm: number): { readonly die
 /**
  * Every die of the grid that lies wholly in the usable area.
  *
- * @throws CoreError not-applicable for an outline without edges; out-of-range for a pitch that isn't positive or so
- * fine that it makes more than MAX_DIES
+ * @throws CoreError not-applicable for an outline without edges; out-of-range for a pitch outside 0.001 to 10 000 mm or
+ * so fine that it makes more than MAX_DIES
  */
 export function usableDies(area: UsableArea, grid: DieGrid): Dies {
   const { halfWidth_mm, halfHeight_mm } = extent(area.outline)
-  requireRange('die pitch in x', grid.pitchX_mm, 'mm', Number.MIN_VALUE, Number.MAX_VALUE)
-  requireRange('die pitch in y', grid.pitchY_mm, 'mm', Number.MIN_VALUE, Number.MAX_VALUE)
+  requireRange('die pitch in x', grid.pitchX_mm, 'mm', 1e-3, 1e4)
+  requireRange('die pitch in y', grid.pitchY_mm, 'mm', 1e-3, 1e4)
   const low = dieAt(grid, -halfWidth_mm, -halfHeight_mm)
   const high = dieAt(grid, halfWidth_mm, halfHeight_mm)
   requireRange('dies', (high.dieX - low.dieX + 1) * (high.dieY - low.dieY + 1), '', 0, MAX_DIES)

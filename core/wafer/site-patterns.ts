@@ -7,7 +7,7 @@ export interface SitePlan {
   readonly y_mm: Float64Array
 }
 
-/** Radius of the outermost sites by method B of SEMI MF1618: half the diameter less the edge exclusion. Throws unless > 0. */
+/** Radius of the outermost sites by method B of SEMI MF1618: half the diameter less the edge exclusion. Throws where nothing is left. */
 export function outerRadius_mm({
   diameter_mm,
   edgeExclusion_mm,
@@ -16,7 +16,7 @@ export function outerRadius_mm({
   readonly edgeExclusion_mm: number
 }): number {
   const radius_mm = diameter_mm / 2 - edgeExclusion_mm
-  requireRange('radius of the outermost sites', radius_mm, 'mm', Number.MIN_VALUE, Number.MAX_VALUE)
+  requireRange('radius of the outermost sites', radius_mm, 'mm', 1e-3, 1e4)
   return radius_mm
 }
 
@@ -25,7 +25,7 @@ export function outerRadius_mm({
  * 49, 81, 121, 169, 225, 289 for K = 3 to 8.
  *
  * @param circles           1 to 200 (SEMI MF1618: 3 to 8)
- * @param outerRadius_mm    of the outermost circle, > 0
+ * @param outerRadius_mm    of the outermost circle, 0.001 to 10 000
  * @param startAngle_deg    of the first site of every circle, anticlockwise from +x
  */
 export function concentricPlan({
@@ -54,7 +54,7 @@ export function concentricPlan({
  * The standard's text gives the step as Ro / N, which doesn't reach its own site counts; 2 Ro / N gives them exactly.
  *
  * @param rows            odd, 3 to 999
- * @param outerRadius_mm  > 0
+ * @param outerRadius_mm  0.001 to 10 000
  */
 export function cartesianPlan({
   rows,
@@ -82,7 +82,7 @@ export function cartesianPlan({
  * Evenly spaced sites along one diameter, from one end to the other, step 2 Ro / (N - 1).
  *
  * @param count           2 to 100000 (SEMI MF1618: at least 25)
- * @param outerRadius_mm  of the end sites, > 0
+ * @param outerRadius_mm  of the end sites, 0.001 to 10 000
  * @param angle_deg       of the last site, anticlockwise from +x
  */
 export function diameterPlan({
@@ -116,7 +116,7 @@ function asColumns(sites: readonly Site[]): SitePlan {
 }
 
 function requireRadius(radius_mm: number): void {
-  requireRange('radius of the outermost sites', radius_mm, 'mm', Number.MIN_VALUE, Number.MAX_VALUE)
+  requireRange('radius of the outermost sites', radius_mm, 'mm', 1e-3, 1e4)
 }
 
 function requireWhole(quantity: string, value: number, min: number, max: number): void {
