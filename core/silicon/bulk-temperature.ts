@@ -9,7 +9,7 @@ import { coefficientAt, factorSlope_per_C, factorToStandard, isOutsideCoefficien
 /** Temperatures accepted, far wider than the 18 to 28 C over which the correction is established [degrees C]. */
 export const ACCEPTED_RANGE_C = { min: -50, max: 100 } as const
 
-/** A relative change of the factor below which the turns end, and how many are allowed; they gain a digit or two each. */
+/** A relative change of the factor below which the turns end, and how many are allowed; three are usual. */
 const CONVERGED = 1e-13
 const MOST_TURNS = 60
 
@@ -36,14 +36,20 @@ export interface BulkTemperatureFactor {
   readonly isClamped: boolean
 }
 
-/** Factor to 23 C; NaN where it does not settle. */
-function factorTo23C(dopant: Dopant, resistivity_ohm_cm: number, measured_C: number): number {
-  let factor = 1
+/** The coefficient at the resistivity that the piece has at 23 C [%/C]; NaN where the turns don't settle. */
+function settledCoefficient(dopant: Dopant, resistivity_ohm_cm: number, measured_C: number): number {
+  let start = 1
+  let image = factorToStandard(coefficientAt(dopant, resistivity_ohm_cm), measured_C)
+  let factor = image
   for (let turn = 0; turn < MOST_TURNS; turn++) {
-    const next = factorToStandard(coefficientAt(dopant, resistivity_ohm_cm * factor), measured_C)
-    const isSettled = Math.abs(next - factor) <= CONVERGED * next
-    factor = next
-    if (isSettled) return factor
+    const coefficient = coefficientAt(dopant, resistivity_ohm_cm * factor)
+    const next = factorToStandard(coefficient, measured_C)
+    if (Math.abs(next - factor) <= CONVERGED * next) return coefficient
+    // What the turn takes off is a nearly fixed fraction of what the last took off: go at once to where that leads.
+    const rate = (next - image) / (factor - start)
+    start = factor
+    image = next
+    factor += (next - factor) / (1 - rate)
   }
   return NaN
 }
@@ -65,12 +71,12 @@ export function bulkTemperatureFactor(query: BulkTemperatureQuery): BulkTemperat
   requireRange('resistivity', resistivity_ohm_cm, 'ohm cm', Number.MIN_VALUE, 1e300)
   requireRange('measured temperature', measured_C, 'C', ACCEPTED_RANGE_C.min, ACCEPTED_RANGE_C.max)
   requireRange('reference temperature', reference_C, 'C', ACCEPTED_RANGE_C.min, ACCEPTED_RANGE_C.max)
-  const toStandard = factorTo23C(dopant, resistivity_ohm_cm, measured_C)
-  if (Number.isNaN(toStandard)) {
+  const coefficient_percent_per_C = settledCoefficient(dopant, resistivity_ohm_cm, measured_C)
+  if (Number.isNaN(coefficient_percent_per_C)) {
     throw new CoreError({ kind: 'not-applicable', what: 'temperature correction', why: 'it does not settle' })
   }
+  const toStandard = factorToStandard(coefficient_percent_per_C, measured_C)
   const resistivityAt23C_ohm_cm = resistivity_ohm_cm * toStandard
-  const coefficient_percent_per_C = coefficientAt(dopant, resistivityAt23C_ohm_cm)
   return {
     factor: measured_C === reference_C ? 1 : toStandard / factorToStandard(coefficient_percent_per_C, reference_C),
     slope_per_C: factorSlope_per_C(coefficient_percent_per_C, measured_C),
@@ -112,10 +118,11 @@ export function bulkTemperatureFactors(
   const { min, max } = ACCEPTED_RANGE_C
   requireRange('reference temperature', reference_C, 'C', min, max)
   for (let row = 0; row < resistivity_ohm_cm.length; row++) {
-    const [rho, t] = [resistivity_ohm_cm[row], measured_C[row]]
+    const rho = resistivity_ohm_cm[row]
+    const t = measured_C[row]
     const isUsable = rho > 0 && rho <= 1e300 && t >= min && t <= max
-    const toStandard = isUsable ? factorTo23C(dopant, rho, t) : NaN
-    const coefficient = coefficientAt(dopant, rho * toStandard)
+    const coefficient = isUsable ? settledCoefficient(dopant, rho, t) : NaN
+    const toStandard = factorToStandard(coefficient, t)
     into.factor[row] = isUsable && t === reference_C ? 1 : toStandard / factorToStandard(coefficient, reference_C)
     into.slope_per_C[row] = factorSlope_per_C(coefficient, t)
     into.isClamped[row] = isOutsideCoefficientRange(rho * toStandard) ? 1 : 0

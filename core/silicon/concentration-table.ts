@@ -1,6 +1,6 @@
 /**
  * Concentration from resistivity for many sites: a table of the forward function, read backwards by cubic Hermite
- * interpolation of ln(net doping) over ln(resistivity). Nothing is solved, so building takes some 4000 evaluations.
+ * interpolation of ln(net doping) over ln(resistivity). Nothing is solved, so building takes some 8000 evaluations.
  */
 import { CoreError } from '../problems/problem'
 import { netDopingPieces, otherImpurityOf } from './resistivity-curve'
@@ -19,8 +19,8 @@ export interface PreparedConcentrations {
   fill(resistivity_ohm_cm: Float64Array, into: ConcentrationColumns): void
 }
 
-/** Intervals of a table: 0.005 each in ln(net doping) over nine decades, where the interpolation error is below 1e-11. */
-const INTERVALS = 4096
+/** Intervals of a table: 0.0025 each in ln(net doping) over nine decades, where the interpolation error is below 1e-11. */
+const INTERVALS = 8192
 /** Points beyond each end, so that the slope there is a central difference too. */
 const MARGIN = 3
 

@@ -105,7 +105,8 @@ export function concentration_cm3(query: ConcentrationQuery): number {
 /**
  * d ln(concentration) / d ln(resistivity) at a resistivity: how a relative error of one becomes that of the other.
  *
- * @returns about -1 in dilute silicon, to some -1.6 near 1e18 cm^-3
+ * @returns about -1 in dilute silicon, -1.3 to -2 between 1e17 and 1e19; to -6.5 near 5e20 cm^-3 in n-type by Masetti or Klaassen,
+ * where resistivity hardly tells the concentration any more
  * @throws CoreError as `concentration_cm3`
  */
 export function concentrationSensitivity(query: ConcentrationQuery): number {

@@ -16,17 +16,29 @@ export const TEMPERATURE_SOURCE =
   'SEMI MF1527-1104, table R2-1, after W. M. Bullis, F. H. Brewer, C. D. Kolstad, L. J. Swartzendruber, Solid-State Electron. 11 (1968) 639'
 
 /** Coefficients of ln(rho)^n, C_T in percent per degree. */
-const phosphorusCoefficients = [
+const phosphorusCoefficients = Float64Array.of(
   7.364e-1, 6.56e-2, -3.075e-2, -2.427e-3, 7.5883e-3, 7.5541e-4, -1.3976e-3, -1.159e-6, 1.106882e-4, -4.56719e-6,
   -4.407686e-6, 2.601512e-7, 9.40856e-8, -6.1907e-9, -1.032377e-9, 6.890181e-11, 4.58514e-12, -2.94332e-13,
-] as const // prettier-ignore
-const boronCoefficients = [
-  7.068e-1, 8.544e-2, -1.478e-2, 1.635e-3, -2.003e-3, 3.415e-4, 2.0915e-4, -4.3237e-5, -7.0532e-6, 1.60868e-6,
-  1.0346e-7, -2.5201e-8, -5.6419e-10, 1.4445e-10,
-] as const
+) // prettier-ignore
+const boronCoefficients = Float64Array.of(
+  7.068e-1,
+  8.544e-2,
+  -1.478e-2,
+  1.635e-3,
+  -2.003e-3,
+  3.415e-4,
+  2.0915e-4,
+  -4.3237e-5,
+  -7.0532e-6,
+  1.60868e-6,
+  1.0346e-7,
+  -2.5201e-8,
+  -5.6419e-10,
+  1.4445e-10,
+)
 
 /** The standard tells n-type from p-type by phosphorus and boron; arsenic takes phosphorus's. */
-const coefficients: Readonly<Record<Dopant, readonly number[]>> = {
+const coefficients: Readonly<Record<Dopant, Float64Array>> = {
   boron: boronCoefficients,
   phosphorus: phosphorusCoefficients,
   arsenic: phosphorusCoefficients,

@@ -63,7 +63,8 @@ function screening(scatterers_cm3: number, carriers_cm3: number, mass: number, t
 /** Density with which the impurities and the majority carriers act on a minority carrier, over all scatterers. */
 function minorityScatterers_cm3(clustered: number, majority: number, mass: number, otherMass: number, tn: number) {
   const p = screening(clustered + majority, majority, mass, tn)
-  const g = repulsion(Math.max(p, repulsionMinimumAt(mass, tn)), mass, tn)
+  // Where the slope is already positive P is above the minimum, which needn't be sought.
+  const g = repulsion(repulsionSlope(p, mass, tn) < 0 ? repulsionMinimumAt(mass, tn) : p, mass, tn)
   const pr = Math.pow(p, 0.6478)
   const massRatio = mass / otherMass
   const f = (0.7643 * pr + 2.2999 + 6.5502 * massRatio) / (pr + 2.367 + r5 * massRatio)
