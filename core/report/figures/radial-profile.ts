@@ -1,0 +1,102 @@
+/** The judged value against the distance from the wafer's centre, with the limits. */
+import type { Drawing, Shape } from '../drawing'
+import { line, polyline } from '../drawing'
+import { formatMm } from '../../units/format'
+import { chartFrame, frameShapes, limitLines, limitsInReach, padded, type ChartFrame } from './chart-frame'
+import { INK, RULE } from './ink'
+import { mark, markOf, type SiteLimits } from './marks'
+import type { MapQuantity, MapSites } from './wafer-map'
+
+export interface RadialProfileInput {
+  readonly title: string
+  readonly quantity: MapQuantity
+  readonly sites: MapSites
+  readonly limits: SiteLimits
+  /** Half the diameter; NaN takes the farthest site. */
+  readonly edgeRadius_mm: number
+  readonly edgeExclusion_mm: number
+  readonly width_pt: number
+  readonly height_pt: number
+}
+
+const MOST_POINTS = 1500
+const RINGS = 24
+
+export function radialProfile(input: RadialProfileInput): Drawing {
+  const { sites, limits } = input
+  const radius = Float64Array.from(sites.value, (_, i) => Math.hypot(sites.x_mm[i]!, sites.y_mm[i]!))
+  const values = Array.from(sites.value).filter(Number.isFinite)
+  const min = values.reduce((least, value) => Math.min(least, value), Infinity)
+  const max = values.reduce((most, value) => Math.max(most, value), -Infinity)
+  const farthest = radius.reduce((most, r) => (r > most ? r : most), 0)
+  const edge = Number.isFinite(input.edgeRadius_mm) ? input.edgeRadius_mm : farthest || 1
+  const frame = chartFrame({
+    width_pt: input.width_pt,
+    height_pt: input.height_pt,
+    x: { min: 0, max: Math.max(edge, farthest) },
+    y: padded([min, max, ...limitsInReach(limits, min, max)].filter(Number.isFinite)),
+    xTickCount: 5,
+    yTickCount: 5,
+    right_pt: 48,
+  })
+  return {
+    width_pt: input.width_pt,
+    height_pt: input.height_pt,
+    title: input.title,
+    description: `${input.quantity.title} of ${values.length} sites against their distance from the centre, 0 to ${formatMm(edge)}.`,
+    shapes: [
+      ...frameShapes(frame, { x: 'distance from the centre / mm', y: axisTitle(input.quantity) }),
+      ...exclusionLine(frame, edge - input.edgeExclusion_mm, input.edgeExclusion_mm),
+      ...limitLines(frame, limits),
+      ...ringMeans(frame, radius, sites.value, farthest),
+      ...points(frame, radius, input),
+    ],
+  }
+}
+
+export function axisTitle({ title, unit }: MapQuantity): string {
+  return `${title} / ${unit}`
+}
+
+function exclusionLine(frame: ChartFrame, at_mm: number, exclusion_mm: number): Shape[] {
+  if (!(exclusion_mm > 0) || at_mm <= 0) return []
+  const x = frame.x(at_mm)
+  return [line(x, frame.top, x, frame.bottom, { stroke: INK, lineWidth_pt: 0.35, dash_pt: [1.2, 1.8] })]
+}
+
+/** The mean of the sites in each ring of equal width that holds any. */
+function ringMeans(frame: ChartFrame, radius: Float64Array, values: ArrayLike<number>, farthest: number): Shape[] {
+  const count = new Uint32Array(RINGS)
+  const sum = new Float64Array(RINGS)
+  const sumRadius = new Float64Array(RINGS)
+  for (let i = 0; i < radius.length; i++) {
+    if (!Number.isFinite(values[i]) || !Number.isFinite(radius[i])) continue
+    const ring = Math.min(RINGS - 1, Math.floor((radius[i]! / (farthest || 1)) * RINGS))
+    count[ring]!++
+    sum[ring]! += values[i]!
+    sumRadius[ring]! += radius[i]!
+  }
+  const path: number[] = []
+  for (let ring = 0; ring < RINGS; ring++) {
+    const n = count[ring]!
+    if (n > 0) path.push(frame.x(sumRadius[ring]! / n), frame.y(sum[ring]! / n))
+  }
+  return path.length > 2 ? [polyline(path, { stroke: RULE, lineWidth_pt: 1.2 })] : []
+}
+
+function points(frame: ChartFrame, radius: Float64Array, input: RadialProfileInput): Shape[] {
+  const { sites, limits } = input
+  const every = Math.ceil(radius.length / MOST_POINTS)
+  const shapes: Shape[] = []
+  for (let i = 0; i < radius.length; i++) {
+    const value = sites.value[i]!
+    if (!Number.isFinite(value) || !Number.isFinite(radius[i])) continue
+    const kind = markOf(sites.verdict[i]!, value, limits)
+    if (kind === 'in-spec' && i % every !== 0) continue
+    const x = frame.x(radius[i]!)
+    const y = frame.y(value)
+    shapes.push(mark(kind, x, y, kind === 'in-spec' ? 3 : 2.4))
+    if (shapes.length > 2 * MOST_POINTS) break
+  }
+  return shapes
+}

@@ -1,0 +1,52 @@
+/** The lot report: one analysis as a document to print, sign and hand over. */
+import type { Working } from '../analysis/working'
+import type { ReportDocument } from './document'
+import { reportContext, type LotReportInput } from './report-context'
+import { findingsSection } from './sections/findings-section'
+import { inputSection } from './sections/input-section'
+import { procedureSection } from './sections/procedure-section'
+import { sourcesSection } from './sections/sources-section'
+import { summarySection } from './sections/summary-section'
+import { uncertaintySection } from './sections/uncertainty-section'
+import { waferSection } from './sections/wafer-section'
+import { workingSection } from './sections/working-section'
+import { sourceList, type SourceUse } from './source-list'
+
+export type { LotReportInput } from './report-context'
+
+export function lotReport(input: LotReportInput): ReportDocument {
+  const { analysis, working, date, program, paper } = input
+  const context = reportContext(input, sourceList(input.sources, sourceUses(input)))
+  return {
+    title: `Lot ${analysis.lot.name}: sheet measurement report`,
+    subject: analysis.lot.sentence,
+    language: 'en',
+    program,
+    date,
+    paper,
+    footer: `Lot ${analysis.lot.name}`,
+    blocks: [
+      ...summarySection(context),
+      ...findingsSection(context),
+      ...context.wafers.flatMap((wafer) => waferSection(wafer, context)),
+      ...inputSection(context),
+      ...procedureSection(context),
+      ...uncertaintySection(context),
+      ...(working ? workingSection(working, context) : []),
+      ...sourcesSection(context),
+    ],
+  }
+}
+
+function sourceUses({ analysis, working }: LotReportInput): SourceUse[] {
+  const components = analysis.lot.varianceComponents
+  return [
+    ...(working ? stepUses(working) : []),
+    ...(components ? [{ reference: components.source, use: 'Components of variance' }] : []),
+    { reference: 'JCGM 100:2008, Guide to the expression of uncertainty in measurement', use: 'Uncertainty' },
+  ]
+}
+
+function stepUses({ steps }: Working): SourceUse[] {
+  return steps.map((step) => ({ reference: step.source, use: step.title }))
+}

@@ -1,0 +1,145 @@
+/** What several sections of the report draw on, worked out once: limits, order, marks, and each wafer's own columns. */
+import type { LotAnalysis, WaferAnalysis } from '../analysis/lot-analysis'
+import { sitePositions, type SitePositions } from '../analysis/site-positions'
+import type { Working } from '../analysis/working'
+import { bandScale, type BandScale } from './figures/band-scale'
+import { NO_LIMITS, type MarkKind, type SiteLimits } from './figures/marks'
+import type { MapSites } from './figures/wafer-map'
+import { contentWidth_pt, type PaperSize } from './document'
+import { surfacesFor, type MapDetail, type WaferSurface } from './surface'
+import type { FormulaSource, SourceList } from './source-list'
+
+export interface LotReportInput {
+  readonly analysis: LotAnalysis
+  /** Of one site, set out in full; null leaves the section out. */
+  readonly working: Working | null
+  /** ISO 8601 with zone. */
+  readonly date: string
+  /** Name and version. */
+  readonly program: string
+  readonly paper: PaperSize
+  /** Of every formula the analysis used, from the registers. */
+  readonly sources: readonly FormulaSource[]
+}
+
+export interface ReportContext {
+  readonly input: LotReportInput
+  readonly analysis: LotAnalysis
+  readonly width_pt: number
+  /** In slot order; wafers without a slot come last, as read. */
+  readonly wafers: readonly WaferAnalysis[]
+  readonly siteLimits: SiteLimits
+  readonly meanLimits: SiteLimits
+  /** Columns of one wafer's sites; x and y are NaN where the file has no positions. */
+  readonly sitesOf: (wafer: WaferAnalysis) => MapSites
+  readonly hasPositions: boolean
+  readonly positions: SitePositions | null
+  /** One colour scale for every map; null where no site has a value. */
+  readonly scale: BandScale | null
+  readonly surfaceOf: (sites: MapSites, detail: MapDetail) => WaferSurface | null
+  readonly sources: SourceList
+}
+
+export function reportContext(input: LotReportInput, sources: SourceList): ReportContext {
+  const { analysis } = input
+  const positions = sitePositions(analysis.readings, analysis.procedure)
+  const { value, verdict } = analysis.sites
+  const none = new Float64Array(positions ? 0 : analysis.sites.count).fill(NaN)
+  const x = positions?.x_mm ?? none
+  const y = positions?.y_mm ?? none
+  const { siteLimits, meanLimits } = judgedLimits(analysis)
+  const scale = scaleOf(value)
+  return {
+    input,
+    analysis,
+    width_pt: contentWidth_pt(input.paper),
+    wafers: inSlotOrder(analysis.wafers),
+    siteLimits,
+    meanLimits,
+    sitesOf: ({ sites }) => ({
+      x_mm: Float64Array.from(sites, (i) => x[i]!),
+      y_mm: Float64Array.from(sites, (i) => y[i]!),
+      value: Float64Array.from(sites, (i) => value[i]!),
+      verdict: Uint8Array.from(sites, (i) => verdict[i]!),
+    }),
+    hasPositions: positions !== null,
+    positions,
+    scale,
+    surfaceOf: surfacesFor(analysis.outline, scale),
+    sources,
+  }
+}
+
+function judgedLimits({ procedure, quantity }: LotAnalysis): { siteLimits: SiteLimits; meanLimits: SiteLimits } {
+  const { limits } = procedure
+  return quantity.id === 'resistivity'
+    ? { siteLimits: asLimits(limits.resistivityOhmCm), meanLimits: asLimits(limits.waferMeanOhmCm) }
+    : { siteLimits: asLimits(limits.sheetResistanceOhmSq), meanLimits: asLimits(limits.waferMeanOhmSq) }
+}
+
+interface WrittenLimits {
+  readonly target?: number | undefined
+  readonly lower?: number | undefined
+  readonly upper?: number | undefined
+}
+
+function asLimits(written: WrittenLimits | undefined): SiteLimits {
+  if (!written) return NO_LIMITS
+  return { target: written.target ?? NaN, lower: written.lower ?? NaN, upper: written.upper ?? NaN }
+}
+
+function inSlotOrder(wafers: readonly WaferAnalysis[]): readonly WaferAnalysis[] {
+  const place = (wafer: WaferAnalysis) => (Number.isNaN(wafer.slot) ? Infinity : wafer.slot)
+  return [...wafers].sort((a, b) => (place(a) === place(b) ? a.index - b.index : place(a) - place(b)))
+}
+
+/** A single stray site must not flatten every map: the scale spans what lies within 4 quartile widths of the middle half. */
+function scaleOf(values: Float64Array): BandScale | null {
+  const sorted = values.filter(Number.isFinite).sort()
+  if (sorted.length === 0) return null
+  const lower = sorted[Math.floor(0.25 * (sorted.length - 1))]!
+  const upper = sorted[Math.ceil(0.75 * (sorted.length - 1))]!
+  const reach = 4 * Math.max(upper - lower, 1e-6 * Math.abs(upper))
+  const inside = sorted.filter((value) => value >= lower - reach && value <= upper + reach)
+  return bandScale(inside[0]!, inside[inside.length - 1]!)
+}
+
+export const VERDICT_WORDS = {
+  'in-spec': 'In spec',
+  'out-of-spec': 'Out of spec',
+  undecided: 'Undecided',
+  'not-assessed': 'Not assessed',
+} as const
+
+/** The shape beside a wafer's verdict; null is calm. A triangle points the way most of its sites, or its mean, are off. */
+export function waferMarkOf(
+  wafer: WaferAnalysis,
+  { analysis, siteLimits, meanLimits }: ReportContext,
+): MarkKind | null {
+  if (wafer.verdict === 'in-spec') return null
+  if (wafer.verdict !== 'out-of-spec') return wafer.verdict
+  let above = 0
+  let below = 0
+  for (const i of wafer.sites) {
+    if (analysis.sites.verdict[i] !== 1) continue
+    if (analysis.sites.value[i]! > siteLimits.upper) above++
+    if (analysis.sites.value[i]! < siteLimits.lower) below++
+  }
+  if (above !== below) return above > below ? 'above' : 'below'
+  return wafer.statistics.mean < meanLimits.lower ? 'below' : 'above'
+}
+
+/** The lot's shape: that of its worst wafers. */
+export function lotMarkOf(context: ReportContext): MarkKind | null {
+  const { verdict } = context.analysis.lot
+  if (verdict === 'in-spec') return null
+  if (verdict !== 'out-of-spec') return verdict
+  const marks = context.wafers.map((wafer) => waferMarkOf(wafer, context))
+  const below = marks.filter((mark) => mark === 'below').length
+  return below > marks.filter((mark) => mark === 'above').length ? 'below' : 'above'
+}
+
+/** "Wafer 07"; a label that says "wafer" already is left as it is. */
+export function waferTitle(id: string): string {
+  return /^wafer\b/i.test(id) ? id : `Wafer ${id}`
+}

@@ -1,0 +1,164 @@
+/** One page for one wafer: its map, how its values run and spread, its statistics, and what they imply for the layer. */
+import { VERDICTS, type WaferAnalysis } from '../../analysis/lot-analysis'
+import { formatNumber, formatPercent, formatQuantity, formatWithUncertainty } from '../../units/format'
+import type { Block, KeyValue } from '../document'
+import { histogram } from '../figures/histogram'
+import { radialProfile } from '../figures/radial-profile'
+import { waferMap, type MapDies } from '../figures/wafer-map'
+import { VERDICT_WORDS, waferMarkOf, waferTitle, type ReportContext } from '../report-context'
+import { layerColumns } from './layer-words'
+
+const CHART_GAP_PT = 14
+
+export function waferSection(wafer: WaferAnalysis, context: ReportContext): Block[] {
+  const title = waferTitle(wafer.id)
+  const slot = Number.isNaN(wafer.slot) ? '' : `, slot ${wafer.slot}`
+  const statistics: Block = { kind: 'key-values', columns: 1, entries: statisticsEntries(wafer, context) }
+  const layer = layerEntries(wafer, context)
+  return [
+    { kind: 'page-break' },
+    {
+      kind: 'heading',
+      level: 1,
+      text: title,
+      aside: `${context.analysis.lot.name}${slot}`,
+      bookmark: `${title}: ${VERDICT_WORDS[wafer.verdict].toLowerCase()}`,
+    },
+    {
+      kind: 'verdict',
+      word: VERDICT_WORDS[wafer.verdict],
+      mark: waferMarkOf(wafer, context),
+      sentence: sentenceOf(wafer.reasons),
+    },
+    ...figures(wafer, context),
+    {
+      kind: 'columns',
+      columns: [
+        [{ kind: 'heading', level: 3, text: 'Statistics' }, statistics],
+        [
+          { kind: 'heading', level: 3, text: 'Counts' },
+          { kind: 'key-values', columns: 1, entries: countEntries(wafer) },
+          ...(layer.length > 0
+            ? ([
+                { kind: 'heading', level: 3, text: 'Layer, means over the sites' },
+                { kind: 'key-values', columns: 1, entries: layer },
+              ] as const)
+            : []),
+        ],
+      ],
+    },
+  ]
+}
+
+/** Reasons joined to one sentence with a capital and a stop. */
+function sentenceOf(reasons: readonly string[]): string {
+  const text = reasons.join('; ')
+  if (text === '') return ''
+  return `${text.charAt(0).toUpperCase()}${text.slice(1)}${/[.!?]$/.test(text) ? '' : '.'}`
+}
+
+function figures(wafer: WaferAnalysis, context: ReportContext): Block[] {
+  const { analysis, width_pt, siteLimits, scale } = context
+  const sites = context.sitesOf(wafer)
+  const { quantity, outline, procedure } = analysis
+  const chart = { quantity, limits: siteLimits, width_pt: (width_pt - CHART_GAP_PT) / 2, height_pt: 142 }
+  const title = waferTitle(wafer.id)
+  const spread = histogram({ ...chart, title: `${title}: histogram`, values: sites.value })
+  if (!context.hasPositions || !scale) {
+    const text = scale ? 'No map: the readings carry no positions.' : 'No map: no site of the lot has a value.'
+    return [
+      { kind: 'paragraph', text, quiet: true },
+      { kind: 'figures', figures: [spread] },
+    ]
+  }
+  const surface = context.surfaceOf(sites, 'large')
+  const map = waferMap({
+    title: `${title}: map of ${quantity.title}`,
+    outline,
+    edgeExclusion_mm: procedure.wafer.edgeExclusionMm,
+    quantity,
+    sites,
+    limits: siteLimits,
+    scale,
+    contours: surface?.contours ?? null,
+    diesOut: diesOutOf(wafer, context),
+    width_pt,
+    height_pt: 372,
+  })
+  const profile = radialProfile({
+    ...chart,
+    title: `${title}: radial profile`,
+    sites,
+    edgeRadius_mm: outline.shape === 'disc' ? outline.diameter_mm / 2 : NaN,
+    edgeExclusion_mm: outline.shape === 'disc' ? procedure.wafer.edgeExclusionMm : 0,
+  })
+  return [
+    { kind: 'figures', figures: [map] },
+    ...(surface ? [mapCaption(surface.method)] : []),
+    { kind: 'figures', figures: [profile, spread] },
+  ]
+}
+
+function mapCaption(method: string): Block {
+  const text = `Colours between the sites: ${method}; beyond the outermost sites they are extrapolated. Printed values are those of the sites.`
+  return { kind: 'paragraph', text, quiet: true }
+}
+
+function diesOutOf(wafer: WaferAnalysis, { analysis }: ReportContext): MapDies | null {
+  const { dies, procedure } = analysis
+  if (!dies || !procedure.dieGrid) return null
+  const centreX_mm: number[] = []
+  const centreY_mm: number[] = []
+  for (let i = 0; i < dies.count; i++) {
+    if (dies.wafer[i] !== wafer.index || VERDICTS[dies.verdict[i]!] !== 'out-of-spec') continue
+    centreX_mm.push(dies.x_mm[i]!)
+    centreY_mm.push(dies.y_mm[i]!)
+  }
+  return { centreX_mm, centreY_mm, pitchX_mm: procedure.dieGrid.pitchXMm, pitchY_mm: procedure.dieGrid.pitchYMm }
+}
+
+function statisticsEntries(wafer: WaferAnalysis, { analysis }: ReportContext): KeyValue[] {
+  const { statistics: s } = wafer
+  const { unit } = analysis.quantity
+  return [
+    { key: 'Mean', value: formatWithUncertainty(s.mean, wafer.uMean, unit), note: 'standard uncertainty' },
+    { key: 'Median', value: formatQuantity(s.median, unit) },
+    { key: 'Standard deviation', value: formatQuantity(s.standardDeviation, unit), note: 'divisor n − 1' },
+    { key: 'Minimum, maximum', value: `${formatNumber(s.min, unit)} to ${formatQuantity(s.max, unit)}` },
+    ...s.nonuniformity.map(({ formula, percent }, i) => ({
+      key: i === 0 ? 'Non-uniformity' : '',
+      value: formatPercent(percent),
+      note: formula.replaceAll('-', '−'),
+    })),
+  ]
+}
+
+function countEntries(wafer: WaferAnalysis): KeyValue[] {
+  const { dieCounts: dies } = wafer
+  return [
+    { key: 'Sites', value: String(wafer.sites.length) },
+    { key: 'In the statistics', value: String(wafer.statistics.count) },
+    { key: 'Out of spec', value: String(wafer.sitesOut) },
+    { key: 'Not assessed', value: String(wafer.sitesNotAssessed) },
+    { key: 'Rejected rows', value: String(wafer.rejectedRows) },
+    ...(dies
+      ? [
+          {
+            key: 'Dies',
+            value: `${dies['in-spec']} in, ${dies['out-of-spec']} out`,
+            note: `${dies.undecided} undecided, ${dies['not-assessed']} not assessed`,
+          },
+        ]
+      : []),
+  ]
+}
+
+function layerEntries(wafer: WaferAnalysis, { analysis }: ReportContext): KeyValue[] {
+  const { layer } = analysis.procedure
+  const entries = layerColumns(analysis).map(({ title, unit, mean }) => ({
+    key: title,
+    value: formatQuantity(mean(wafer), unit),
+  }))
+  if (entries.length === 0 || !('mobility' in layer)) return entries
+  return [...entries, { key: 'Mobility model', value: layer.mobility }]
+}
