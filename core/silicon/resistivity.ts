@@ -82,8 +82,9 @@ function solve(query: ConcentrationQuery): Solution {
   requireRange('resistivity', rho, 'ohm cm', min, pieces[0].resistivity_ohm_cm(pieces[0].min_cm3))
   // The first piece that reaches down to it; in the gap between two pieces that is the upper one, at its start.
   const piece = pieces.find(({ max_cm3, resistivity_ohm_cm }) => resistivity_ohm_cm(max_cm3) <= rho) ?? last
-  const isAtStart = rho >= piece.resistivity_ohm_cm(piece.min_cm3)
-  return { piece, netDoping_cm3: isAtStart ? piece.min_cm3 : solvePiece(piece, rho) }
+  if (rho >= piece.resistivity_ohm_cm(piece.min_cm3)) return { piece, netDoping_cm3: piece.min_cm3 }
+  if (rho === piece.resistivity_ohm_cm(piece.max_cm3)) return { piece, netDoping_cm3: piece.max_cm3 }
+  return { piece, netDoping_cm3: solvePiece(piece, rho) }
 }
 
 /**
