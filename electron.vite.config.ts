@@ -1,0 +1,36 @@
+import { resolve } from 'node:path'
+import vue from '@vitejs/plugin-vue'
+import { defineConfig } from 'electron-vite'
+
+const here = import.meta.dirname
+
+export default defineConfig({
+  main: {
+    build: {
+      outDir: 'out/main',
+      rolldownOptions: { input: { index: resolve(here, 'app/main/index.ts') } },
+    },
+  },
+  preload: {
+    build: {
+      outDir: 'out/preload',
+      // A sandboxed preload is one CommonJS file that requires nothing but electron.
+      externalizeDeps: false,
+      rolldownOptions: {
+        input: { index: resolve(here, 'app/preload/index.ts') },
+        output: { format: 'cjs', entryFileNames: '[name].cjs' },
+      },
+    },
+  },
+  renderer: {
+    root: resolve(here, 'app/renderer'),
+    plugins: [vue()],
+    build: {
+      outDir: resolve(here, 'out/renderer'),
+      emptyOutDir: true,
+      minify: true,
+      rolldownOptions: { input: { index: resolve(here, 'app/renderer/index.html') } },
+    },
+    worker: { format: 'es' },
+  },
+})
