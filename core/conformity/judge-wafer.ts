@@ -7,7 +7,7 @@ import {
   NO_LIMITS,
   judgedSites,
   meanReason,
-  notAssessedSitesReason,
+  missingSitesReason,
   sitesReason,
   undecidedSitesReason,
   uniformityReason,
@@ -70,8 +70,10 @@ export function judgeWafer(wafer: WaferToJudge): WaferJudgement {
   const all = [judgeSites(wafer), judgeMean(wafer), judgeUniformity(wafer)].filter((finding) => finding !== null)
   const verdict = (['out-of-spec', 'undecided'] as const).find((v) => all.some((f) => f.verdict === v)) ?? 'in-spec'
   const deciding = all.filter((finding) => finding.verdict === verdict)
-  const missing = findings.counts['not-assessed']
-  const remarks = missing > 0 ? [notAssessedSitesReason(missing)] : []
+  // Not the verdict's count: without site limits no site is assessed, though every one counts in the mean.
+  const sites = Object.values(findings.counts).reduce((sum, count) => sum + count, 0)
+  const missing = sites - statistics.count
+  const remarks = missing > 0 ? [missingSitesReason(missing, sites)] : []
   const reasons = [...deciding.map((finding) => finding.reason), ...remarks]
   return { ...known, verdict, reasons: reasons.map((reason) => `${waferName(id)}: ${reason}`), deciding }
 }

@@ -69,8 +69,9 @@ export function undecidedSitesReason(undecided: number, judged: number): string 
   return `${undecided} of ${plural(judged, 'site')} undecided`
 }
 
-export function notAssessedSitesReason(count: number): string {
-  return `${plural(count, 'site')} not assessed`
+/** "1 of 49 sites has no usable reading". */
+export function missingSitesReason(missing: number, sites: number): string {
+  return `${missing} of ${plural(sites, 'site')} ${missing === 1 ? 'has' : 'have'} no usable reading`
 }
 
 /** Sites that got a verdict. */
@@ -100,7 +101,7 @@ function wholeDigits(value: number): number {
 function apartFrom(limit: number, value: number, unit: string): string {
   const usual = formatNumber(value, unit)
   if (usual !== formatNumber(limit, unit)) return usual
-  for (let digits = 5; digits < 17; digits++) {
+  for (let digits = 3; digits < 17; digits++) {
     const text = formatSignificant(value, digits)
     if (text !== formatSignificant(limit, digits)) return text
   }
