@@ -83,7 +83,12 @@ export interface WaferAnalysis {
   /** Standard uncertainty of the wafer mean: shared part whole, independent parts averaged. */
   readonly uMean: number
   /** Means over the same sites of what the layer gives; NaN where it gives none. */
-  readonly means: { readonly resistivity_ohm_cm: number; readonly concentration_cm3: number; readonly dose_cm2: number; readonly thickness_um: number }
+  readonly means: {
+    readonly resistivity_ohm_cm: number
+    readonly concentration_cm3: number
+    readonly dose_cm2: number
+    readonly thickness_um: number
+  }
   readonly sitesOut: number
   readonly sitesNotAssessed: number
   readonly rejectedRows: number

@@ -5,6 +5,18 @@ export interface Working {
   readonly x_mm: number
   readonly y_mm: number
   readonly steps: readonly WorkingStep[]
+  /** What the uncertainty of the sheet resistance is made of, largest first; empty for an exact procedure. */
+  readonly budget: readonly BudgetLine[]
+}
+
+export interface BudgetLine {
+  readonly component: string
+  readonly title: string
+  readonly shared: boolean
+  /** Relative effect on the judged quantity: derivative times standard uncertainty, over the value [-]. */
+  readonly relative: number
+  /** Of the sum of squares [-]. */
+  readonly share: number
 }
 
 export interface WorkingStep {

@@ -1,0 +1,83 @@
+import type { LotAnalysis, WaferAnalysis } from '../../core/analysis/lot-analysis'
+import { formatFixed, formatSignificant } from '../../core/units/format'
+
+/** The lot as a short table for a terminal: its sentence, a row a wafer, a row for the lot, the reasons. */
+export function lotTable(analysis: LotAnalysis): string {
+  const { wafers, lot, quantity, dies } = analysis
+  const header = [
+    'wafer',
+    'sites',
+    `mean ${quantity.unit}`,
+    'u(mean)',
+    'SUP %',
+    'HLV %',
+    'min',
+    'max',
+    'sites out',
+    'dies out',
+    'verdict',
+  ]
+  const rows = wafers.map((wafer) => waferRow(wafer, dies !== null))
+  const { statistics } = lot
+  const lotRow = [
+    'lot',
+    String(wafers.length),
+    four(statistics.mean),
+    '',
+    two(statistics.nonuniformityPercent),
+    two(statistics.rangePercent),
+    four(statistics.min),
+    four(statistics.max),
+    '',
+    '',
+    lot.verdict,
+  ]
+  const table = aligned([header, ...rows, lotRow])
+  const rule = '-'.repeat(Math.max(...table.map((line) => line.length)))
+  const [head, ...body] = table
+  return [
+    lot.sentence,
+    '',
+    head,
+    rule,
+    ...body.slice(0, -1),
+    rule,
+    body.at(-1),
+    '',
+    'SUP = 100 s/mean, HLV = 200 (max - min)/(max + min): SEMI MF1618; the lot row is over wafer means',
+  ].join('\n')
+}
+
+function waferRow(wafer: WaferAnalysis, hasDies: boolean): string[] {
+  const { statistics, dieCounts } = wafer
+  return [
+    wafer.id,
+    String(statistics.count),
+    four(statistics.mean),
+    formatSignificant(wafer.uMean, 2),
+    two(statistics.nonuniformityPercent),
+    two(statistics.rangePercent),
+    four(statistics.min),
+    four(statistics.max),
+    String(wafer.sitesOut),
+    hasDies && dieCounts ? String(dieCounts['out-of-spec']) : '',
+    wafer.verdict,
+  ]
+}
+
+const four = (value: number): string => formatSignificant(value, 4)
+const two = (value: number): string => formatFixed(value, 2)
+
+/** First and last column to the left, the rest to the right. */
+function aligned(rows: readonly (readonly string[])[]): string[] {
+  const widths = rows[0].map((_, column) => Math.max(...rows.map((row) => row[column].length)))
+  const last = widths.length - 1
+  return rows.map((row) =>
+    row
+      .map((cell, column) =>
+        column === 0 || column === last ? cell.padEnd(widths[column]) : cell.padStart(widths[column]),
+      )
+      .join('  ')
+      .trimEnd(),
+  )
+}

@@ -1,0 +1,64 @@
+#!/usr/bin/env node
+import { explain } from '../../core/problems/explain'
+import { CoreError } from '../../core/problems/problem'
+import { analyzeCommand } from './analyze'
+import { PROGRAM, VERSION } from './version'
+
+/** Exit status: 0 analysed and in spec; 1 analysed, but not in spec throughout; 2 could not be analysed. */
+const commands: Record<string, (args: readonly string[]) => Promise<number>> = { analyze: analyzeCommand }
+
+const usage = `usage: persquare analyze FILE... --procedure FILE [--out DIR] [options]
+
+  FILE                 one CSV, or several of the same lot
+  --procedure FILE     the procedure (JSON) that says how to correct and judge them
+  --out DIR            where result.json, sites.csv, dies.csv and report.pdf go
+  --write LIST         only these of json,sites,dies,pdf (default: all)
+  --date DATE          the report's date (default: the latest reading's time)
+  --paper SIZE         A4 or Letter (default: A4)
+  --json               print result.json instead of the table
+  --quiet              print nothing but errors
+
+exit status: 0 analysed and in spec; 1 analysed, something is out of spec, undecided or not assessed; 2 not analysed
+
+persquare --version, persquare --help`
+
+async function main(args: readonly string[]): Promise<number> {
+  const [name, ...rest] = args
+  if (name === '--version' || name === '-V') {
+    console.log(`${PROGRAM} ${VERSION}`)
+    return 0
+  }
+  if (name === undefined || name === '--help' || name === '-h' || name === 'help') {
+    console.log(usage)
+    return name === undefined ? 2 : 0
+  }
+  const command = Object.hasOwn(commands, name) ? commands[name] : undefined
+  if (!command || rest.includes('--help')) {
+    if (command) console.log(usage)
+    else
+      console.error(`persquare: there is no command "${name}". The commands are: ${Object.keys(commands).join(', ')}.`)
+    return command ? 0 : 2
+  }
+  return command(rest)
+}
+
+main(process.argv.slice(2)).then(
+  (status) => {
+    process.exitCode = status
+  },
+  (error: unknown) => {
+    const known = error instanceof CoreError ? explain(error.problem) : null
+    console.error(
+      known
+        ? `persquare: ${known}`
+        : `persquare: internal error: ${error instanceof Error ? error.message : String(error)}`,
+    )
+    if (process.env['PERSQUARE_DEBUG'] && error instanceof Error) console.error(error.stack)
+    process.exitCode = 2
+  },
+)
+
+// A reader that stops early (`| head`) is no error of ours.
+process.stdout.on('error', (error: NodeJS.ErrnoException) => {
+  if (error.code !== 'EPIPE') throw error
+})

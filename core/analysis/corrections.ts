@@ -1,0 +1,172 @@
+/** From V/I to corrected sheet resistance: every factor of every site, and how each component would move the result. */
+import { dualEdgeErrors } from '../geometry/dual-edge'
+import { DUAL_QUADRATIC_RATIO, dualSheetResistances } from '../geometry/dual'
+import { dualThicknessFactor } from '../geometry/dual-thickness'
+import { criticalEdgeDistance_mm } from '../geometry/edge-and-thickness'
+import { thicknessFactor, type ThicknessFactor } from '../geometry/thickness'
+import { thinSheetFactors, type ThinSheetColumns } from '../geometry/thin-sheet'
+import type { Readings } from '../ingest/readings'
+import type { Procedure } from '../procedure/schema'
+import { SITE_FLAGS } from './flags'
+import type { MeasuringSetUp } from './measuring-set-up'
+import { takeReported, type ReportedValues } from './reported-values'
+import type { SitePositions } from './site-positions'
+import { temperatureCorrection, type TemperatureCorrection } from './temperature-correction'
+import type { VOverI } from './v-over-i'
+
+export interface Corrections {
+  readonly vOverI: VOverI
+  /** Rs/(V/I) of the thin sheet, of configuration A under dual; NaN where nothing was corrected. */
+  readonly geometryFactor: Float64Array
+  /** The same for all sites. */
+  readonly thickness: ThicknessFactor
+  readonly temperature: TemperatureCorrection
+  readonly reported: ReportedValues | null
+  readonly sheetResistance_ohm_sq: Float64Array
+  /** d ln F / d ln w: what a relative error of thickness does to sheet resistance. */
+  readonly thicknessSlope: number
+  readonly slopes: Slopes
+}
+
+/** How ln Rs moves a unit of each component, a column each; the three spacings added in quadrature, and so x and y. */
+export interface Slopes {
+  readonly voltage: Float64Array
+  readonly spacing_per_mm: Float64Array
+  readonly temperature_per_C: Float64Array
+  readonly diameter_per_mm: Float64Array
+  readonly position_per_mm: Float64Array
+}
+
+/** Beyond this a product of factors, or the dual relation near an edge, is flagged. */
+const DOMAIN_TOLERANCE = 1e-3
+const UM_IN_CM = 1e-4
+const NO_THICKNESS: ThicknessFactor = { value: 1, dLnRatio: 0, source: 'isolated layer: no factor' }
+
+export function correct(
+  readings: Readings,
+  procedure: Procedure,
+  setUp: MeasuringSetUp,
+  positions: SitePositions | null,
+  vOverI: VOverI,
+  flags: Uint32Array,
+): Corrections {
+  const reported = takeReported(readings, procedure, vOverI.a_ohm, flags)
+  const geometry = thinSheet(readings.count, setUp, positions)
+  const thickness = thicknessOf(setUp, procedure)
+  flagDomains(geometry, setUp, positions, procedure, flags)
+  const dual = setUp.isDual && vOverI.b_ohm ? dualColumns(vOverI, flags) : null
+  const sheet = thinSheetResistance(vOverI, geometry, dual)
+  for (let i = 0; i < sheet.length; i++) sheet[i] *= thickness.value
+  const { conductingThickness_um } = setUp
+  const asMeasured = conductingThickness_um ? sheet.map((rs) => rs * conductingThickness_um * UM_IN_CM) : null
+  const temperature = temperatureCorrection(readings, procedure, asMeasured, flags)
+  for (let i = 0; i < sheet.length; i++) {
+    sheet[i] =
+      flags[i] & SITE_FLAGS.reported.bit ? reported!.sheetResistance_ohm_sq[i] : sheet[i] * temperature.factor[i]
+  }
+  return {
+    vOverI,
+    geometryFactor: geometry.factor,
+    thickness,
+    temperature,
+    reported,
+    sheetResistance_ohm_sq: sheet,
+    thicknessSlope: thickness.dLnRatio,
+    slopes: slopesOf(geometry, thickness, setUp, dual, temperature),
+  }
+}
+
+/** Without positions, or without edges, every site is that of the infinite sheet. */
+function thinSheet(count: number, setUp: MeasuringSetUp, positions: SitePositions | null): ThinSheetColumns {
+  const { spacings_mm, orientation, outline } = setUp
+  if (positions) return thinSheetFactors({ outline, spacings_mm, orientation, ...positions, configuration: 'A' })
+  const nowhere = { x_mm: new Float64Array(count), y_mm: new Float64Array(count) }
+  return thinSheetFactors({ outline: { shape: 'infinite' }, spacings_mm, orientation, ...nowhere, configuration: 'A' })
+}
+
+function thicknessOf(setUp: MeasuringSetUp, procedure: Procedure): ThicknessFactor {
+  const { conductingThickness_um: thickness_um, meanSpacing_mm: spacing_mm } = setUp
+  if (thickness_um === null) return NO_THICKNESS
+  return setUp.isDual
+    ? dualThicknessFactor({ thickness_um, spacing_mm })
+    : thicknessFactor({ thickness_um, spacing_mm, back: procedure.wafer.back })
+}
+
+function dualColumns({ a_ohm, b_ohm }: VOverI, flags: Uint32Array) {
+  const columns = dualSheetResistances({ resistanceA_ohm: a_ohm, resistanceB_ohm: b_ohm! })
+  for (let i = 0; i < a_ohm.length; i++) {
+    const ratio = a_ohm[i] / b_ohm![i]
+    if (ratio < DUAL_QUADRATIC_RATIO.min || ratio > DUAL_QUADRATIC_RATIO.max) flags[i] |= SITE_FLAGS.dualRatio.bit
+  }
+  return columns
+}
+
+type DualColumns = ReturnType<typeof dualColumns>
+
+function thinSheetResistance({ a_ohm }: VOverI, { factor }: ThinSheetColumns, dual: DualColumns | null): Float64Array {
+  const sheet = new Float64Array(a_ohm.length)
+  for (let i = 0; i < sheet.length; i++) {
+    // Off the wafer there is no result, though the dual relation by itself would give one.
+    sheet[i] = dual ? (factor[i] > 0 ? dual.sheetResistance_ohm_sq[i] : NaN) : factor[i] * a_ohm[i]
+  }
+  return sheet
+}
+
+function flagDomains(
+  { edgeDistance_mm }: ThinSheetColumns,
+  setUp: MeasuringSetUp,
+  positions: SitePositions | null,
+  procedure: Procedure,
+  flags: Uint32Array,
+): void {
+  const { spacings_mm, orientation, outline, conductingThickness_um: thickness_um, meanSpacing_mm: spacing_mm } = setUp
+  const critical_mm =
+    thickness_um === null || outline.shape === 'infinite'
+      ? 0
+      : criticalEdgeDistance_mm({ thickness_um, spacing_mm, tolerance: DOMAIN_TOLERANCE, back: procedure.wafer.back })
+  for (let i = 0; i < flags.length; i++) {
+    if (flags[i] & SITE_FLAGS.reported.bit) continue
+    if (edgeDistance_mm[i] < 0) flags[i] |= SITE_FLAGS.pinOffWafer.bit
+    else if (edgeDistance_mm[i] < critical_mm) flags[i] |= SITE_FLAGS.thicknessNearEdge.bit
+  }
+  if (!setUp.isDual || !positions) return
+  const errors = dualEdgeErrors({ outline, spacings_mm, orientation, ...positions })
+  for (let i = 0; i < errors.length; i++) {
+    if (Math.abs(errors[i]) > DOMAIN_TOLERANCE) flags[i] |= SITE_FLAGS.dualNearEdge.bit
+  }
+}
+
+function slopesOf(
+  geometry: ThinSheetColumns,
+  thickness: ThicknessFactor,
+  { meanSpacing_mm }: MeasuringSetUp,
+  dual: DualColumns | null,
+  temperature: TemperatureCorrection,
+): Slopes {
+  const count = geometry.factor.length
+  // F depends on w/S, and S is the mean of three.
+  const throughThickness = -thickness.dLnRatio / (3 * meanSpacing_mm)
+  const column = () => new Float64Array(count)
+  const slopes = {
+    voltage: column().fill(1),
+    spacing_per_mm: column(),
+    diameter_per_mm: column(),
+    position_per_mm: column(),
+  }
+  for (let i = 0; i < count; i++) {
+    if (dual) {
+      // The two voltages err independently; spacing, place and size of the wafer cancel in the exact relation.
+      slopes.voltage[i] = Math.hypot(dual.dLnA[i], dual.dLnB[i])
+      slopes.spacing_per_mm[i] = Math.sqrt(3) * Math.abs(throughThickness)
+      continue
+    }
+    const s1 = geometry.dSpacing1_per_mm[i] + throughThickness
+    const s2 = geometry.dSpacing2_per_mm[i] + throughThickness
+    const s3 = geometry.dSpacing3_per_mm[i] + throughThickness
+    slopes.spacing_per_mm[i] = Math.sqrt(s1 * s1 + s2 * s2 + s3 * s3)
+    slopes.diameter_per_mm[i] = geometry.dSize_per_mm[i]
+    const { dX_per_mm, dY_per_mm } = geometry
+    slopes.position_per_mm[i] = Math.sqrt(dX_per_mm[i] * dX_per_mm[i] + dY_per_mm[i] * dY_per_mm[i])
+  }
+  return { ...slopes, temperature_per_C: temperature.slope_per_C }
+}

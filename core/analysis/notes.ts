@@ -1,0 +1,82 @@
+/** What was assumed, taken from where, or left undone, each as a sentence that the report prints. */
+import type { Readings } from '../ingest/readings'
+import type { Procedure } from '../procedure/schema'
+import { layerMobility } from './prepare-layer'
+import { CELSIUS_ZERO_K } from '../units/constants'
+import type { Corrections } from './corrections'
+import type { DieColumns, Quantity } from './lot-analysis'
+import type { MeasuringSetUp } from './measuring-set-up'
+import type { SitePositions } from './site-positions'
+
+export interface NotesInput {
+  readonly readings: Readings
+  readonly procedure: Procedure
+  readonly positions: SitePositions | null
+  readonly setUp: MeasuringSetUp
+  readonly corrections: Corrections
+  readonly quantity: Quantity
+  readonly dies: DieColumns | null
+}
+
+export function analysisNotes(input: NotesInput): string[] {
+  return [
+    ...valueNotes(input),
+    ...placeNotes(input),
+    ...(input.corrections.reported && allReported(input) ? [] : [input.corrections.temperature.note]),
+    ...modelNotes(input),
+  ]
+}
+
+function allReported({ corrections }: NotesInput): boolean {
+  return corrections.vOverI.a_ohm.every((ratio) => Number.isNaN(ratio))
+}
+
+function valueNotes({ readings, procedure, corrections, setUp }: NotesInput): string[] {
+  const notes: string[] = []
+  const { reported } = procedure
+  if (corrections.reported) {
+    notes.push(
+      'Some values are taken as the file reports them: no correction of ours is in them, and only their own uncertainty.',
+    )
+  }
+  if (reported && (readings.sheetResistance_ohm_sq ?? readings.resistivity_ohm_cm)) {
+    notes.push(`V/I was recovered from the reported values with the constant ${reported.factor} and corrected anew.`)
+  }
+  if (readings.voltage_V && (readings.sheetResistance_ohm_sq || readings.resistivity_ohm_cm)) {
+    notes.push('The file reports results of its own beside V and I: they were left aside, and ours made from V and I.')
+  }
+  if (setUp.isDual && !corrections.vOverI.b_ohm) {
+    notes.push('The procedure says dual configuration, but the readings have no configuration B: treated as single.')
+  }
+  if (!setUp.isDual && corrections.vOverI.b_ohm) {
+    notes.push('The readings have a configuration B that a single-configuration procedure leaves unused.')
+  }
+  return notes
+}
+
+function placeNotes({ positions, setUp, procedure, dies }: NotesInput): string[] {
+  const notes: string[] = []
+  if (positions?.note) notes.push(positions.note)
+  if (!positions)
+    notes.push(
+      'The readings have no positions: every site is treated as far from the edges, and nothing is left out at the edge.',
+    )
+  if (setUp.outline.shape === 'infinite')
+    notes.push('The procedure gives no wafer size: every site is treated as far from the edges.')
+  if (procedure.dieGrid && !dies) notes.push('No dies were assessed: that needs both positions and a wafer size.')
+  return notes
+}
+
+function modelNotes({ procedure }: NotesInput): string[] {
+  const mobility = layerMobility(procedure.layer)
+  if (!mobility) return []
+  const { min, max } = mobility.temperature_K
+  const reference_K = procedure.temperature.referenceC + CELSIUS_ZERO_K
+  const notes = [`Concentrations are those of the mobility model "${mobility.id}"; sound models differ by up to 11 %.`]
+  if (min === max && Math.abs(min - reference_K) > 1) {
+    notes.push(
+      `The model "${mobility.id}" holds at ${min} K and was used as it stands for ${procedure.temperature.referenceC} °C: in lightly doped silicon that is about 3 %.`,
+    )
+  }
+  return notes
+}

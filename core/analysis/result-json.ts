@@ -1,0 +1,73 @@
+/** The lot's result as data for other programs: `"format": "persquare-result/1"`. */
+import { explain, placeOf } from '../problems/explain'
+import type { LotAnalysis, WaferAnalysis } from './lot-analysis'
+import { flagNames } from './flags'
+import type { Statistics } from '../statistics/summarize'
+
+export const RESULT_FORMAT = 'persquare-result/1'
+
+export interface ResultContext {
+  /** Name and version of what made it. */
+  readonly program: string
+  readonly version: string
+}
+
+/** Plain data; numbers that don't exist are null, since JSON has no NaN. Keys stand in a fixed order. */
+export function resultObject(analysis: LotAnalysis, { program, version }: ResultContext): object {
+  const { readings, procedure, defaults, problems, notes, quantity, lot, wafers } = analysis
+  return {
+    format: RESULT_FORMAT,
+    program: { name: program, version },
+    inputs: readings.files.map(({ name, bytes, sha256, dialect, preamble, matches, ignoredHeaders, rows, rejectedRows }) => ({
+      name, bytes, sha256, dialect, preamble, columns: matches, ignoredHeaders, rows, rejectedRows,
+    })), // prettier-ignore
+    procedure,
+    defaultsUsed: defaults,
+    problems: problems.map((problem) => ({ ...problem, sentence: explain(problem), place: placeOf(problem) })),
+    notes,
+    quantity: { id: quantity.id, title: quantity.title, unit: quantity.asciiUnit },
+    lot: {
+      name: lot.name,
+      verdict: lot.verdict,
+      sentence: lot.sentence,
+      reasons: lot.reasons,
+      wafers: wafers.length,
+      statistics: statisticsObject(lot.statistics),
+      varianceComponents: lot.varianceComponents,
+    },
+    wafers: wafers.map((wafer) => waferObject(wafer, analysis)),
+  }
+}
+
+/** Text of result.json: two-space indent, a line break at the end, the same for the same input. */
+export function resultJson(analysis: LotAnalysis, context: ResultContext): string {
+  return JSON.stringify(resultObject(analysis, context), numbersOrNull, 2) + '\n'
+}
+
+function numbersOrNull(_key: string, value: unknown): unknown {
+  return typeof value === 'number' && !Number.isFinite(value) ? null : value
+}
+
+function waferObject(wafer: WaferAnalysis, { sites }: LotAnalysis): object {
+  const { id, slot, verdict, reasons, statistics, uMean, means, sitesOut, sitesNotAssessed, rejectedRows, dieCounts } =
+    wafer
+  const flagged = wafer.sites.reduce((bits, site) => bits | sites.flags[site], 0)
+  return {
+    id,
+    slot,
+    verdict,
+    reasons,
+    statistics: statisticsObject(statistics),
+    meanStandardUncertainty: uMean,
+    means,
+    sitesOutOfSpec: sitesOut,
+    sitesNotAssessed,
+    rejectedRows,
+    dies: dieCounts,
+    flags: flagNames(flagged).split('|').filter(Boolean),
+  }
+}
+
+function statisticsObject({ nonuniformity, ...figures }: Statistics): object {
+  return { ...figures, nonuniformity }
+}

@@ -1,0 +1,48 @@
+/** From the bytes of files to a lot: reading, checking and analysing, the way every part of the program does it. */
+import { decodeText } from '../ingest/decode-text'
+import { readReadings, type InputFile } from '../ingest/read-files'
+import { CoreError, type Problem } from '../problems/problem'
+import { parseProcedure } from '../procedure/parse-procedure'
+import { analyze } from './analyze'
+import type { LotAnalysis } from './lot-analysis'
+
+export interface RunInput {
+  readonly readings: readonly InputFile[]
+  readonly procedure: { readonly name: string; readonly bytes: Uint8Array }
+}
+
+/** `analysis` is null exactly when something stood in the way; `problems` then says what. */
+export interface RunResult {
+  readonly analysis: LotAnalysis | null
+  readonly problems: readonly Problem[]
+}
+
+/** Never throws for what a user can bring in; a throw is a bug. */
+export function run({ readings: files, procedure: { name, bytes } }: RunInput): RunResult {
+  const decoded = decodeText(bytes)
+  if ('looksLike' in decoded) {
+    return { analysis: null, problems: [{ kind: 'not-text', file: name, looksLike: decoded.looksLike }] }
+  }
+  const parsed = parseProcedure(decoded.text, name)
+  if (!parsed.procedure) return { analysis: null, problems: parsed.problems }
+  const read = readReadings(files, parsed.procedure.readings)
+  if (!read.readings) return { analysis: null, problems: read.problems }
+  try {
+    const analysis = analyze({
+      readings: read.readings,
+      procedure: parsed.procedure,
+      defaults: parsed.defaults,
+      problems: read.problems,
+      notes: read.notes,
+    })
+    return { analysis, problems: analysis.problems }
+  } catch (error) {
+    if (!(error instanceof CoreError)) throw error
+    return { analysis: null, problems: [...read.problems, namingFile(error.problem, name)] }
+  }
+}
+
+/** The pipeline knows no file names; a key that turned out to be missing is missed in the procedure's file. */
+function namingFile(problem: Problem, file: string): Problem {
+  return 'file' in problem && problem.file === '' ? { ...problem, file } : problem
+}
