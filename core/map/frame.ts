@@ -29,7 +29,9 @@ export function frameOf(x_mm: Float64Array, y_mm: Float64Array): Frame {
     yy += y * y
   }
   const scale_mm = Math.sqrt((xx + yy) / count) || 1
-  return { centreX_mm, centreY_mm, scale_mm, isCollinear: acrossRatio(x_mm, y_mm, { centreX_mm, centreY_mm, angle: Math.atan2(2 * xy, xx - yy) / 2 }) < COLLINEAR_RATIO } // prettier-ignore
+  const angle = Math.atan2(2 * xy, xx - yy) / 2
+  const isCollinear = acrossRatio(x_mm, y_mm, { centreX_mm, centreY_mm, angle }) < COLLINEAR_RATIO
+  return { centreX_mm, centreY_mm, scale_mm, isCollinear }
 }
 
 /** Throws CoreError unless there is a site, x and y have equal lengths and every coordinate is finite. */

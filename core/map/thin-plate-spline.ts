@@ -1,6 +1,7 @@
 /** The thin-plate spline: of all surfaces through the sites, the one that bends least. */
 import { LuDecomposition, Matrix } from 'ml-matrix'
 import { CoreError } from '../problems/problem'
+import { distinctSites } from './coincident-sites'
 import { frameOf, requireSites, type Frame } from './frame'
 
 /**
@@ -51,7 +52,8 @@ export function thinPlateSpline(x_mm: Float64Array, y_mm: Float64Array): ThinPla
   const sites = scaled({ x_mm, y_mm }, frame)
   const saddle = saddleMatrix(sites)
   const factors = new LuDecomposition(saddle)
-  if (factors.isSingular()) throw noSurface('two of its sites coincide')
+  // Rounding can hide a doubled row from the factorisation.
+  if (distinctSites(x_mm, y_mm).count < siteCount || factors.isSingular()) throw noSurface('two of its sites coincide')
   // Four times the work of the factorisation, and a plain map doesn't need it.
   let inverse: Float64Array | null = null
   const inverted = () => (inverse ??= symmetricInverse(factors, saddle.rows))
