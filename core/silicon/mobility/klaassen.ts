@@ -82,7 +82,7 @@ function minorityScatterers_cm3(clustered: number, majority: number, mass: numbe
  *
  * Enters as one term of conductivity. Assumes every impurity is of the dopant's type and ionised (majority carriers as
  * many as impurities, no minority carriers): exact for uncompensated silicon, an approximation in a compensated layer.
- * Accuracy: equal to Masetti's electrons below 1e18 cm^-3 by construction.
+ * Accuracy: equal to Masetti's electrons below 1e18 cm^-3 by construction. The ranges of density and temperature are from memory.
  * Sources: D. B. M. Klaassen, Solid-State Electron. 35 (1992) 953-959 and 961-967.
  * Note: r5, the fifth coefficient of F(P), is -0.8552 here, not the -0.01552 of Table 2: see above.
  */
