@@ -91,7 +91,8 @@ function codeOf(source: Source): string {
   const parts: string[] = []
   for (let kind = scanner.scan(); kind !== ts.SyntaxKind.EndOfFileToken; kind = scanner.scan()) {
     const isText = kind === ts.SyntaxKind.StringLiteral || kind === ts.SyntaxKind.NoSubstitutionTemplateLiteral
-    const isName = kind === ts.SyntaxKind.Identifier || ts.isKeyword(kind)
+    const isName =
+      kind === ts.SyntaxKind.Identifier || (kind >= ts.SyntaxKind.FirstKeyword && kind <= ts.SyntaxKind.LastKeyword)
     const glue = isName && /\w$/.test(parts[parts.length - 1] ?? '') ? ' ' : ''
     parts.push(glue + (isText ? '""' : scanner.getTokenText()))
   }

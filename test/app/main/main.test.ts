@@ -1,6 +1,6 @@
 import { beforeAll, describe, expect, it, vi } from 'vitest'
 import { confine } from '../../../app/main/window'
-import { electronDouble, electronModule } from './electron-double'
+import type { electronDouble } from './electron-double'
 
 const electron = vi.hoisted(() => ({ double: undefined as unknown as ReturnType<typeof electronDouble> }))
 vi.mock('electron', async () => {
