@@ -13,7 +13,7 @@ import { logDistanceOf } from './registry'
  *
  * @param sites outline, pins and places; see `thinSheetFactors`
  * @returns relative error a site; 0 on the infinite sheet, along a diameter, perpendicular to a straight edge; +1 for
- *   a line lying on a straight edge; NaN where a pin is off the outline
+ *   a line lying on a straight edge; infinite in a strip so narrow that A and B read the same; NaN where a pin is off the outline
  * @throws CoreError as `thinSheetFactors`
  *
  * Assumes a thin uniform sheet. The ratio RA/RB is no substitute: it returns to 1.2619 at the edge itself.
@@ -29,7 +29,7 @@ export function dualEdgeErrors(sites: ProbeSites): Float64Array {
     if (!(place(site) >= 0)) continue
     const a = fourTerminalGradient(TERMINALS.A, logDistance, pins)
     const b = fourTerminalGradient(TERMINALS.B, logDistance, pins)
-    errors[site] = solveDual(a, b) / (2 * Math.PI) - 1
+    errors[site] = a > b ? solveDual(a, b) / (2 * Math.PI) - 1 : Infinity
   }
   return errors
 }

@@ -4,7 +4,7 @@ export const DUAL_SOURCE =
   'Exact relation of configurations A and B on an infinite sheet: R. Rymaszewski, J. Phys. E 2 (1969) 170; SEMI MF1529-1104 (configurations)'
 export const DUAL_QUADRATIC_SOURCE = 'D. S. Perloff, J. Electrochem. Soc. 123 (1976) 1745; SEMI MF1529-1104 eq. 7-8'
 
-/** Ratios RA/RB at which the exact relation is solved. Pins in line on any wafer lie within 1.1 to 1.6. */
+/** Ratios RA/RB at which the exact relation is solved. Equal pins far from every edge: ln 4/ln 3 = 1.262. */
 export const DUAL_RATIO = { min: 1.001, max: 1000 } as const
 /** Ratios at which the published quadratic is within 0.1 % of the exact relation. */
 export const DUAL_QUADRATIC_RATIO = { min: 1.2, max: 1.35 } as const
@@ -84,7 +84,7 @@ export function dualSheetResistances(resistances: {
 }
 
 /**
- * Rs of RA > RB > 0; no range check. In k = RA/Rs the relation reads h(k) = e^-2 pi k + e^-2 pi gap k - 1 = 0,
+ * Rs of RA > 0 and RA > RB; no range check (very unequal pins can bring RB to 0 and below). In k = RA/Rs the relation reads h(k) = e^-2 pi k + e^-2 pi gap k - 1 = 0,
  * gap = 1 - RB/RA: falling and convex, so Newton's step from either side lands left of the root and climbs.
  * The bracket guards rounding at the end.
  */
@@ -94,7 +94,7 @@ export function solveDual(resistanceA_ohm: number, resistanceB_ohm: number): num
   const fast = 2 * Math.PI
   const slow = fast * gap
   let low = (2 * Math.LN2) / (fast + slow)
-  let high = Math.LN2 / slow
+  let high = Math.LN2 / Math.min(fast, slow)
   let k = ratio > DUAL_QUADRATIC_RATIO.min && ratio < DUAL_QUADRATIC_RATIO.max ? 1 / quadratic(ratio) : low
   for (let step = 0; step < 100; step++) {
     const p = Math.exp(-fast * k)
