@@ -74,7 +74,7 @@ const FARTHEST = 300
  * Conservative: the error has a sign change or a maximum inside, and is 0 on the edge itself, but all of the inside is
  * flagged. Assumes an edge straight over a few pitches (a disc of more than 50 pitches) and one edge near; at a corner
  * the errors of two edges add.
- * Accuracy: 1e-4 of the distance. Costs a few milliseconds: once a procedure, not once a site.
+ * Accuracy: 1e-4 of the distance. Costs some 20 milliseconds: once a procedure, not once a site.
  */
 export function criticalEdgeDistance_mm({
   thickness_um,
