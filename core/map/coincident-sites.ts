@@ -1,7 +1,7 @@
 /** Sites measured more than once become one site at their mean: two different values at one place fit no surface. */
 export interface DistinctSites {
   readonly count: number
-  /** Places of the distinct sites, in order of first appearance. */
+  /** Places of the distinct sites, in the order of the sites as given. */
   readonly x_mm: Float64Array
   readonly y_mm: Float64Array
   /** For every site as given, which distinct site it belongs to. */
@@ -14,23 +14,16 @@ export interface DistinctSites {
 const SAME_PLACE_SHARE = 1e-6
 
 export function distinctSites(x_mm: Float64Array, y_mm: Float64Array): DistinctSites {
-  const cell_mm = SAME_PLACE_SHARE * extent_mm(x_mm, y_mm) || 1
-  const rows = new Map<string, number[]>()
-  const firsts: number[] = []
-  const distinctOf = new Uint32Array(x_mm.length)
-  for (let i = 0; i < x_mm.length; i++) {
-    const [column, row] = [Math.floor(x_mm[i]! / cell_mm), Math.floor(y_mm[i]! / cell_mm)]
-    const known = neighbour(rows, column, row, (d) => {
-      return Math.hypot(x_mm[firsts[d]!]! - x_mm[i]!, y_mm[firsts[d]!]! - y_mm[i]!) < cell_mm
-    })
-    distinctOf[i] = known ?? firsts.length
-    if (known !== null) continue
-    const key = `${column} ${row}`
-    rows.set(key, [...(rows.get(key) ?? []), firsts.length])
-    firsts.push(i)
-  }
-  const multiplicity = new Uint32Array(firsts.length)
+  const firstOf = firstOfPlace(x_mm, y_mm, SAME_PLACE_SHARE * extent_mm(x_mm, y_mm))
+  const labels = new Map<number, number>()
+  const distinctOf = firstOf.map((first) => {
+    const label = labels.get(first) ?? labels.size
+    labels.set(first, label)
+    return label
+  })
+  const multiplicity = new Uint32Array(labels.size)
   for (const distinct of distinctOf) multiplicity[distinct]!++
+  const firsts = [...labels.keys()]
   return {
     count: firsts.length,
     x_mm: Float64Array.from(firsts, (i) => x_mm[i]!),
@@ -38,6 +31,27 @@ export function distinctSites(x_mm: Float64Array, y_mm: Float64Array): DistinctS
     distinctOf,
     multiplicity,
   }
+}
+
+/**
+ * For each site, one that stands for its place. Sites are met in order along a slanted line, where those of a lattice
+ * or a diameter scan don't fall together, so that only a few before each need comparing.
+ */
+function firstOfPlace(x_mm: Float64Array, y_mm: Float64Array, tolerance_mm: number): Uint32Array {
+  const along = x_mm.map((x, i) => x * Math.cos(1) + y_mm[i]! * Math.sin(1))
+  const order = Uint32Array.from(along.keys()).sort((a, b) => along[a]! - along[b]! || a - b)
+  const firstOf = new Uint32Array(x_mm.length)
+  for (let k = 0; k < order.length; k++) {
+    const site = order[k]!
+    firstOf[site] = site
+    for (let j = k - 1; j >= 0 && along[site]! - along[order[j]!]! <= tolerance_mm; j--) {
+      const other = firstOf[order[j]!]!
+      if (Math.hypot(x_mm[other]! - x_mm[site]!, y_mm[other]! - y_mm[site]!) > tolerance_mm) continue
+      firstOf[site] = other
+      break
+    }
+  }
+  return firstOf
 }
 
 /** Mean of the values at each distinct site. */
@@ -48,22 +62,6 @@ export function meansAtDistinctSites(sites: DistinctSites, values: Float64Array)
     means[distinct]! += values[i]! / sites.multiplicity[distinct]!
   }
   return means
-}
-
-/** A place near a cell's border may have its twin in the next cell. */
-function neighbour(
-  rows: ReadonlyMap<string, readonly number[]>,
-  column: number,
-  row: number,
-  isSame: (distinct: number) => boolean,
-): number | null {
-  for (let dx = -1; dx <= 1; dx++) {
-    for (let dy = -1; dy <= 1; dy++) {
-      const found = rows.get(`${column + dx} ${row + dy}`)?.find(isSame)
-      if (found !== undefined) return found
-    }
-  }
-  return null
 }
 
 function extent_mm(x_mm: Float64Array, y_mm: Float64Array): number {

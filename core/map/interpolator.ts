@@ -95,10 +95,14 @@ function surfaceThrough(sites: DistinctSites, targets: Targets): Surface {
 
 function splineSurface({ x_mm, y_mm, count }: DistinctSites, targets: Targets): Surface {
   const spline = thinPlateSpline(x_mm, y_mm)
+  let fill: ReturnType<typeof spline.evaluatorAt> | null = null
   let weights: Float64Array | null = null
   return {
     method: 'thin-plate-spline',
-    evaluate: (values, out) => spline.evaluate(spline.coefficients(values), targets, out),
+    evaluate: (values, out) => {
+      fill ??= spline.evaluatorAt(targets)
+      return fill(spline.coefficients(values), out)
+    },
     propagate: (u, out) => {
       weights ??= spline.weights(targets)
       for (let t = 0; t < out.length; t++) {

@@ -12,8 +12,8 @@ export interface ThinPlateSpline {
   readonly siteCount: number
   /** Bending coefficients (one a site), then constant, x and y of the plane, in the scaled frame. */
   coefficients(values: Float64Array): Float64Array
-  /** The surface with those coefficients, at many places, into `out`. */
-  evaluate(coefficients: Float64Array, targets: Targets, out?: Float64Array): Float64Array
+  /** Makes ready for many surfaces at the same places: (coefficients, out) fills `out` with the surface. */
+  evaluatorAt(targets: Targets): (coefficients: Float64Array, out: Float64Array) => Float64Array
   /** How much each site's value counts at each target: rows targets, columns sites; every row sums to 1. */
   weights(targets: Targets): Float64Array
   /**
@@ -27,6 +27,9 @@ export interface Targets {
   readonly x_mm: Float64Array
   readonly y_mm: Float64Array
 }
+
+/** 32 MB: 25 000 places of a plan of 169 sites. */
+const KEPT_BASIS_ENTRIES = 4_000_000
 
 /** A diagonal of the inverse this small against its largest entry means that the other sites lie on a line. */
 const NO_SURFACE_WITHOUT = 1e-9
@@ -61,8 +64,8 @@ export function thinPlateSpline(x_mm: Float64Array, y_mm: Float64Array): ThinPla
   return {
     siteCount,
     coefficients,
-    evaluate: (fitted, targets, out) => evaluate({ sites, frame, fitted }, targets, out),
-    weights: (targets) => weights({ sites, frame, inverse: inverted() }, targets),
+    evaluatorAt: (targets) => evaluator({ sites, frame }, targets),
+    weights: (targets) => weights({ sites, frame }, inverted(), targets),
     leaveOneOut: (values) => leaveOneOut(coefficients(values), inverted(), siteCount),
   }
 }
@@ -129,41 +132,58 @@ function leaveOneOut(fitted: Float64Array, inverse: Float64Array, siteCount: num
   })
 }
 
-function evaluate(
-  surface: { readonly sites: ScaledSites; readonly frame: Frame; readonly fitted: Float64Array },
-  targets: Targets,
-  out: Float64Array = new Float64Array(targets.x_mm.length),
-): Float64Array {
-  const { sites, frame, fitted } = surface
-  const count = sites.x.length
-  for (let t = 0; t < targets.x_mm.length; t++) {
-    const x = (targets.x_mm[t]! - frame.centreX_mm) / frame.scale_mm
-    const y = (targets.y_mm[t]! - frame.centreY_mm) / frame.scale_mm
-    let sum = fitted[count]! + fitted[count + 1]! * x + fitted[count + 2]! * y
-    for (let i = 0; i < count; i++) {
-      const [dx, dy] = [x - sites.x[i]!, y - sites.y[i]!]
-      sum += fitted[i]! * kernel(dx * dx + dy * dy)
-    }
-    out[t] = sum
-  }
-  return out
+interface Surface {
+  readonly sites: ScaledSites
+  readonly frame: Frame
 }
 
-function weights(
-  surface: { readonly sites: ScaledSites; readonly frame: Frame; readonly inverse: Float64Array },
+/** What each coefficient is multiplied by at a target: U of the distance to each site, then 1, x, y. */
+function fillBasis(
+  { sites, frame }: Surface,
   targets: Targets,
-): Float64Array {
-  const { sites, inverse } = surface
-  const at = scaled(targets, surface.frame)
+  target: number,
+  out: Float64Array,
+  start: number,
+): void {
   const count = sites.x.length
+  const x = (targets.x_mm[target]! - frame.centreX_mm) / frame.scale_mm
+  const y = (targets.y_mm[target]! - frame.centreY_mm) / frame.scale_mm
+  for (let i = 0; i < count; i++) {
+    const dx = x - sites.x[i]!
+    const dy = y - sites.y[i]!
+    out[start + i] = kernel(dx * dx + dy * dy)
+  }
+  out[start + count] = 1
+  out[start + count + 1] = x
+  out[start + count + 2] = y
+}
+
+/** Keeps the logarithms of one set of targets for all wafers, unless they would fill the memory. */
+function evaluator(surface: Surface, targets: Targets): (fitted: Float64Array, out: Float64Array) => Float64Array {
+  const size = surface.sites.x.length + 3
+  const count = targets.x_mm.length
+  const isKept = count * size <= KEPT_BASIS_ENTRIES
+  const basis = new Float64Array(isKept ? count * size : size)
+  if (isKept) for (let t = 0; t < count; t++) fillBasis(surface, targets, t, basis, t * size)
+  return (fitted, out) => {
+    for (let t = 0; t < count; t++) {
+      const start = isKept ? t * size : 0
+      if (!isKept) fillBasis(surface, targets, t, basis, 0)
+      let sum = 0
+      for (let k = 0; k < size; k++) sum += basis[start + k]! * fitted[k]!
+      out[t] = sum
+    }
+    return out
+  }
+}
+
+function weights(surface: Surface, inverse: Float64Array, targets: Targets): Float64Array {
+  const count = surface.sites.x.length
   const size = count + 3
-  const out = new Float64Array(at.x.length * count)
+  const out = new Float64Array(targets.x_mm.length * count)
   const basis = new Float64Array(size)
-  for (let t = 0; t < at.x.length; t++) {
-    for (let i = 0; i < count; i++) basis[i] = kernel((at.x[t]! - sites.x[i]!) ** 2 + (at.y[t]! - sites.y[i]!) ** 2)
-    basis[count] = 1
-    basis[count + 1] = at.x[t]!
-    basis[count + 2] = at.y[t]!
+  for (let t = 0; t < targets.x_mm.length; t++) {
+    fillBasis(surface, targets, t, basis, 0)
     for (let site = 0; site < count; site++) {
       let sum = 0
       for (let k = 0; k < size; k++) sum += inverse[site * size + k]! * basis[k]!
