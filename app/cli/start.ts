@@ -70,8 +70,10 @@ function parsed(args: readonly string[]) {
       options: { browser: { type: 'boolean' }, port: { type: 'string' }, 'no-open': { type: 'boolean' } },
     })
   } catch (error) {
-    const [why = ''] = (error as Error).message.split('. ')
-    throw new CoreError({ kind: 'bad-argument', argument: args.join(' '), why })
+    const { code, message } = error as NodeJS.ErrnoException
+    const argument = /'(-[^' ]*)/.exec(message)?.[1] ?? args.join(' ')
+    const why = code === 'ERR_PARSE_ARGS_UNKNOWN_OPTION' ? 'there is no such option' : message
+    throw new CoreError({ kind: 'bad-argument', argument, why })
   }
 }
 

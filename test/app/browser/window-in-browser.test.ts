@@ -6,6 +6,8 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { startLoopbackHost } from '../../../app/browser/loopback-host'
 import { builtPage, hasChromium, launchChromium } from './chromium'
 
+const sample = (name: string): string => join(import.meta.dirname, '..', '..', '..', 'sample-data', name)
+
 /** Where violations of the security policy are kept, in the page. */
 interface Watched {
   violations: string[]
@@ -55,6 +57,18 @@ describe.skipIf(!hasChromium())('the window in a browser', () => {
       expect(await page.getByRole('button').allTextContents()).toEqual(['Choose readings…', 'Choose procedure…'])
       expect(await page.title()).toBe('Persquare')
       expect(await page.getByRole('table').count()).toBe(0)
+    }))
+
+  it('shows the lot that it was started with, by the same core as everywhere', () =>
+    open([sample('TB-0417.csv'), sample('TB-0417.procedure.json')], async (page) => {
+      await page.getByRole('heading', { level: 1, name: /^TB-0417 is / }).waitFor()
+      const rows = page.getByRole('table').getByRole('row')
+      expect(await rows.count()).toBe(26)
+      expect(await rows.nth(7).getByRole('rowheader').textContent()).toBe('07')
+      expect(await page.getByRole('heading', { level: 2 }).allTextContents()).toEqual([
+        'Wafers',
+        expect.stringMatching(/^\s*Findings \d+$/),
+      ])
     }))
 
   it('asks for the procedure when it has only readings', async () => {
