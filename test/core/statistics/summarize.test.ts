@@ -47,6 +47,11 @@ describe('limits', () => {
     for (const figure of [none.mean, none.median, none.standardDeviation, none.min, none.max]) expect(figure).toBeNaN()
   })
 
+  it('neighbouring doubles: the mean lies between them, the spread is exact all the same', () => {
+    const step = Number.EPSILON
+    expect(summarize(Float64Array.of(1, 1 + step)).standardDeviation).toBeCloseTo(step / Math.SQRT2, 30)
+  })
+
   it('equal sites do not spread at all', () => {
     expect(summarize(new Float64Array(49).fill(0.1)).standardDeviation).toBe(0)
   })
