@@ -3,7 +3,7 @@ import { dualEdgeErrors } from '../geometry/dual-edge'
 import { DUAL_QUADRATIC_RATIO, dualSheetResistances } from '../geometry/dual'
 import { dualThicknessFactor } from '../geometry/dual-thickness'
 import { criticalEdgeDistance_mm } from '../geometry/edge-and-thickness'
-import { thicknessFactor, type ThicknessFactor } from '../geometry/thickness'
+import { unequalThicknessFactor, type ThicknessFactor } from '../geometry/thickness'
 import { thinSheetFactors, type ThinSheetColumns } from '../geometry/thin-sheet'
 import type { Readings } from '../ingest/readings'
 import type { Procedure } from '../procedure/schema'
@@ -85,11 +85,11 @@ function thinSheet(count: number, setUp: MeasuringSetUp, positions: SitePosition
 }
 
 function thicknessOf(setUp: MeasuringSetUp, procedure: Procedure): ThicknessFactor {
-  const { conductingThickness_um: thickness_um, meanSpacing_mm: spacing_mm } = setUp
+  const { conductingThickness_um: thickness_um, meanSpacing_mm: spacing_mm, spacings_mm } = setUp
   if (thickness_um === null) return NO_THICKNESS
   return setUp.isDual
     ? dualThicknessFactor({ thickness_um, spacing_mm })
-    : thicknessFactor({ thickness_um, spacing_mm, back: procedure.wafer.back })
+    : unequalThicknessFactor({ thickness_um, spacings_mm, back: procedure.wafer.back })
 }
 
 function dualColumns({ a_ohm, b_ohm }: VOverI, flags: Uint32Array) {

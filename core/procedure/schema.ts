@@ -76,7 +76,7 @@ const layer = z.discriminatedUnion('kind', [
 const temperature = z.strictObject({
   referenceC: z.number().min(18).max(28).default(23),
   /** Used where the readings carry no temperature of their own. */
-  measuredC: z.number().min(-50).max(200).optional(),
+  measuredC: z.number().min(-50).max(100).optional(),
   /** Percent per kelvin at the reference temperature. Bulk silicon has a published one; other layers need this. */
   coefficientPercentPerC: z.number().min(-10).max(10).optional(),
 })

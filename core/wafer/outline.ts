@@ -21,7 +21,7 @@ export type Outline =
 export function edgeDistance_mm(outline: Outline, x_mm: number, y_mm: number): number {
   switch (outline.shape) {
     case 'disc':
-      return outline.diameter_mm / 2 - Math.hypot(x_mm, y_mm)
+      return outline.diameter_mm / 2 - Math.sqrt(x_mm * x_mm + y_mm * y_mm)
     case 'rectangle':
       return Math.min(outline.width_mm / 2 - Math.abs(x_mm), outline.height_mm / 2 - Math.abs(y_mm))
     case 'infinite':
