@@ -18,7 +18,6 @@ export default defineConfig({
         persquare: resolve(root, 'app/cli/persquare.ts'),
         start: resolve(root, 'app/cli/start.ts'),
         demo: resolve(root, 'app/cli/demo.ts'),
-        demo: resolve(root, 'app/cli/demo.ts'),
         bench: resolve(root, 'app/cli/bench.ts'),
       },
       output: { entryFileNames: '[name].js', chunkFileNames: '[name]-[hash].js' },
