@@ -50,8 +50,20 @@ export type FileProblem =
       readonly unit: string
       readonly known: readonly string[]
     }
-  | { readonly kind: 'line-too-long'; readonly file: string; readonly line: number; readonly length: number; readonly max: number }
-  | { readonly kind: 'mixed-files'; readonly file: string; readonly what: string; readonly first: string; readonly found: string }
+  | {
+      readonly kind: 'line-too-long'
+      readonly file: string
+      readonly line: number
+      readonly length: number
+      readonly max: number
+    }
+  | {
+      readonly kind: 'mixed-files'
+      readonly file: string
+      readonly what: string
+      readonly first: string
+      readonly found: string
+    }
 
 /** One row, or one cell of it. The row is left out of the analysis and listed. */
 export type RowProblem =
@@ -108,11 +120,44 @@ export type ProcedureProblem =
 
 /** What the reader must know before trusting a lot that was analysed. */
 export type AnalysisProblem =
-  | { readonly kind: 'site-off-wafer'; readonly file: string; readonly line: number; readonly wafer: string; readonly site: string; readonly radius_mm: number; readonly edge_mm: number }
-  | { readonly kind: 'pin-off-wafer'; readonly file: string; readonly line: number; readonly wafer: string; readonly site: string }
-  | { readonly kind: 'no-sheet-resistance'; readonly file: string; readonly line: number; readonly wafer: string; readonly site: string; readonly why: string }
-  | { readonly kind: 'swapped-columns'; readonly file: string; readonly asRead: number; readonly swapped: number; readonly unit: string }
-  | { readonly kind: 'flagged-sites'; readonly flag: string; readonly count: number; readonly wafers: readonly string[]; readonly sentence: string }
+  | {
+      readonly kind: 'site-off-wafer'
+      readonly file: string
+      readonly line: number
+      readonly wafer: string
+      readonly site: string
+      readonly radius_mm: number
+      readonly edge_mm: number
+    }
+  | {
+      readonly kind: 'pin-off-wafer'
+      readonly file: string
+      readonly line: number
+      readonly wafer: string
+      readonly site: string
+    }
+  | {
+      readonly kind: 'no-sheet-resistance'
+      readonly file: string
+      readonly line: number
+      readonly wafer: string
+      readonly site: string
+      readonly why: string
+    }
+  | {
+      readonly kind: 'swapped-columns'
+      readonly file: string
+      readonly asRead: number
+      readonly swapped: number
+      readonly unit: string
+    }
+  | {
+      readonly kind: 'flagged-sites'
+      readonly flag: string
+      readonly count: number
+      readonly wafers: readonly string[]
+      readonly sentence: string
+    }
   | { readonly kind: 'nothing-assessed'; readonly why: string }
 
 export type OutputProblem =
