@@ -145,7 +145,8 @@ function flagUncounted(
   const usable = { outline, edgeExclusion_mm: procedure.wafer.edgeExclusionMm }
   for (let i = 0; i < value.length; i++) {
     if (Number.isNaN(value[i])) flags[i] |= SITE_FLAGS.noReading.bit
-    if (positions && !isUsable(usable, positions.x_mm[i], positions.y_mm[i])) flags[i] |= SITE_FLAGS.inEdgeExclusion.bit
+    else if (positions && !isUsable(usable, positions.x_mm[i], positions.y_mm[i]))
+      flags[i] |= SITE_FLAGS.inEdgeExclusion.bit
   }
 }
 

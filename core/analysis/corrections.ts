@@ -72,7 +72,7 @@ export function correct(
     reported,
     sheetResistance_ohm_sq: sheet,
     thicknessSlope: thickness.dLnRatio,
-    slopes: slopesOf(geometry, thickness, setUp, dual, temperature),
+    slopes: slopesOf(geometry, thicknessSpacingSlopes(setUp, procedure), dual, temperature),
   }
 }
 
@@ -136,16 +136,32 @@ function flagDomains(
   }
 }
 
+/** d ln F / ds of each of the three spacings [1/mm]; what of the spacing comes in through the thickness factor. */
+function thicknessSpacingSlopes(setUp: MeasuringSetUp, procedure: Procedure): readonly [number, number, number] {
+  const { conductingThickness_um: thickness_um, meanSpacing_mm, spacings_mm } = setUp
+  if (thickness_um === null) return [0, 0, 0]
+  if (setUp.isDual) {
+    const each = -thicknessOf(setUp, procedure).dLnRatio / (3 * meanSpacing_mm)
+    return [each, each, each]
+  }
+  const step_mm = 1e-4 * meanSpacing_mm
+  const lnF = (pin: number, change_mm: number): number => {
+    const [s1, s2, s3] = spacings_mm.map((spacing, k) => (k === pin ? spacing + change_mm : spacing))
+    return Math.log(
+      unequalThicknessFactor({ thickness_um, spacings_mm: [s1, s2, s3], back: procedure.wafer.back }).value,
+    )
+  }
+  const slope = (pin: number): number => (lnF(pin, step_mm) - lnF(pin, -step_mm)) / (2 * step_mm)
+  return [slope(0), slope(1), slope(2)]
+}
+
 function slopesOf(
   geometry: ThinSheetColumns,
-  thickness: ThicknessFactor,
-  { meanSpacing_mm }: MeasuringSetUp,
+  [throughF1, throughF2, throughF3]: readonly [number, number, number],
   dual: DualColumns | null,
   temperature: TemperatureCorrection,
 ): Slopes {
   const count = geometry.factor.length
-  // F depends on w/S, and S is the mean of three.
-  const throughThickness = -thickness.dLnRatio / (3 * meanSpacing_mm)
   const column = () => new Float64Array(count)
   const slopes = {
     voltage: column().fill(1),
@@ -157,12 +173,12 @@ function slopesOf(
     if (dual) {
       // The two voltages err independently; spacing, place and size of the wafer cancel in the exact relation.
       slopes.voltage[i] = Math.hypot(dual.dLnA[i], dual.dLnB[i])
-      slopes.spacing_per_mm[i] = Math.sqrt(3) * Math.abs(throughThickness)
+      slopes.spacing_per_mm[i] = Math.hypot(throughF1, throughF2, throughF3)
       continue
     }
-    const s1 = geometry.dSpacing1_per_mm[i] + throughThickness
-    const s2 = geometry.dSpacing2_per_mm[i] + throughThickness
-    const s3 = geometry.dSpacing3_per_mm[i] + throughThickness
+    const s1 = geometry.dSpacing1_per_mm[i] + throughF1
+    const s2 = geometry.dSpacing2_per_mm[i] + throughF2
+    const s3 = geometry.dSpacing3_per_mm[i] + throughF3
     slopes.spacing_per_mm[i] = Math.sqrt(s1 * s1 + s2 * s2 + s3 * s3)
     slopes.diameter_per_mm[i] = geometry.dSize_per_mm[i]
     const { dX_per_mm, dY_per_mm } = geometry

@@ -14,14 +14,24 @@ export function sampleText(name: string): string {
 }
 
 /** The lot of a sample file under its own procedure, or another. */
-export function sampleLot(name: string, procedure: string | Uint8Array = sampleBytes(`${name}.procedure.json`)): LotAnalysis {
+export function sampleLot(
+  name: string,
+  procedure: string | Uint8Array = sampleBytes(`${name}.procedure.json`),
+): LotAnalysis {
   return mustAnalyze(runText(sampleText(`${name}.csv`), procedure, `${name}.csv`))
 }
 
-export function runText(csv: string, procedure: string | Uint8Array | Partial<ProcedureInput>, name = 'lot.csv'): RunResult {
+export function runText(
+  csv: string,
+  procedure: string | Uint8Array | Partial<ProcedureInput>,
+  name = 'lot.csv',
+): RunResult {
   const bytes = new TextEncoder().encode(csv)
   const sha256 = createHash('sha256').update(bytes).digest('hex')
-  return run({ readings: [{ name, bytes, sha256 }], procedure: { name: 'procedure.json', bytes: procedureBytes(procedure) } })
+  return run({
+    readings: [{ name, bytes, sha256 }],
+    procedure: { name: 'procedure.json', bytes: procedureBytes(procedure) },
+  })
 }
 
 function procedureBytes(procedure: string | Uint8Array | Partial<ProcedureInput>): Uint8Array {
@@ -30,7 +40,11 @@ function procedureBytes(procedure: string | Uint8Array | Partial<ProcedureInput>
   return new TextEncoder().encode(JSON.stringify({ format: 'persquare-procedure/1', ...procedure }))
 }
 
-export function analyzeText(csv: string, procedure: string | Uint8Array | Partial<ProcedureInput>, name?: string): LotAnalysis {
+export function analyzeText(
+  csv: string,
+  procedure: string | Uint8Array | Partial<ProcedureInput>,
+  name?: string,
+): LotAnalysis {
   return mustAnalyze(runText(csv, procedure, name))
 }
 
