@@ -136,9 +136,17 @@ export function contentWidth_pt(paper: PaperSize): number {
   return PAPER_SIZES_PT[paper].width - 2 * MARGIN_PT
 }
 
+/** Height that a page's content has between the top margin and the footer. */
+export function contentHeight_pt(paper: PaperSize): number {
+  return PAPER_SIZES_PT[paper].height - 2 * MARGIN_PT - FOOT_PT
+}
+
 export const PAPER_SIZES_PT = {
   A4: { width: 595.28, height: 841.89 },
   Letter: { width: 612, height: 792 },
 } as const satisfies Record<PaperSize, { width: number; height: number }>
 
 export const MARGIN_PT = 50
+
+/** Kept free at the foot for the footer. */
+export const FOOT_PT = 26

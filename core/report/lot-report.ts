@@ -43,7 +43,6 @@ function sourceUses({ analysis, working }: LotReportInput): SourceUse[] {
   return [
     ...(working ? stepUses(working) : []),
     ...(components ? [{ reference: components.source, use: 'Components of variance' }] : []),
-    { reference: 'JCGM 100:2008, Guide to the expression of uncertainty in measurement', use: 'Uncertainty' },
   ]
 }
 

@@ -1,13 +1,15 @@
 /** What several sections of the report draw on, worked out once: limits, order, marks, and each wafer's own columns. */
+import type { FormulaSource } from '../analysis/formula-sources'
 import type { LotAnalysis, WaferAnalysis } from '../analysis/lot-analysis'
+import { limitsOn } from '../analysis/quantity'
 import { sitePositions, type SitePositions } from '../analysis/site-positions'
 import type { Working } from '../analysis/working'
 import { bandScale, type BandScale } from './figures/band-scale'
 import { NO_LIMITS, type MarkKind, type SiteLimits } from './figures/marks'
 import type { MapSites } from './figures/wafer-map'
-import { contentWidth_pt, type PaperSize } from './document'
+import { contentHeight_pt, contentWidth_pt, type PaperSize } from './document'
 import { surfacesFor, type MapDetail, type WaferSurface } from './surface'
-import type { FormulaSource, SourceList } from './source-list'
+import type { SourceList } from './source-list'
 
 export interface LotReportInput {
   readonly analysis: LotAnalysis
@@ -25,7 +27,9 @@ export interface LotReportInput {
 export interface ReportContext {
   readonly input: LotReportInput
   readonly analysis: LotAnalysis
+  /** Of the page's content. */
   readonly width_pt: number
+  readonly height_pt: number
   /** In slot order; wafers without a slot come last, as read. */
   readonly wafers: readonly WaferAnalysis[]
   readonly siteLimits: SiteLimits
@@ -48,11 +52,12 @@ export function reportContext(input: LotReportInput, sources: SourceList): Repor
   const x = positions?.x_mm ?? none
   const y = positions?.y_mm ?? none
   const { siteLimits, meanLimits } = judgedLimits(analysis)
-  const scale = scaleOf(value)
+  const scale = scaleOf(value, siteLimits)
   return {
     input,
     analysis,
     width_pt: contentWidth_pt(input.paper),
+    height_pt: contentHeight_pt(input.paper),
     wafers: inSlotOrder(analysis.wafers),
     siteLimits,
     meanLimits,
@@ -71,10 +76,8 @@ export function reportContext(input: LotReportInput, sources: SourceList): Repor
 }
 
 function judgedLimits({ procedure, quantity }: LotAnalysis): { siteLimits: SiteLimits; meanLimits: SiteLimits } {
-  const { limits } = procedure
-  return quantity.id === 'resistivity'
-    ? { siteLimits: asLimits(limits.resistivityOhmCm), meanLimits: asLimits(limits.waferMeanOhmCm) }
-    : { siteLimits: asLimits(limits.sheetResistanceOhmSq), meanLimits: asLimits(limits.waferMeanOhmSq) }
+  const { site, waferMean } = limitsOn(quantity, procedure)
+  return { siteLimits: asLimits(site), meanLimits: asLimits(waferMean) }
 }
 
 interface WrittenLimits {
@@ -93,15 +96,35 @@ function inSlotOrder(wafers: readonly WaferAnalysis[]): readonly WaferAnalysis[]
   return [...wafers].sort((a, b) => (place(a) === place(b) ? a.index - b.index : place(a) - place(b)))
 }
 
-/** A single stray site must not flatten every map: the scale spans what lies within 4 quartile widths of the middle half. */
-function scaleOf(values: Float64Array): BandScale | null {
+/** Bands of the maps: enough to show a pattern inside the limits. */
+const BANDS = 18
+
+/** Share of the sites that may lie off the scale, so that a stray one doesn't flatten every map. */
+const STRAY_SHARE = 0.004
+
+/**
+ * Spans the values, without at most a few stray ones at either end: those farther than 4 quartile widths from the
+ * middle half. The limits are included where they are not far from that.
+ */
+function scaleOf(values: Float64Array, limits: SiteLimits): BandScale | null {
   const sorted = values.filter(Number.isFinite).sort()
   if (sorted.length === 0) return null
-  const lower = sorted[Math.floor(0.25 * (sorted.length - 1))]!
-  const upper = sorted[Math.ceil(0.75 * (sorted.length - 1))]!
+  const last = sorted.length - 1
+  const lower = sorted[Math.floor(0.25 * last)]!
+  const upper = sorted[Math.ceil(0.75 * last)]!
   const reach = 4 * Math.max(upper - lower, 1e-6 * Math.abs(upper))
-  const inside = sorted.filter((value) => value >= lower - reach && value <= upper + reach)
-  return bandScale(inside[0]!, inside[inside.length - 1]!)
+  const stray = Math.ceil(STRAY_SHARE * sorted.length)
+  let low = 0
+  let high = last
+  while (low < stray && sorted[low]! < lower - reach) low++
+  while (last - high < stray && sorted[high]! > upper + reach) high--
+  const least = sorted[low]!
+  const most = sorted[high]!
+  const room = Math.max(most - least, 1e-6 * Math.abs(most))
+  const min = limits.lower < least && least - limits.lower < room ? limits.lower : least
+  const max = limits.upper > most && limits.upper - most < room ? limits.upper : most
+  const scale = bandScale(min, max, BANDS)
+  return { ...scale, goesOn: { below: low > 0, above: high < last } }
 }
 
 export const VERDICT_WORDS = {
@@ -142,4 +165,10 @@ export function lotMarkOf(context: ReportContext): MarkKind | null {
 /** "Wafer 07"; a label that says "wafer" already is left as it is. */
 export function waferTitle(id: string): string {
   return /^wafer\b/i.test(id) ? id : `Wafer ${id}`
+}
+
+/** Why a wafer has its verdict, without its name in front of each reason. */
+export function reasonsOf({ id, reasons }: WaferAnalysis): string[] {
+  const name = `${waferTitle(id).toLowerCase()}: `
+  return reasons.map((reason) => (reason.toLowerCase().startsWith(name) ? reason.slice(name.length) : reason))
 }

@@ -1,10 +1,5 @@
-/** The numbered list of sources that the report's superscripts and last page share. */
-export interface FormulaSource {
-  /** What uses it: the id of a factor, a mobility model, a layer kind. */
-  readonly id: string
-  readonly title: string
-  readonly reference: string
-}
+/** The numbered list of sources that the report's working and last page share. */
+import type { FormulaSource } from '../analysis/formula-sources'
 
 export interface NumberedSource {
   readonly number: number

@@ -9,7 +9,7 @@ import type { MapContour, MapSites } from './figures/wafer-map'
 export type MapDetail = 'large' | 'small'
 
 /** Raster points across the wafer: as fine as the eye can tell at the size the map is printed. */
-const ACROSS: Readonly<Record<MapDetail, number>> = { large: 71, small: 29 }
+const ACROSS: Readonly<Record<MapDetail, number>> = { large: 61, small: 29 }
 
 export interface WaferSurface {
   readonly contours: readonly MapContour[]
@@ -34,9 +34,12 @@ export function surfacesFor(
     const interpolator = interpolatorOf(x_mm, y_mm)
     // One colour all over would look like a measured flat wafer.
     if (interpolator.method === 'mean') return null
-    const cells = cellsWithMargin(grid, interpolator.evaluate(value))
-    const contours = contourBands(grid, cells, thresholds).map((band): MapContour => ({
-      threshold: band.lower,
+    const values = interpolator.evaluate(value)
+    const { min, max } = rangeOf(values)
+    // A band that covers everything or nothing needs no tracing: the first one painted has the lowest value's colour.
+    const crossed = thresholds.filter((threshold) => threshold > min && threshold <= max)
+    const contours = contourBands(grid, cellsWithMargin(grid, values), crossed).map((band): MapContour => ({
+      threshold: Math.max(band.lower, min),
       rings_mm: band.polygons.flat(),
     }))
     return { contours, method: METHOD_TITLES[interpolator.method satisfies InterpolationMethod] }
@@ -46,6 +49,16 @@ export function surfacesFor(
 function prepared(outline: Outline, detail: MapDetail) {
   const grid: RasterGrid = rasterGrid(outline, ACROSS[detail])
   return { grid, interpolatorOf: interpolatorsFor(grid.targets) }
+}
+
+function rangeOf(values: Float64Array): { min: number; max: number } {
+  let min = Infinity
+  let max = -Infinity
+  for (const value of values) {
+    if (value < min) min = value
+    if (value > max) max = value
+  }
+  return { min, max }
 }
 
 function withValue({ x_mm, y_mm, value }: MapSites) {

@@ -8,6 +8,8 @@ export interface BandScale {
   /** One a band, `#rrggbb`. */
   readonly colours: readonly string[]
   readonly decimals: number
+  /** Values lie beyond that end and have its colour. */
+  readonly goesOn: { readonly below: boolean; readonly above: boolean }
 }
 
 /** About `count` bands that cover [min, max]. */
@@ -23,7 +25,7 @@ export function bandScale(min: number, max: number, count = 11): BandScale {
   const bands = edges.length - 1
   const { color } = colorScale('viridis', { min: 0, max: bands })
   const colours = Array.from({ length: bands }, (_, i) => color(i + 0.5))
-  return { edges, colours, decimals: stepDecimals(step) }
+  return { edges, colours, decimals: stepDecimals(step), goesOn: { below: false, above: false } }
 }
 
 /** The band a value lies in; values beyond the ends belong to the end bands. */

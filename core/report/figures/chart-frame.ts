@@ -101,17 +101,24 @@ export function padded(values: readonly number[], share = 0.06): Range {
   return { min: min - air, max: max + air }
 }
 
-/** Lines across at the limits and the target, each named at the right, apart from one another. */
+/** Lines across at the limits and the target, each named at the right, apart from one another; those off the scale by arrow. */
 export function limitLines(frame: ChartFrame, limits: SiteLimits): Shape[] {
   const shapes: Shape[] = []
-  let lastLabel = Infinity
+  let free = frame.bottom + 6
   for (const { name, value, dash } of namedLimits(limits).sort((a, b) => a.value - b.value)) {
-    if (!(value >= frame.yRange.min && value <= frame.yRange.max)) continue
-    const y = frame.y(value)
-    shapes.push(line(frame.left, y, frame.right, y, { stroke: INK, lineWidth_pt: 0.6, ...(dash && { dash_pt: dash }) }))
-    const label = Math.min(y + 2.3, lastLabel - LABEL_PT - 1)
-    lastLabel = label
-    shapes.push(text(frame.right + 3, label, `${name} ${formatLimit(value)}`, { size_pt: LABEL_PT, fill: QUIET_INK }))
+    const isBelow = value < frame.yRange.min
+    const isAbove = value > frame.yRange.max
+    const y = isBelow ? frame.bottom : isAbove ? frame.top - 2 : frame.y(value)
+    if (!isBelow && !isAbove) {
+      shapes.push(
+        line(frame.left, y, frame.right, y, { stroke: INK, lineWidth_pt: 0.6, ...(dash && { dash_pt: dash }) }),
+      )
+    }
+    const baseline = Math.min(y + 2.3, free)
+    free = baseline - LABEL_PT - 1
+    const arrow = isBelow ? ' ↓' : isAbove ? ' ↑' : ''
+    const label = `${name} ${formatLimit(value)}${arrow}`
+    shapes.push(text(frame.right + 3, baseline, label, { size_pt: LABEL_PT, fill: QUIET_INK }))
   }
   return shapes
 }

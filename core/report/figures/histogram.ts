@@ -1,8 +1,8 @@
 /** How the sites' values are spread, with the limits. */
 import type { Drawing, Shape } from '../drawing'
-import { line, rectangle, text } from '../drawing'
+import { labelWidth_pt, line, rectangle, text } from '../drawing'
 import { chartFrame, frameShapes, limitsInReach, namedLimits, padded, type ChartFrame } from './chart-frame'
-import { INK, LABEL_PT, QUIET_INK } from './ink'
+import { AXIS_PT, INK, LABEL_PT, QUIET_INK } from './ink'
 import { formatLimit } from './map-legend'
 import type { SiteLimits } from './marks'
 import { axisTitle } from './radial-profile'
@@ -24,6 +24,7 @@ export interface Bins {
   readonly counts: readonly number[]
 }
 
+const COUNT_TITLE = 'sites'
 const BAR_FILL = '#a9a59c'
 
 export function histogram(input: HistogramInput): Drawing {
@@ -41,7 +42,7 @@ export function histogram(input: HistogramInput): Drawing {
     yTickCount: Math.min(5, most),
     right_pt: 8,
   })
-  const shapes: Shape[] = frameShapes(frame, { x: axisTitle(input.quantity), y: 'sites' })
+  const shapes: Shape[] = frameShapes(frame, { x: axisTitle(input.quantity), y: COUNT_TITLE })
   bins.counts.forEach((count, i) => {
     if (count === 0) return
     const left = frame.x(bins.first + i * bins.width)
@@ -77,27 +78,19 @@ export function binned(values: readonly number[]): Bins {
   return { first: fromStep(start, width), width, counts }
 }
 
-/** Limits as upright lines, named at the top; a name that would lie on the one before goes a line lower. */
+/** Limits as upright lines, named above; a name that would lie on the one before it, or on the axis title, moves right. */
 function limitsUpright(frame: ChartFrame, limits: SiteLimits): Shape[] {
   const shapes: Shape[] = []
-  let row = 0
-  let free = -Infinity
+  let free = labelWidth_pt(COUNT_TITLE, AXIS_PT) + 4
   for (const { name, value, dash } of namedLimits(limits).sort((a, b) => a.value - b.value)) {
     if (!(value >= frame.xRange.min && value <= frame.xRange.max)) continue
     const x = frame.x(value)
     const label = `${name} ${formatLimit(value)}`
-    const half = (label.length * LABEL_PT * 0.53) / 2
-    const middle = Math.min(x, frame.right + 6 - half)
-    row = middle - half < free ? row + 1 : 0
-    free = middle + half + 2
+    const half = labelWidth_pt(label, LABEL_PT) / 2
+    const middle = Math.max(free + half, Math.min(x, frame.right + 6 - half))
+    free = middle + half + 3
     shapes.push(line(x, frame.top, x, frame.bottom, { stroke: INK, lineWidth_pt: 0.6, ...(dash && { dash_pt: dash }) }))
-    shapes.push(
-      text(middle, frame.top - 3 + row * (LABEL_PT + 1), label, {
-        size_pt: LABEL_PT,
-        fill: QUIET_INK,
-        anchor: 'middle',
-      }),
-    )
+    shapes.push(text(middle, frame.top - 4, label, { size_pt: LABEL_PT, fill: QUIET_INK, anchor: 'middle' }))
   }
   return shapes
 }

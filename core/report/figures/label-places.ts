@@ -9,11 +9,16 @@ export interface LabelWish {
   readonly empty: boolean
   readonly preferAbove: boolean
   readonly markHalf: number
+  /** How far to either side the label may reach. */
+  readonly left: number
+  readonly right: number
   readonly key: number
 }
 
 export interface PlacedLabel {
+  /** Of its middle. */
   readonly x: number
+  readonly halfWidth: number
   readonly baseline: number
   readonly text: string
   readonly key: number
@@ -37,17 +42,18 @@ export function placeLabels(wishes: readonly LabelWish[], size_pt: number): Plac
     if (wish.empty) continue
     const half = labelWidth_pt(wish.text, size_pt) / 2
     const offsets = [wish.markHalf + 0.9 * size_pt, -wish.markHalf - 0.4 * size_pt]
+    const middle = Math.max(wish.left + half, Math.min(wish.right - half, wish.x))
     for (const offset of wish.preferAbove ? offsets.reverse() : offsets) {
       const baseline = wish.y + offset
       const box = {
-        left: wish.x - half - 1,
-        right: wish.x + half + 1,
+        left: middle - half - 1,
+        right: middle + half + 1,
         top: baseline - 0.75 * size_pt,
         bottom: baseline + 0.1 * size_pt,
       }
       if (taken.hits(box)) continue
       taken.add(box)
-      placed.push({ x: wish.x, baseline, text: wish.text, key: wish.key })
+      placed.push({ x: middle, halfWidth: half, baseline, text: wish.text, key: wish.key })
       break
     }
   }

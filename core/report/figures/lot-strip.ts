@@ -69,7 +69,7 @@ export function lotStrip(input: LotStripInput): Drawing {
 
 /** As many a row as stay legible, and rows about equally full. */
 function columnsFor(count: number, room_pt: number): number {
-  const most = Math.max(1, Math.floor((room_pt + GAP_PT) / (36 + GAP_PT)))
+  const most = Math.max(1, Math.floor((room_pt + GAP_PT) / (28 + GAP_PT)))
   const rows = Math.max(1, Math.ceil(count / most))
   const columns = Math.max(1, Math.ceil(count / rows))
   return Math.min(columns, Math.floor((room_pt + GAP_PT) / (LEAST_CELL_PT + GAP_PT)))

@@ -43,8 +43,14 @@ function legendEntries(marks: readonly MarkKind[], input: WaferMapInput): Legend
     const sample = line(-4, 0, 4, 0, { stroke: INK, lineWidth_pt: 0.5, dash_pt: [1.2, 1.8] })
     entries.push({ sample, label: `edge exclusion ${formatMm(input.edgeExclusion_mm)}` })
   }
-  if (Object.values(input.limits).some(Number.isFinite)) {
-    entries.push({ sample: polygon([3, 0, -1.5, -2.4, -1.5, 2.4], { fill: INK }), label: 'limit on the scale' })
+  const { edges } = input.scale
+  const isOnScale = (value: number) => value >= edges[0]! && value <= edges[edges.length - 1]!
+  const pointer = [3, 0, -1.5, -2.4, -1.5, 2.4]
+  if (isOnScale(input.limits.lower) || isOnScale(input.limits.upper)) {
+    entries.push({ sample: polygon(pointer, { fill: INK }), label: 'limit' })
+  }
+  if (isOnScale(input.limits.target)) {
+    entries.push({ sample: polygon(pointer, { stroke: INK, lineWidth_pt: 0.5 }), label: 'target' })
   }
   return entries
 }

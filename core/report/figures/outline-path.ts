@@ -2,8 +2,9 @@
 import { flatDistance_mm, outlinePath } from '../../wafer/fiducial'
 import type { Outline } from '../../wafer/outline'
 
-/** Two degrees an edge: within 0.02 pt of the true arc on the largest map. */
+/** Two degrees an edge: within 0.03 pt of the true arc on the largest map. A small map does with fewer. */
 const EDGES = 180
+export const SMALL_MAP_EDGES = 72
 
 export interface Extent {
   readonly halfWidth_mm: number
@@ -11,10 +12,10 @@ export interface Extent {
 }
 
 /** The ring that lies `inset_mm` inside the edge; empty where there is no edge or nothing is left of it. */
-export function outlineRing(outline: Outline, inset_mm = 0): readonly number[] {
+export function outlineRing(outline: Outline, inset_mm = 0, edges = EDGES): readonly number[] {
   const shape = inset_mm > 0 ? insetOutline(outline, inset_mm) : outline
   if (!shape || shape.shape === 'infinite') return []
-  return outlinePath(shape, EDGES).flatMap(({ x_mm, y_mm }) => [x_mm, y_mm])
+  return outlinePath(shape, edges).flatMap(({ x_mm, y_mm }) => [x_mm, y_mm])
 }
 
 /** The usable area's edge: a flat bounds it too, a notch doesn't. */

@@ -4,7 +4,7 @@ import type { Shape } from '../drawing'
 import { circle, group, polygon } from '../drawing'
 import { colourOf, type BandScale } from './band-scale'
 import { FAINT, INK } from './ink'
-import { drawnExtent, outlineRing } from './outline-path'
+import { drawnExtent, outlineRing, SMALL_MAP_EDGES } from './outline-path'
 import { bandShapes, ringToPoints, type MapContour, type MapSites, type Plane } from './wafer-map'
 
 export interface SmallMapInput {
@@ -24,7 +24,7 @@ export function smallMap(input: SmallMapInput): Shape[] {
   const half = Math.max(extent.halfWidth_mm, extent.halfHeight_mm)
   const scale = (size_pt - 1) / (2 * half)
   const plane: Plane = { scale_pt_per_mm: scale, x: (x) => size_pt / 2 + x * scale, y: (y) => size_pt / 2 - y * scale }
-  const ring = ringToPoints(outlineRing(input.outline), plane)
+  const ring = ringToPoints(outlineRing(input.outline, 0, SMALL_MAP_EDGES), plane)
   const edge: Shape[] = ring.length > 0 ? [polygon(ring, { stroke: INK, lineWidth_pt: 0.5 })] : []
   if (input.contours) {
     const bands = bandShapes(input.contours, input.scale, plane)

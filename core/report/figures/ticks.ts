@@ -16,12 +16,13 @@ export function niceTicks(min: number, max: number, count: number): Ticks {
   return { values, step, decimals: stepDecimals(step) }
 }
 
-/** The round step nearest above a raw one; 1 where there is no range at all. */
+/** The round step nearest a raw one in proportion; 1 where there is no range at all. */
 export function niceStep(raw: number): number {
   if (!(raw > 0) || !Number.isFinite(raw)) return 1
   const power = 10 ** Math.floor(Math.log10(raw))
   const ratio = raw / power
-  const factor = ratio <= 1 + 1e-9 ? 1 : ratio <= 2 + 1e-9 ? 2 : ratio <= 5 + 1e-9 ? 5 : 10
+  // Geometric means of neighbours: 1 | 2 | 5 | 10.
+  const factor = ratio < Math.SQRT2 ? 1 : ratio < Math.sqrt(10) ? 2 : ratio < Math.sqrt(50) ? 5 : 10
   return power * factor
 }
 

@@ -1,12 +1,12 @@
 /** The map of one wafer: value bands, the wafer's outline, its sites with their values, and what is out of spec. */
-import type { Outline } from '../../wafer/outline'
+import { edgeDistance_mm, type Outline } from '../../wafer/outline'
 import type { Drawing, Shape } from '../drawing'
 import { group, line, polygon, rectangle, text } from '../drawing'
 import { formatFixed } from '../../units/format'
 import { bandOf, isDark, type BandScale } from './band-scale'
 import { colourBar } from './colour-bar'
 import { AXIS_PT, FAINT, INK, PAPER, QUIET_INK, RULE } from './ink'
-import { placeLabels, type PlacedLabel } from './label-places'
+import { placeLabels, type LabelWish, type PlacedLabel } from './label-places'
 import { mapLegend } from './map-legend'
 import { mark, markOf, type MarkKind, type SiteLimits } from './marks'
 import { drawnExtent, outlineRing } from './outline-path'
@@ -98,14 +98,14 @@ export function waferMap(input: WaferMapInput): Drawing {
       ...diesOut(input.diesOut, plane),
       ...siteMarks(input, plane, marks),
       colourBar({
-        x_pt: width_pt - BAR_SPACE_PT + 14,
+        x_pt: Math.min(width_pt - BAR_SPACE_PT + 14, centreX + extent.halfWidth_mm * scale + 26),
         y_pt: field.top + 16,
         height_pt: field.height - 22,
         scale: input.scale,
         limits: input.limits,
         quantity: input.quantity,
       }),
-      mapLegend(marks, input, field.left, height_pt - 6),
+      mapLegend(marks, input, field.left, Math.min(height_pt - 4, bottom + 32)),
     ],
   }
 }
@@ -208,19 +208,63 @@ function siteMarks(input: WaferMapInput, plane: Plane, marks: readonly MarkKind[
       input.contours !== null && kind !== 'not-assessed' && isDark(scale.colours[bandOf(scale, sites.value[i]!)]!)
     shapes.push(mark(kind, plane.x(sites.x_mm[i]!), plane.y(sites.y_mm[i]!), size, { onDark, rim: true }))
   }
-  const labels = placeLabels(drawn.map((i) => ({
-    x: plane.x(sites.x_mm[i]!), y: plane.y(sites.y_mm[i]!), text: formatFixed(sites.value[i]!, siteDecimals(sites.value)),
-    empty: Number.isNaN(sites.value[i]!), preferAbove: sites.y_mm[i]! < 0, markHalf: size, key: i,
-  })), VALUE_PT) // prettier-ignore
-  return [...shapes, ...labels.map((label) => valueLabel(label, input))]
+  return [...shapes, ...valueLabels(drawn, size, input, plane)]
 }
 
 const VALUE_PT = 5.2
 
-function valueLabel(label: PlacedLabel, input: WaferMapInput): Shape {
-  const band = bandOf(input.scale, input.sites.value[label.key]!)
-  const onDark = input.contours !== null && isDark(input.scale.colours[band]!)
-  return text(label.x, label.baseline, label.text, { size_pt: VALUE_PT, fill: onDark ? PAPER : INK, anchor: 'middle' })
+function valueLabels(drawn: readonly number[], markHalf: number, input: WaferMapInput, plane: Plane): Shape[] {
+  const { sites } = input
+  const decimals = siteDecimals(sites.value)
+  const wishes = drawn.map((key): LabelWish => {
+    const x = sites.x_mm[key]!
+    const y = sites.y_mm[key]!
+    const reach_mm = reachAt(input, y)
+    const value = sites.value[key]!
+    return {
+      x: plane.x(x), y: plane.y(y), text: formatFixed(value, decimals), empty: Number.isNaN(value), preferAbove: y < 0,
+      markHalf, left: plane.x(-reach_mm) + 2, right: plane.x(reach_mm) - 2, key,
+    } // prettier-ignore
+  })
+  return placeLabels(wishes, VALUE_PT).flatMap((label) => valueLabel(label, input, plane))
+}
+
+/** How far the wafer reaches to either side where the label of a site at that height will stand. */
+function reachAt({ outline }: WaferMapInput, y_mm: number): number {
+  if (outline.shape === 'infinite') return 1e6
+  if (outline.shape === 'rectangle') return outline.width_mm / 2
+  return Math.sqrt(Math.max(0, (outline.diameter_mm / 2) ** 2 - y_mm ** 2))
+}
+
+/** A label that would lie on a thin line gets a patch of its site's colour behind it. */
+function valueLabel(label: PlacedLabel, input: WaferMapInput, plane: Plane): Shape[] {
+  const ground = input.contours ? input.scale.colours[bandOf(input.scale, input.sites.value[label.key]!)]! : FAINT
+  const ink = isDark(ground) ? PAPER : INK
+  const shape = text(label.x, label.baseline, label.text, { size_pt: VALUE_PT, fill: ink, anchor: 'middle' })
+  if (!liesOnLine(label, input, plane)) return [shape]
+  const patch = rectangle(
+    label.x - label.halfWidth,
+    label.baseline - 0.8 * VALUE_PT,
+    2 * label.halfWidth,
+    0.88 * VALUE_PT,
+    { fill: ground },
+  )
+  return [patch, shape]
+}
+
+function liesOnLine(label: PlacedLabel, { outline, edgeExclusion_mm, diesOut }: WaferMapInput, plane: Plane): boolean {
+  const scale = plane.scale_pt_per_mm
+  const x_mm = (label.x - plane.x(0)) / scale
+  const y_mm = (plane.y(0) - label.baseline + 0.4 * VALUE_PT) / scale
+  const reach_mm = label.halfWidth / scale
+  const isOnRing = Math.abs(edgeDistance_mm(outline, x_mm, y_mm) - edgeExclusion_mm) < reach_mm + 1
+  if (edgeExclusion_mm > 0 && isOnRing) return true
+  if (!diesOut) return false
+  return diesOut.centreX_mm.some(
+    (x, i) =>
+      Math.abs(x - x_mm) < diesOut.pitchX_mm / 2 + reach_mm &&
+      Math.abs(diesOut.centreY_mm[i]! - y_mm) < diesOut.pitchY_mm / 2 + VALUE_PT / scale,
+  )
 }
 
 /** Four significant digits at the largest value, the same decimals for all. */

@@ -6,7 +6,7 @@ import type { Block, TableRow } from '../document'
 import { waferMeans } from '../figures/wafer-means'
 import { markOf } from '../figures/marks'
 import { VERDICTS } from '../../analysis/lot-analysis'
-import { VERDICT_WORDS, waferMarkOf, waferTitle, type ReportContext } from '../report-context'
+import { reasonsOf, VERDICT_WORDS, waferMarkOf, waferTitle, type ReportContext } from '../report-context'
 
 export function findingsSection(context: ReportContext): Block[] {
   return [
@@ -41,7 +41,7 @@ function outOfSpec(context: ReportContext): Block[] {
   const rows = shown.map((wafer): TableRow => {
     const mark = waferMarkOf(wafer, context)
     const dies = wafer.dieCounts ? `; ${plural(wafer.dieCounts['out-of-spec'], 'die')} out of spec` : ''
-    const cells = [waferTitle(wafer.id), VERDICT_WORDS[wafer.verdict], `${wafer.reasons.join('; ')}${dies}`]
+    const cells = [waferTitle(wafer.id), VERDICT_WORDS[wafer.verdict], `${reasonsOf(wafer).join('; ')}${dies}`]
     return { cells, ...(mark && { mark, markColumn: 1 }) }
   })
   const rest = noted.length - shown.length
@@ -63,7 +63,7 @@ function outOfSpec(context: ReportContext): Block[] {
 }
 
 const MOST_WAFERS = 30
-const MOST_SITES = 20
+const MOST_SITES = 12
 
 /** The sites farthest outside their limits, worst first. */
 function sitesOut(context: ReportContext): Block[] {
@@ -81,11 +81,13 @@ function sitesOut(context: ReportContext): Block[] {
       readings.wafers[readings.wafer[i]!]!.id,
       readings.siteNames[readings.site[i]!] ?? '',
       ...positions[at]!,
+      '',
       formatWithUncertainty(sites.value[i]!, sites.u[i]!, quantity.unit),
       formatFixed(100 * sites.conformanceProbability[i]!, 1),
+      '',
     ],
     mark: markOf(sites.verdict[i]!, sites.value[i]!, siteLimits),
-    markColumn: 4,
+    markColumn: 5,
   }))
   const rest = out.length - worst.length
   return [
@@ -96,10 +98,12 @@ function sitesOut(context: ReportContext): Block[] {
       columns: [
         { title: 'Wafer', align: 'left', share: 1 },
         { title: 'Site', align: 'left', share: 1 },
-        { title: 'x', unit: 'mm', align: 'decimal', share: 1 },
-        { title: 'y', unit: 'mm', align: 'decimal', share: 1 },
-        { title: quantity.title, align: 'left', share: 2.4 },
-        { title: 'Probability to conform', unit: '%', align: 'decimal', share: 1.8 },
+        { title: 'x', unit: 'mm', align: 'decimal', share: 0.7 },
+        { title: 'y', unit: 'mm', align: 'decimal', share: 0.9 },
+        { title: '', align: 'left', share: 0.3 },
+        { title: quantity.title, align: 'left', share: 2.2 },
+        { title: 'Probability to conform', unit: '%', align: 'decimal', share: 1.6 },
+        { title: '', align: 'left', share: 1.2 },
       ],
       rows,
     },
@@ -166,7 +170,7 @@ function mustKnow({ analysis }: ReportContext): Block[] {
   else blocks.push(...problemList(problems))
   if (notes.length > 0) blocks.push({ kind: 'list', numbered: false, entries: notes })
   if (defaults.length > 0) {
-    const list = defaults.map(({ key, value }) => `${key} = ${value}`).join('; ')
+    const list = defaults.map(({ key, value }) => `${key} = ${value.replaceAll('"', '')}`).join('; ')
     blocks.push(quiet(`Defaults used where the procedure says nothing: ${list}.`))
   }
   return blocks

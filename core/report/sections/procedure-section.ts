@@ -1,4 +1,5 @@
 /** The procedure as used: every key, its value with its unit, and whether it was given or is a default. */
+import { superscript } from '../../units/format'
 import type { Block, TableRow } from '../document'
 import type { ReportContext } from '../report-context'
 
@@ -9,7 +10,6 @@ export function procedureSection({ analysis }: ReportContext): Block[] {
     return { cells: [key, value, unitOfKey(key), isDefault ? 'default' : 'given'] }
   })
   return [
-    { kind: 'page-break' },
     { kind: 'heading', level: 1, text: 'Procedure', aside: analysis.procedure.title },
     {
       kind: 'paragraph',
@@ -51,8 +51,15 @@ export function flattened(part: unknown, prefix = ''): FlatKey[] {
 
 /** As the file has it: all digits of a number, and nothing rounded. */
 function written(value: unknown): string {
-  if (typeof value === 'number') return String(value).replace('-', '−').replace(/e\+?/, 'e')
+  if (typeof value === 'number') return writtenNumber(value)
   return value === '' ? '–' : typeof value === 'object' ? JSON.stringify(value) : String(value)
+}
+
+function writtenNumber(value: number): string {
+  const magnitude = Math.abs(value)
+  if (value === 0 || (magnitude >= 1e-4 && magnitude < 1e6)) return String(value).replace('-', '−')
+  const [mantissa = '', exponent = '0'] = value.toExponential().split('e')
+  return `${mantissa.replace('-', '−')} × 10${superscript(Number(exponent))}`
 }
 
 /** A key's unit is its ending. */

@@ -127,7 +127,7 @@ function wafersTable(context: ReportContext): TableBlock {
   const layer = layerColumnOf(analysis)
   const withSlots = wafers.some((wafer) => !Number.isNaN(wafer.slot) && Number(wafer.id) !== wafer.slot)
   const columns: TableColumn[] = [
-    { title: 'Wafer', align: 'left', share: 1.2 },
+    { title: 'Wafer', align: 'left', share: 0.9 },
     ...(withSlots ? [{ title: 'Slot', align: 'right', share: 0.6 } as const] : []),
     { title: 'Sites', align: 'right', share: 0.7 },
     { title: 'Out', align: 'right', share: 0.6 },
@@ -138,7 +138,7 @@ function wafersTable(context: ReportContext): TableBlock {
     { title: 'Min', unit, align: 'decimal', share: 1 },
     { title: 'Max', unit, align: 'decimal', share: 1 },
     ...(layer ? [{ title: layer.title, unit: layer.unit, align: 'decimal', share: 1.4 } as const] : []),
-    { title: 'Verdict', align: 'left', share: 1.4 },
+    { title: 'Verdict', align: 'left', share: 1.8 },
   ]
   const rows = wafers.map((wafer): TableRow => {
     const { statistics: s } = wafer

@@ -1,9 +1,10 @@
 /** What the standard uncertainties are made of. */
 import type { UncertaintyComponent } from '../../procedure/schema'
 import { UNCERTAINTY_COMPONENTS } from '../../procedure/schema'
-import { formatQuantity, formatSignificant } from '../../units/format'
+import { formatFixed, formatQuantity, formatSignificant } from '../../units/format'
 import type { Block, KeyValue, TableRow } from '../document'
-import type { ReportContext } from '../report-context'
+import type { Working } from '../../analysis/working'
+import { waferTitle, type ReportContext } from '../report-context'
 
 interface ComponentWords {
   readonly title: string
@@ -54,11 +55,12 @@ export function uncertaintySection(context: ReportContext): Block[] {
       ? [{ kind: 'paragraph', text: `Taken as exactly known: ${exactWords}.`, quiet: true } as const]
       : []),
     { kind: 'key-values', columns: 1, entries: typicalSite(context) },
+    ...budgetOf(context.input.working),
   ]
 }
 
-const SHARED = 'the same at every site; averaging leaves it'
-const INDEPENDENT = 'new at every site; averaging lessens it'
+const SHARED = 'the same at every site'
+const INDEPENDENT = 'new at every site'
 
 function componentsTable(rows: readonly TableRow[]): Block {
   return {
@@ -73,6 +75,33 @@ function componentsTable(rows: readonly TableRow[]): Block {
     ],
     rows,
   }
+}
+
+/** What one site's uncertainty is made of, largest first. */
+function budgetOf(working: Working | null): Block[] {
+  if (!working || working.budget.length === 0) return []
+  const rows = working.budget.map(({ title, shared, relative, share }): TableRow => ({
+    cells: [
+      title,
+      shared ? 'shared' : 'independent',
+      formatSignificant(100 * relative, 2),
+      formatFixed(100 * share, 1),
+    ],
+  }))
+  return [
+    { kind: 'heading', level: 2, text: `Budget at site ${working.site} of ${waferTitle(working.wafer).toLowerCase()}` },
+    {
+      kind: 'table',
+      summary: 'Uncertainty budget of one site',
+      columns: [
+        { title: 'Component', align: 'left', share: 3 },
+        { title: 'Kind', align: 'left', share: 1.2 },
+        { title: 'Effect on the result', unit: '%', align: 'decimal', share: 1.4 },
+        { title: 'Share of the variance', unit: '%', align: 'decimal', share: 1.6 },
+      ],
+      rows,
+    },
+  ]
 }
 
 function typicalSite({ analysis }: ReportContext): KeyValue[] {

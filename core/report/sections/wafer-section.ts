@@ -5,16 +5,38 @@ import type { Block, KeyValue } from '../document'
 import { histogram } from '../figures/histogram'
 import { radialProfile } from '../figures/radial-profile'
 import { waferMap, type MapDies } from '../figures/wafer-map'
-import { VERDICT_WORDS, waferMarkOf, waferTitle, type ReportContext } from '../report-context'
+import { reasonsOf, VERDICT_WORDS, waferMarkOf, waferTitle, type ReportContext } from '../report-context'
 import { layerColumns } from './layer-words'
 
 const CHART_GAP_PT = 14
+const CHART_HEIGHT_PT = 126
+const MOST_MAP_PT = 340
+const LEAST_MAP_PT = 200
+/** Title, verdict, map caption and charts. */
+const BESIDES_MAP_PT = 84 + CHART_HEIGHT_PT
+const LINE_PT = 12.4
+/** A small heading with the space about it. */
+const HEADING_PT = 26
+const CHARACTERS_A_LINE = 100
+
+/** What the page leaves for the map, so that everything of a wafer stands on one page. */
+function mapHeight_pt(sentence: string, stacks: readonly number[], context: ReportContext): number {
+  const lines = Math.ceil(sentence.length / CHARACTERS_A_LINE)
+  const room = context.height_pt - BESIDES_MAP_PT - LINE_PT * (lines + 1) - Math.max(...stacks)
+  return Math.max(LEAST_MAP_PT, Math.min(MOST_MAP_PT, room))
+}
 
 export function waferSection(wafer: WaferAnalysis, context: ReportContext): Block[] {
   const title = waferTitle(wafer.id)
   const slot = Number.isNaN(wafer.slot) ? '' : `, slot ${wafer.slot}`
-  const statistics: Block = { kind: 'key-values', columns: 1, entries: statisticsEntries(wafer, context) }
+  const sentence = sentenceOf(reasonsOf(wafer))
+  const statistics = statisticsEntries(wafer, context)
+  const counts = countEntries(wafer)
   const layer = layerEntries(wafer, context)
+  const stacks = [
+    HEADING_PT + statistics.length * LINE_PT,
+    HEADING_PT + counts.length * LINE_PT + (layer.length > 0 ? HEADING_PT + layer.length * LINE_PT : 0),
+  ]
   return [
     { kind: 'page-break' },
     {
@@ -28,16 +50,19 @@ export function waferSection(wafer: WaferAnalysis, context: ReportContext): Bloc
       kind: 'verdict',
       word: VERDICT_WORDS[wafer.verdict],
       mark: waferMarkOf(wafer, context),
-      sentence: sentenceOf(wafer.reasons),
+      sentence: sentence,
     },
-    ...figures(wafer, context),
+    ...figures(wafer, mapHeight_pt(sentence, stacks, context), context),
     {
       kind: 'columns',
       columns: [
-        [{ kind: 'heading', level: 3, text: 'Statistics' }, statistics],
+        [
+          { kind: 'heading', level: 3, text: 'Statistics' },
+          { kind: 'key-values', columns: 1, entries: statistics },
+        ],
         [
           { kind: 'heading', level: 3, text: 'Counts' },
-          { kind: 'key-values', columns: 1, entries: countEntries(wafer) },
+          { kind: 'key-values', columns: 1, entries: counts },
           ...(layer.length > 0
             ? ([
                 { kind: 'heading', level: 3, text: 'Layer, means over the sites' },
@@ -57,11 +82,11 @@ function sentenceOf(reasons: readonly string[]): string {
   return `${text.charAt(0).toUpperCase()}${text.slice(1)}${/[.!?]$/.test(text) ? '' : '.'}`
 }
 
-function figures(wafer: WaferAnalysis, context: ReportContext): Block[] {
+function figures(wafer: WaferAnalysis, mapHeight: number, context: ReportContext): Block[] {
   const { analysis, width_pt, siteLimits, scale } = context
   const sites = context.sitesOf(wafer)
   const { quantity, outline, procedure } = analysis
-  const chart = { quantity, limits: siteLimits, width_pt: (width_pt - CHART_GAP_PT) / 2, height_pt: 142 }
+  const chart = { quantity, limits: siteLimits, width_pt: (width_pt - CHART_GAP_PT) / 2, height_pt: CHART_HEIGHT_PT }
   const title = waferTitle(wafer.id)
   const spread = histogram({ ...chart, title: `${title}: histogram`, values: sites.value })
   if (!context.hasPositions || !scale) {
@@ -83,7 +108,7 @@ function figures(wafer: WaferAnalysis, context: ReportContext): Block[] {
     contours: surface?.contours ?? null,
     diesOut: diesOutOf(wafer, context),
     width_pt,
-    height_pt: 372,
+    height_pt: mapHeight,
   })
   const profile = radialProfile({
     ...chart,
