@@ -2,7 +2,7 @@ import { createHash } from 'node:crypto'
 import { readFile } from 'node:fs/promises'
 import { basename } from 'node:path'
 import { CoreError } from '../../core/problems/problem'
-import { reason } from './write-whole'
+import { systemReason } from '../../core/problems/system-reason'
 
 export interface InputFile {
   readonly name: string
@@ -16,6 +16,6 @@ export async function readInput(path: string): Promise<InputFile> {
     const bytes = await readFile(path)
     return { name: basename(path), bytes, sha256: createHash('sha256').update(bytes).digest('hex') }
   } catch (error) {
-    throw new CoreError({ kind: 'cannot-read', file: path, why: reason(error) })
+    throw new CoreError({ kind: 'cannot-read', file: path, why: systemReason(error) })
   }
 }

@@ -1,7 +1,8 @@
 import { randomBytes } from 'node:crypto'
-import { mkdir, open, rename, rm } from 'node:fs/promises'
+import { lstat, mkdir, open, rename, rm } from 'node:fs/promises'
 import { join } from 'node:path'
 import { CoreError } from '../../core/problems/problem'
+import { systemReason } from '../../core/problems/system-reason'
 
 /**
  * Writes files into a folder so that, whatever happens, each name holds either its old content or its new one, whole:
@@ -14,6 +15,7 @@ export async function writeWhole(folder: string, files: ReadonlyMap<string, Uint
   const written: string[] = []
   try {
     await mkdir(folder, { recursive: true })
+    for (const name of files.keys()) await requireReplaceable(join(folder, name))
     for (const [name, content] of files) {
       const beside = join(folder, name + suffix)
       const file = await open(beside, 'wx')
@@ -28,22 +30,18 @@ export async function writeWhole(folder: string, files: ReadonlyMap<string, Uint
     for (const name of files.keys()) await rename(join(folder, name + suffix), join(folder, name))
   } catch (error) {
     await Promise.all(written.map((path) => rm(path, { force: true })))
-    throw new CoreError({ kind: 'cannot-write', path: folder, why: reason(error) })
+    if (error instanceof CoreError) throw error
+    throw new CoreError({ kind: 'cannot-write', path: folder, why: systemReason(error) })
   }
 }
 
-/** What the system said, without its stack. */
-export function reason(error: unknown): string {
-  const code = (error as NodeJS.ErrnoException).code
-  const plain: Record<string, string> = {
-    EACCES: 'permission denied',
-    EPERM: 'operation not permitted',
-    ENOENT: 'no such file or folder',
-    ENOTDIR: 'a part of the path is not a folder',
-    EISDIR: 'it is a folder',
-    EEXIST: 'it exists and is not a folder',
-    ENOSPC: 'the disk is full',
-    EROFS: 'the file system is read-only',
+/** Found out before anything is renamed, so that a set of files is not left half new. */
+async function requireReplaceable(path: string): Promise<void> {
+  const known = await lstat(path).catch((error: NodeJS.ErrnoException) => {
+    if (error.code === 'ENOENT') return null
+    throw error
+  })
+  if (known && !known.isFile()) {
+    throw new CoreError({ kind: 'cannot-write', path, why: 'there is something of this name that is no plain file' })
   }
-  return (code && plain[code]) ?? (error instanceof Error ? error.message : String(error))
 }

@@ -4,7 +4,7 @@ import { CoreError } from '../../../core/problems/problem'
 import type { Problem } from '../../../core/problems/problem'
 import type { OpenedFile, Reply } from '../../contract/host'
 import { analyzeFiles } from '../analysis'
-import type { Outcome } from '../analysis'
+import type { RunResult } from '../../../core/analysis/run'
 
 export type LotState = 'empty' | 'needs-procedure' | 'needs-readings' | 'reading' | 'analysed' | 'failed'
 
@@ -12,7 +12,7 @@ export type LotState = 'empty' | 'needs-procedure' | 'needs-readings' | 'reading
 export const useLotStore = defineStore('lot', () => {
   const readings = shallowRef<readonly OpenedFile[]>([])
   const procedure = shallowRef<OpenedFile | null>(null)
-  const outcome = shallowRef<Outcome | null>(null)
+  const outcome = shallowRef<RunResult | null>(null)
   const refusal = shallowRef<Problem | null>(null)
   const busy = ref(false)
   let latest = 0
@@ -57,7 +57,7 @@ function isProcedure({ name }: OpenedFile): boolean {
   return name.toLowerCase().endsWith('.json')
 }
 
-async function settled(running: Promise<Outcome>): Promise<Outcome> {
+async function settled(running: Promise<RunResult>): Promise<RunResult> {
   try {
     return await running
   } catch (error) {
