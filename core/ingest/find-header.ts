@@ -16,6 +16,7 @@ export interface FoundHeader {
 const DELIMITERS = [',', ';', '\t'] as const
 /** A preamble may be long, but not longer. */
 const SEARCH_ROWS = 500
+const MAX_COLUMNS = 1000
 
 export function findHeader(file: string, block: string, options: ReadOptions): FoundHeader | FileProblem {
   const declared = /^sep=([,;\t])\s*$/im.exec(block.slice(0, 20))?.[1]
@@ -37,7 +38,7 @@ function searchRows(rows: Rows, options: ReadOptions): { row: number; rank: numb
   const end = Math.min(rows.cells.length, SEARCH_ROWS)
   for (let row = 0; row < end; row++) {
     const cells = rows.cells[row]!
-    if (!isWordRow(cells)) continue
+    if (!isWordRow(cells) || isUnsplit(cells)) continue
     const strength = headerStrength(trimmed(cells), options)
     const next = nextFilled(rows, row)
     const isOverNumbers = next !== null && countNumbers(next) > 0 && next.length >= widthOf(cells)
@@ -49,13 +50,18 @@ function searchRows(rows: Rows, options: ReadOptions): { row: number; rank: numb
   return named ?? unnamed
 }
 
+/** One cell with another delimiter in it: the row is not split as it should be, and "1,92" under it is no 1.92. */
+function isUnsplit(cells: readonly string[]): boolean {
+  return widthOf(cells) === 1 && /[,;\t]/.test(cells[0]!.trim())
+}
+
 export function trimmed(cells: readonly string[]): string[] {
   return cells.map((cell) => cell.trim())
 }
 
 /** Words, no numbers: what a header row looks like. */
 export function isWordRow(cells: readonly string[]): boolean {
-  return !cells.every(isBlank) && countNumbers(cells) === 0
+  return cells.length <= MAX_COLUMNS && !cells.every(isBlank) && countNumbers(cells) === 0
 }
 
 /** Units under the names: every filled cell is a unit, perhaps in brackets. */

@@ -6,6 +6,7 @@ export interface HeaderReading {
   readonly words: readonly string[]
   /** null: the header names no unit. */
   readonly unit: Unit | null
+  readonly isBracketUnit: boolean
   /** Text in brackets that is neither a unit nor words of the trade, once `words` are known not to need it. */
   readonly bracket: string | null
 }
@@ -37,12 +38,18 @@ export function readHeader(header: string): readonly HeaderReading[] {
   const readings: HeaderReading[] = []
   if (unitAt >= 0) {
     const rest = brackets.filter((_, at) => at !== unitAt).join(' ')
-    readings.push({ words: wordsOf(`${outside} ${rest}`), unit: findUnit(brackets[unitAt]!), bracket: null })
+    readings.push({
+      words: wordsOf(`${outside} ${rest}`),
+      unit: findUnit(brackets[unitAt]!),
+      isBracketUnit: true,
+      bracket: null,
+    })
   } else {
     readings.push(...suffixReadings(tokensOf(`${brackets.join(' ')} ${outside}`)))
   }
-  readings.push({ words: wordsOf(`${outside} ${brackets.join(' ')}`), unit: null, bracket: null })
-  if (brackets.length > 0) readings.push({ words: wordsOf(outside), unit: null, bracket: brackets.join(' ') })
+  readings.push({ words: wordsOf(`${outside} ${brackets.join(' ')}`), unit: null, isBracketUnit: false, bracket: null })
+  if (brackets.length > 0)
+    readings.push({ words: wordsOf(outside), unit: null, isBracketUnit: false, bracket: brackets.join(' ') })
   return readings
 }
 
@@ -51,7 +58,8 @@ function suffixReadings(tokens: readonly string[]): HeaderReading[] {
   const readings: HeaderReading[] = []
   for (let size = Math.min(4, tokens.length); size >= 1; size--) {
     const unit = findUnit(tokens.slice(-size).join(' '))
-    if (unit) readings.push({ words: wordsOf(tokens.slice(0, -size).join(' ')), unit, bracket: null })
+    if (unit)
+      readings.push({ words: wordsOf(tokens.slice(0, -size).join(' ')), unit, isBracketUnit: false, bracket: null })
   }
   return readings
 }

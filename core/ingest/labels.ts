@@ -4,12 +4,14 @@ import type { WaferLabel } from './readings'
 import { readTextCell } from './text-cell'
 
 const MAX_PLAIN_NUMBER = 1 << 22
+const PAGE_BITS = 12
 
 /** Site names. The usual ones are 1, 2, 3... and need no look-up by text. */
 export class SiteNames {
   readonly names: string[] = []
   private readonly byText = new Map<string, number>()
-  private readonly byNumber: number[] = []
+  /** Pages of indices, made as they are needed: numbers may be few and large. */
+  private readonly pages: (Int32Array | undefined)[] = []
 
   ofCell(cell: string): number {
     const number = plainNumber(cell)
@@ -18,10 +20,10 @@ export class SiteNames {
 
   ofNumber(number: number): number {
     if (number > MAX_PLAIN_NUMBER) return this.ofText(String(number))
-    const known = this.byNumber[number]
-    if (known !== undefined && known >= 0) return known
-    while (this.byNumber.length <= number) this.byNumber.push(-1)
-    return (this.byNumber[number] = this.names.push(String(number)) - 1)
+    const page = (this.pages[number >> PAGE_BITS] ??= new Int32Array(1 << PAGE_BITS).fill(-1))
+    const at = number & ((1 << PAGE_BITS) - 1)
+    if (page[at]! < 0) page[at] = this.names.push(String(number)) - 1
+    return page[at]!
   }
 
   ofText(text: string): number {
@@ -96,6 +98,7 @@ const STATISTICS_WORDS = new Set(
 
 /** "Mean", "Std Dev" and the like at the beginning of a row: statistics under the readings, not a site. */
 export function isStatisticsWord(cell: string): boolean {
+  if (cell.length > 60) return false
   const words = cell
     .trim()
     .toLowerCase()

@@ -4,6 +4,7 @@ import type { Quantity, Unit } from '../units/unit-register'
 import type { FileProblem } from '../problems/problem'
 import { NUMBER_KINDS, isReadingColumn } from './column-kinds'
 import type { HeaderTarget } from './header-words'
+import { readHeader } from './header-name'
 import { matchHeader } from './match-header'
 import type { HeaderMatch } from './match-header'
 import type { ReadOptions } from './read-options'
@@ -43,6 +44,7 @@ export function matchColumns(file: string, headers: readonly string[], options: 
     byTarget.set(match.target, [...(byTarget.get(match.target) ?? []), { at, header, match }])
   })
   dropLoneAngle(byTarget, mapped.columns)
+  dropLongForm(byTarget, mapped.columns)
   const columns = [...mapped.columns]
   for (const [target, candidates] of byTarget) {
     const chosen = choose(file, target, candidates)
@@ -103,8 +105,9 @@ function mappedUnit(
   const quantity = NUMBER_KINDS[target]?.quantity
   if (quantity == null) return null
   if (wish === undefined) {
-    const match = matchHeader(header)
-    return match?.unit && fits(match.unit, quantity) ? match.unit : baseUnit(quantity)
+    // The words of a mapped header may be anything, its unit still counts.
+    const named = readHeader(header).find((reading) => reading.unit !== null && fits(reading.unit, quantity))
+    return named?.unit ?? baseUnit(quantity)
   }
   const unit = findUnit(wish)
   if (unit && fits(unit, quantity)) return unit
@@ -127,6 +130,13 @@ function dropLoneAngle(byTarget: Map<HeaderTarget, Candidate[]>, mapped: readonl
   const hasPlane = has('x_mm') && has('y_mm')
   if (hasPlane || (!has('theta_deg') && isBare)) byTarget.delete('r_mm')
   if (hasPlane || !has('r_mm')) byTarget.delete('theta_deg')
+}
+
+/** Where each direction and configuration has columns of its own, a header of that name means something else. */
+function dropLongForm(byTarget: Map<HeaderTarget, Candidate[]>, mapped: readonly MatchedColumn[]): void {
+  const has = (target: HeaderTarget) => byTarget.has(target) || mapped.some((column) => column.target === target)
+  if (has('voltage_rev_V')) byTarget.delete('direction')
+  if (has('voltage_b_V') || has('v_over_i_b_ohm')) byTarget.delete('configuration')
 }
 
 function choose(file: string, target: HeaderTarget, candidates: readonly Candidate[]): MatchedColumn | FileProblem {

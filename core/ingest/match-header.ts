@@ -30,13 +30,14 @@ export function matchHeader(header: string): HeaderMatch | null {
     return { target: exact, score: DOCUMENTED_SCORE, unit: null, unknownUnit: null, why: 'the documented name' }
   }
   if (header.length > 80) return null
-  let best: HeaderMatch | null = null
+  let best: (HeaderMatch & { readonly isBracketUnit: boolean }) | null = null
   for (const reading of readHeader(header)) {
-    // A bracket that isn't understood counts only if nothing else explains the header.
-    if (reading.bracket !== null && best !== null) break
+    // A unit in brackets is meant as one; a bracket that isn't understood counts only if nothing else explains the header.
+    if (best !== null && (best.isBracketUnit || reading.bracket !== null)) break
     for (const family of FAMILIES) {
       const match = matchFamily(reading, family)
-      if (match !== null && (best === null || match.score > best.score)) best = match
+      if (match !== null && (best === null || match.score > best.score))
+        best = { ...match, isBracketUnit: reading.isBracketUnit }
     }
   }
   return best
@@ -46,6 +47,8 @@ function matchFamily(reading: HeaderReading, family: Family): HeaderMatch | null
   const { unit } = reading
   if (unit !== null && !family.quantities.includes(unit.quantity)) return null
   if (reading.bracket !== null && family.quantities.length === 0) return null
+  // "mA" alone may be a header of currents, "A" alone may be anything.
+  if (reading.words.length === 0 && (unit === null || unit.id.length < 2)) return null
   const parts = sortWords(reading.words, family)
   if (parts === null) return null
   const weight = family.phrases[parts.phrase]

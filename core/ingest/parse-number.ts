@@ -97,7 +97,7 @@ export function isBlank(cell: string): boolean {
 
 /** Why a cell that `parseNumber` refused isn't a number, in words. */
 export function explainNumber(cell: string, mark: DecimalMark): string {
-  const text = cell.trim()
+  const text = cell.trim().slice(0, 100)
   const other = mark === '.' ? ',' : '.'
   if (text === '') return 'is empty'
   if (/^[+-]?\d{1,3}([.,' \u00a0\u202f])\d{3}(\1\d{3})*([.,]\d+)?$/.test(text) && text.includes(other)) {

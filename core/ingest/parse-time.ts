@@ -15,6 +15,7 @@ export interface TimeReading {
 export type TimeRefusal = 'ambiguous' | 'unknown'
 
 export function parseTime(text: string): TimeReading | TimeRefusal {
+  if (text.length > 60) return 'unknown'
   const iso = ISO.exec(text)
   if (iso) return assemble(Number(iso[1]), Number(iso[3]), Number(iso[4]), iso.slice(5))
   const other = DAY_FIRST.exec(text)

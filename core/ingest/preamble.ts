@@ -11,6 +11,9 @@ export interface PreambleEntry {
   readonly value: string
 }
 
+/** A longer line is free text: the patterns below would take too long over it. */
+const MAX_LENGTH = 2000
+
 const PAIR = /^\s*(?:[#%;*!]+|\/\/)?\s*([^:=,;\t]{1,60}?)\s*[:=,;\t]\s*(.*)$/
 
 /** Keys beside those that name a column; they are kept, and show that a line inside the rows is no bad reading. */
@@ -37,6 +40,7 @@ export function preambleTarget(key: string): HeaderTarget | null {
 
 /** A row of cells as preamble; free text comes back under an empty key. */
 export function readPreambleRow(cells: readonly string[], delimiter: string): readonly PreambleEntry[] {
+  if (isTooLong(cells)) return [{ key: '', value: cells.join(delimiter).slice(0, MAX_LENGTH) }]
   const filled = cells.map((cell) => cell.trim()).filter((cell) => cell !== '')
   const separate = filled.map(readPair)
   if (filled.length > 1 && separate.every((entry) => entry !== null && /[:=]/.test(entry.mark))) {
@@ -57,6 +61,7 @@ export function readPreambleRow(cells: readonly string[], delimiter: string): re
 
 /** Whether a row among the readings is of a preamble: its key is one we know. */
 export function isPreambleRow(cells: readonly string[], delimiter: string): boolean {
+  if (isTooLong(cells)) return false
   const filled = cells.filter((cell) => !isBlank(cell)).length
   const entries = filled > 8 ? [] : readPreambleRow(cells, delimiter)
   return (
@@ -64,6 +69,12 @@ export function isPreambleRow(cells: readonly string[], delimiter: string): bool
     entries.every(({ key, value }) => isKnownKey(key) && value !== '') &&
     filled <= Math.max(2, 2 * entries.length)
   )
+}
+
+function isTooLong(cells: readonly string[]): boolean {
+  let length = cells.length
+  for (const cell of cells) length += cell.length
+  return length > MAX_LENGTH
 }
 
 function isKnownKey(key: string): boolean {

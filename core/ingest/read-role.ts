@@ -4,7 +4,8 @@ export const B_BIT = 2
 /** The site has no name in the file, its number is ours. */
 export const NUMBERED_BIT = 4
 
-const CONFIGURATIONS: Readonly<Record<string, number>> = { '': 0, a: 0, b: B_BIT, 'config a': 0, 'config b': B_BIT, 'configuration a': 0, 'configuration b': B_BIT, '1-4': 0, '1-3': B_BIT } // prettier-ignore
+const CONFIGURATIONS: Readonly<Record<string, number>> = {
+  single: 0, '': 0, a: 0, b: B_BIT, 'config a': 0, 'config b': B_BIT, 'configuration a': 0, 'configuration b': B_BIT, '1-4': 0, '1-3': B_BIT } // prettier-ignore
 const DIRECTIONS: Readonly<Record<string, number>> = {
   '': 0, forward: 0, fwd: 0, f: 0, '+': 0, positive: 0, pos: 0, plus: 0, normal: 0, '+1': 0, '1': 0,
   reverse: REVERSE_BIT, reversed: REVERSE_BIT, rev: REVERSE_BIT, r: REVERSE_BIT, '-': REVERSE_BIT, '\u2212': REVERSE_BIT,

@@ -118,6 +118,7 @@ export const units: readonly Unit[] = ENTRIES.map((entry) => entry.unit)
 
 /** The unit of a spelling, or null. `MOHM` is refused: written in capitals, milli and mega can't be told apart. */
 export function findUnit(text: string): Unit | null {
+  if (text.length > 40) return null
   const key = unitKey(text)
   return exact.get(key) ?? folded.get(key.toLowerCase()) ?? null
 }
