@@ -16,10 +16,13 @@ describe('bulk silicon', () => {
   it.each(DOPANTS)('returns the concentration it was given: %s', (dopant) => {
     const layer = bulk.prepare({ ...wafer, mobility: modelOf('masetti'), dopant })
     const concentrations = between(1e12, 1e21, 200)
-    const found = inverted(layer, concentrations.map((n) => layer.forward(n)))
+    const found = inverted(
+      layer,
+      concentrations.map((n) => layer.forward(n)),
+    )
     expect(largestRelativeDifference(found.concentration_cm3, concentrations)).toBeLessThan(1e-9)
     expect(found.concentrationSensitivity.every((slope) => slope < -0.8)).toBe(true)
-  }) // prettier-ignore
+  })
 
   it('gives resistivity for every number, concentration inside its range alone', () => {
     const layer = bulk.prepare(wafer)

@@ -11,8 +11,11 @@ function countedCurve(bend = 0): { curve: LayerCurve; calls: () => number } {
     return -t - 0.2 * Math.sin(t) - (t > 2 ? bend : 0)
   }
   const bends = bend === 0 ? [] : [2]
-  return { calls: () => calls, curve: { from: 0, to: 6, bends, lnConcentration: (t) => t, lnDose: (t) => 2 * t, lnSheetResistance } }
-} // prettier-ignore
+  return {
+    calls: () => calls,
+    curve: { from: 0, to: 6, bends, lnConcentration: (t) => t, lnDose: (t) => 2 * t, lnSheetResistance },
+  }
+}
 
 const sheetAt = (t: number, jump = 0): number => Math.exp(-t - 0.2 * Math.sin(t) - jump)
 const depths = between(0.01, 5.99, 500)
@@ -20,14 +23,17 @@ const depths = between(0.01, 5.99, 500)
 describe('inverse of a layer curve', () => {
   it('meets the closed form, with its slopes', () => {
     const into = untouchedColumns(depths.length)
-    curveInverse(countedCurve().curve).fill(depths.map((t) => sheetAt(t)), into)
+    curveInverse(countedCurve().curve).fill(
+      depths.map((t) => sheetAt(t)),
+      into,
+    )
     depths.forEach((t, i) => {
       expect(Math.abs(Math.log(into.concentration_cm3[i]) - t)).toBeLessThan(1e-10)
       expect(Math.abs(Math.log(into.dose_cm2[i]) - 2 * t)).toBeLessThan(2e-10)
       expect(into.concentrationSensitivity[i]).toBeCloseTo(-1 / (1 + 0.2 * Math.cos(t)), 7)
       expect(into.doseSensitivity[i]).toBeCloseTo(-2 / (1 + 0.2 * Math.cos(t)), 7)
     })
-  }) // prettier-ignore
+  })
 
   it('leaves the columns alone that are not its own', () => {
     const into = untouchedColumns(2)
@@ -67,7 +73,10 @@ describe('inverse of a layer curve', () => {
     const kinked: LayerCurve = { ...curve, lnSheetResistance: (t) => -t - 0.5 * Math.abs(t - 3.1) * (t > 3.1 ? 1 : 0) }
     const near = between(2.9, 3.3, 200)
     const into = untouchedColumns(near.length)
-    curveInverse(kinked).fill(near.map((t) => Math.exp(kinked.lnSheetResistance(t))), into)
+    curveInverse(kinked).fill(
+      near.map((t) => Math.exp(kinked.lnSheetResistance(t))),
+      into,
+    )
     near.forEach((t, i) => expect(Math.abs(Math.log(into.concentration_cm3[i]) - t)).toBeLessThan(1e-9))
-  }) // prettier-ignore
+  })
 })

@@ -61,19 +61,26 @@ describe('doped layer', () => {
     const { min, max } = layer.range_ohm_sq
     const sheets = between(min, max, 140)
     const table = inverted(layer, sheets)
-    const single = [0, 1, 2].map((part) => inverted(layer, sheets.filter((_, i) => i % 3 === part)))
+    const single = [0, 1, 2].map((part) =>
+      inverted(
+        layer,
+        sheets.filter((_, i) => i % 3 === part),
+      ),
+    )
     const ofPart = (name: 'concentration_cm3' | 'dose_cm2' | 'concentrationSensitivity' | 'doseSensitivity') =>
       sheets.map((_, i) => single[i % 3][name][Math.floor(i / 3)])
     expect(largestRelativeDifference(table.concentration_cm3, ofPart('concentration_cm3'))).toBeLessThan(3e-10)
     expect(largestRelativeDifference(table.dose_cm2, ofPart('dose_cm2'))).toBeLessThan(3e-10)
-    expect(largestRelativeDifference(table.concentrationSensitivity, ofPart('concentrationSensitivity'))).toBeLessThan(1e-6)
+    expect(largestRelativeDifference(table.concentrationSensitivity, ofPart('concentrationSensitivity'))).toBeLessThan(
+      1e-6,
+    )
     expect(largestRelativeDifference(table.doseSensitivity, ofPart('doseSensitivity'))).toBeLessThan(1e-6)
     // Not in the gap that a jump of the model leaves: no concentration gives a resistance inside it.
     const back = table.concentration_cm3.map((n) => layer.forward(n))
     const missed = back.filter((sheet, i) => Math.abs(sheet / sheets[i] - 1) > 3e-10).length
     const hasGap = settings.mobility.id === 'mf723' && settings.dopant === 'arsenic' && settings.profile === 'uniform'
     expect(missed).toBeLessThanOrEqual(hasGap ? 1 : 0)
-  }) // prettier-ignore
+  })
 
   it('has sensitivities that are the slopes of its own results', () => {
     const layer = dopedLayer.prepare(monitor)

@@ -26,11 +26,15 @@ describe('film', () => {
 
   it('shows its working', () => {
     const [thickness] = film.prepare({ resistivity_ohm_cm: 2.7e-6 }).explain(0.027)
-    expect(thickness).toMatchObject({ symbol: 't', unit: 'µm', formula: '2.700 × 10⁻⁶ Ω·cm / 0.02700 Ω/sq × 10⁴ µm/cm' })
+    expect(thickness).toMatchObject({
+      symbol: 't',
+      unit: 'µm',
+      formula: '2.700 × 10⁻⁶ Ω·cm / 0.02700 Ω/sq × 10⁴ µm/cm',
+    })
     expect(thickness.value).toBeCloseTo(1, 12)
     const [resistivity] = film.prepare({ thickness_um: 0.5 }).explain(0.054)
     expect(resistivity.value).toBeCloseTo(2.7e-6, 18)
-  }) // prettier-ignore
+  })
 
   it('refuses both, neither, and what is out of range', () => {
     const both = { resistivity_ohm_cm: 1e-6, thickness_um: 1 }

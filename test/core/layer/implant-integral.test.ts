@@ -40,7 +40,6 @@ describe('sheet resistance of an implant', () => {
       [0.05, 0.1],
       [1, 0.1],
     ]) {
-      // prettier-ignore
       const implant = { silicon: constantSilicon, range_um, straggle_um, peak_cm3: 3e19, background_cm3: 0 }
       const inside = 1 - erfc(range_um / straggle_um / Math.SQRT2) / 2
       const exact = 1 / (q * constantHoleMobility * implantDose_cm2(implant) * inside)

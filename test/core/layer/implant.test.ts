@@ -14,7 +14,9 @@ const monitor: ImplantSettings = {
   background: { dopant: 'boron', concentration_cm3: 2e15 },
 }
 
-const cases: [string, ImplantSettings][] = (['masetti', 'klaassen', 'arora', 'caughey-thomas', 'constant', 'mf723'] as const).flatMap((id) =>
+const cases: [string, ImplantSettings][] = (
+  ['masetti', 'klaassen', 'arora', 'caughey-thomas', 'constant', 'mf723'] as const
+).flatMap((id) =>
   (['boron', 'arsenic'] as const).flatMap((dopant): [string, ImplantSettings][] => {
     const settings = { ...monitor, mobility: modelOf(id), dopant }
     const background = { dopant: oppositeOf(dopant), concentration_cm3: 2e15 }
@@ -23,7 +25,7 @@ const cases: [string, ImplantSettings][] = (['masetti', 'klaassen', 'arora', 'ca
       [`${id} ${dopant}, no background`, { ...settings, background: undefined }],
     ]
   }),
-) // prettier-ignore
+)
 
 describe('implant', () => {
   it.each(cases)('returns what it was given, table and single sites alike: %s', (_, settings) => {
@@ -52,9 +54,12 @@ describe('implant', () => {
     const layer = implant.prepare(monitor)
     const surfacing_cm3 = 2e15 * Math.exp((0.06 / 0.022) ** 2 / 2)
     const peaks = between(surfacing_cm3 * 0.97, surfacing_cm3 * 1.03, 101)
-    const found = inverted(layer, peaks.map((n) => layer.forward(n)))
+    const found = inverted(
+      layer,
+      peaks.map((n) => layer.forward(n)),
+    )
     expect(largestRelativeDifference(found.concentration_cm3, peaks)).toBeLessThan(3e-10)
-  }) // prettier-ignore
+  })
 
   it('has sensitivities that are the slopes of its own results', () => {
     const layer = implant.prepare(monitor)
@@ -96,10 +101,13 @@ describe('implant', () => {
   })
 
   it('refuses a background of its own type, sizes and peaks out of range', () => {
-    const refused = (settings: Partial<ImplantSettings>) => problemOf(() => implant.prepare({ ...monitor, ...settings }))
-    expect(refused({ background: { dopant: 'phosphorus', concentration_cm3: 1e15 } })).toMatchObject({ kind: 'not-applicable' })
+    const refused = (settings: Partial<ImplantSettings>) =>
+      problemOf(() => implant.prepare({ ...monitor, ...settings }))
+    expect(refused({ background: { dopant: 'phosphorus', concentration_cm3: 1e15 } })).toMatchObject({
+      kind: 'not-applicable',
+    })
     expect(refused({ range_um: 0 })).toMatchObject({ quantity: 'projected range' })
     expect(refused({ straggle_um: -1 })).toMatchObject({ quantity: 'straggle' })
     expect(problemOf(() => implant.prepare(monitor).forward(2e15))).toMatchObject({ quantity: 'peak concentration' })
-  }) // prettier-ignore
+  })
 })

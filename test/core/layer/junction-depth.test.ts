@@ -12,18 +12,22 @@ describe('junction depth', () => {
 
   it('is where the diffusion profile has come down to the background', () => {
     fc.assert(
-      fc.property(fc.double({ min: 0.1, max: 8, noNaN: true }), fc.double({ min: 0.01, max: 5, noNaN: true }), (decades, length_um) => {
-        const question = { surface_cm3: 10 ** (14 + decades), background_cm3: 1e14, length_um }
-        const x = (profile: 'gaussian' | 'erfc' | 'exponential') => junctionDepth_um({ ...question, profile })
-        const ns = question.surface_cm3
-        const levels = [
-          ns * Math.exp(-((x('gaussian') / (2 * length_um)) ** 2)),
-          ns * erfc(x('erfc') / (2 * length_um)),
-          ns * Math.exp(-x('exponential') / length_um),
-        ]
-        for (const level of levels) expect(Math.abs(level / 1e14 - 1)).toBeLessThan(1e-11)
-      }),
-    ) // prettier-ignore
+      fc.property(
+        fc.double({ min: 0.1, max: 8, noNaN: true }),
+        fc.double({ min: 0.01, max: 5, noNaN: true }),
+        (decades, length_um) => {
+          const question = { surface_cm3: 10 ** (14 + decades), background_cm3: 1e14, length_um }
+          const x = (profile: 'gaussian' | 'erfc' | 'exponential') => junctionDepth_um({ ...question, profile })
+          const ns = question.surface_cm3
+          const levels = [
+            ns * Math.exp(-((x('gaussian') / (2 * length_um)) ** 2)),
+            ns * erfc(x('erfc') / (2 * length_um)),
+            ns * Math.exp(-x('exponential') / length_um),
+          ]
+          for (const level of levels) expect(Math.abs(level / 1e14 - 1)).toBeLessThan(1e-11)
+        },
+      ),
+    )
   })
 
   it('refuses a surface that does not exceed the background, and a uniform layer', () => {

@@ -79,6 +79,9 @@ const anyLayer = fc
     return { ...rest, background_cm3, surface_cm3: background_cm3 * (1 + excess) }
   })
 
+/** Of all models: the arsenic fit of SEMI MF723 run on past its end implies a mobility that rises with doping. */
+const fallingMobilities = mobilityIds.filter((id) => id !== 'mf723')
+
 describe('sheet resistance times depth', () => {
   it.each(
     irvinLayers.map((row) => [`${row.dopant} ${row.profile} ${row.surface_cm3} over ${row.background_cm3}`, row]),
@@ -134,7 +137,8 @@ describe('its laws', () => {
 
   it('the same diffusion in more background, more resistance', () => {
     fc.assert(
-      fc.property(anyLayer, (layer) => {
+      fc.property(anyLayer, fc.constantFrom(...fallingMobilities), (drawn, mobility) => {
+        const layer = { ...drawn, mobility }
         const resistance = (background_cm3: number): number => {
           const length = { ...layer, background_cm3, length_um: 1 }
           const depth_um = layer.profile === 'uniform' ? 1 : junctionDepth_um(length)

@@ -43,7 +43,6 @@ describe('integral over panels', () => {
       [0, 0.1, 3],
       [0, 1, 2, 3],
     ]) {
-      // prettier-ignore
       expect(integratePanels((x) => Math.exp(-x), edges, rule)).toBeCloseTo(exact, 14)
     }
   })
