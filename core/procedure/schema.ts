@@ -14,7 +14,6 @@ z.config({ jitless: true })
 export const PROCEDURE_FORMAT = 'persquare-procedure/1'
 
 const positive = (max: number) => z.number().gt(0).max(max)
-const concentration = z.number().min(1e10).max(1e22)
 const limits = z.strictObject({ target: z.number().gt(0), lower: z.number().gt(0), upper: z.number().gt(0) }).partial()
 
 const wafer = z.strictObject({
@@ -46,7 +45,7 @@ const silicon = {
   /** Only with mobility "constant" [cm^2/(V s)]. */
   constantMobility: z.strictObject({ electronsCm2Vs: positive(1e5), holesCm2Vs: positive(1e5) }).optional(),
 }
-const background = z.strictObject({ dopant: z.enum(DOPANTS), concentrationCm3: concentration })
+const background = z.strictObject({ dopant: z.enum(DOPANTS), concentrationCm3: z.number().min(1e10).max(1e20) })
 
 const layer = z.discriminatedUnion('kind', [
   z.strictObject({ kind: z.literal('sheet') }),
