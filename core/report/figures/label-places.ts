@@ -9,9 +9,8 @@ export interface LabelWish {
   readonly empty: boolean
   readonly preferAbove: boolean
   readonly markHalf: number
-  /** How far to either side the label may reach. */
-  readonly left: number
-  readonly right: number
+  /** How far a label between these heights may reach to either side. */
+  readonly room: (top: number, bottom: number) => { readonly left: number; readonly right: number }
   readonly key: number
 }
 
@@ -42,16 +41,16 @@ export function placeLabels(wishes: readonly LabelWish[], size_pt: number): Plac
     if (wish.empty) continue
     const half = labelWidth_pt(wish.text, size_pt) / 2
     const offsets = [wish.markHalf + 0.9 * size_pt, -wish.markHalf - 0.4 * size_pt]
-    const middle = Math.max(wish.left + half, Math.min(wish.right - half, wish.x))
     for (const offset of wish.preferAbove ? offsets.reverse() : offsets) {
       const baseline = wish.y + offset
-      const box = {
-        left: middle - half - 1,
-        right: middle + half + 1,
-        top: baseline - 0.75 * size_pt,
-        bottom: baseline + 0.1 * size_pt,
-      }
-      if (taken.hits(box)) continue
+      const top = baseline - 0.75 * size_pt
+      const bottom = baseline + 0.1 * size_pt
+      const room = wish.room(top, bottom)
+      const middle = Math.max(room.left + half, Math.min(room.right - half, wish.x))
+      const box = { left: middle - half - 1, right: middle + half + 1, top, bottom }
+      // A label pushed away from its mark by more than half its width would seem to belong to another.
+      const fits = room.right - room.left >= 2 * half && Math.abs(middle - wish.x) <= half
+      if (!fits || taken.hits(box)) continue
       taken.add(box)
       placed.push({ x: middle, halfWidth: half, baseline, text: wish.text, key: wish.key })
       break

@@ -1,15 +1,15 @@
 /** The map of one wafer: value bands, the wafer's outline, its sites with their values, and what is out of spec. */
-import { edgeDistance_mm, type Outline } from '../../wafer/outline'
+import type { Outline } from '../../wafer/outline'
 import type { Drawing, Shape } from '../drawing'
 import { group, line, polygon, rectangle, text } from '../drawing'
 import { formatFixed } from '../../units/format'
 import { bandOf, isDark, type BandScale } from './band-scale'
 import { colourBar } from './colour-bar'
 import { AXIS_PT, FAINT, INK, PAPER, QUIET_INK, RULE } from './ink'
-import { placeLabels, type LabelWish, type PlacedLabel } from './label-places'
 import { mapLegend } from './map-legend'
 import { mark, markOf, type MarkKind, type SiteLimits } from './marks'
 import { drawnExtent, outlineRing } from './outline-path'
+import { siteDecimals, siteValues, type MarkedSite } from './site-values'
 import { niceTicks } from './ticks'
 
 export interface MapSites {
@@ -105,7 +105,7 @@ export function waferMap(input: WaferMapInput): Drawing {
         limits: input.limits,
         quantity: input.quantity,
       }),
-      mapLegend(marks, input, field.left, Math.min(height_pt - 4, bottom + 32)),
+      mapLegend(drawnKinds(marks), input, field.left, Math.min(height_pt - 4, bottom + 32)),
     ],
   }
 }
@@ -193,85 +193,27 @@ function diesOut(dies: MapDies | null, plane: Plane): Shape[] {
   ]
 }
 
+/** The kinds that a reader will find in the map. */
+function drawnKinds(marks: readonly MarkKind[]): readonly MarkKind[] {
+  return marks.length > MOST_DOTS ? marks.filter((kind) => kind !== 'in-spec') : marks
+}
+
 function siteMarks(input: WaferMapInput, plane: Plane, marks: readonly MarkKind[]): Shape[] {
   const { sites, scale } = input
   const withDots = marks.length <= MOST_DOTS
   const size = Math.min(3.4, Math.max(1.4, (40 * plane.scale_pt_per_mm) / Math.sqrt(Math.max(1, marks.length))))
   const shapes: Shape[] = []
-  const drawn: number[] = []
+  const drawn: MarkedSite[] = []
   for (let i = 0; i < marks.length && drawn.length < MOST_MARKS; i++) {
     const kind = marks[i]!
     if (kind === 'in-spec' && !withDots) continue
     if (!Number.isFinite(sites.x_mm[i]) || !Number.isFinite(sites.y_mm[i])) continue
-    drawn.push(i)
+    drawn.push({ key: i, kind })
     const onDark =
       input.contours !== null && kind !== 'not-assessed' && isDark(scale.colours[bandOf(scale, sites.value[i]!)]!)
     shapes.push(mark(kind, plane.x(sites.x_mm[i]!), plane.y(sites.y_mm[i]!), size, { onDark, rim: true }))
   }
-  return [...shapes, ...valueLabels(drawn, size, input, plane)]
-}
-
-const VALUE_PT = 5.2
-
-function valueLabels(drawn: readonly number[], markHalf: number, input: WaferMapInput, plane: Plane): Shape[] {
-  const { sites } = input
-  const decimals = siteDecimals(sites.value)
-  const wishes = drawn.map((key): LabelWish => {
-    const x = sites.x_mm[key]!
-    const y = sites.y_mm[key]!
-    const reach_mm = reachAt(input, y)
-    const value = sites.value[key]!
-    return {
-      x: plane.x(x), y: plane.y(y), text: formatFixed(value, decimals), empty: Number.isNaN(value), preferAbove: y < 0,
-      markHalf, left: plane.x(-reach_mm) + 2, right: plane.x(reach_mm) - 2, key,
-    } // prettier-ignore
-  })
-  return placeLabels(wishes, VALUE_PT).flatMap((label) => valueLabel(label, input, plane))
-}
-
-/** How far the wafer reaches to either side where the label of a site at that height will stand. */
-function reachAt({ outline }: WaferMapInput, y_mm: number): number {
-  if (outline.shape === 'infinite') return 1e6
-  if (outline.shape === 'rectangle') return outline.width_mm / 2
-  return Math.sqrt(Math.max(0, (outline.diameter_mm / 2) ** 2 - y_mm ** 2))
-}
-
-/** A label that would lie on a thin line gets a patch of its site's colour behind it. */
-function valueLabel(label: PlacedLabel, input: WaferMapInput, plane: Plane): Shape[] {
-  const ground = input.contours ? input.scale.colours[bandOf(input.scale, input.sites.value[label.key]!)]! : FAINT
-  const ink = isDark(ground) ? PAPER : INK
-  const shape = text(label.x, label.baseline, label.text, { size_pt: VALUE_PT, fill: ink, anchor: 'middle' })
-  if (!liesOnLine(label, input, plane)) return [shape]
-  const patch = rectangle(
-    label.x - label.halfWidth,
-    label.baseline - 0.8 * VALUE_PT,
-    2 * label.halfWidth,
-    0.88 * VALUE_PT,
-    { fill: ground },
-  )
-  return [patch, shape]
-}
-
-function liesOnLine(label: PlacedLabel, { outline, edgeExclusion_mm, diesOut }: WaferMapInput, plane: Plane): boolean {
-  const scale = plane.scale_pt_per_mm
-  const x_mm = (label.x - plane.x(0)) / scale
-  const y_mm = (plane.y(0) - label.baseline + 0.4 * VALUE_PT) / scale
-  const reach_mm = label.halfWidth / scale
-  const isOnRing = Math.abs(edgeDistance_mm(outline, x_mm, y_mm) - edgeExclusion_mm) < reach_mm + 1
-  if (edgeExclusion_mm > 0 && isOnRing) return true
-  if (!diesOut) return false
-  return diesOut.centreX_mm.some(
-    (x, i) =>
-      Math.abs(x - x_mm) < diesOut.pitchX_mm / 2 + reach_mm &&
-      Math.abs(diesOut.centreY_mm[i]! - y_mm) < diesOut.pitchY_mm / 2 + VALUE_PT / scale,
-  )
-}
-
-/** Four significant digits at the largest value, the same decimals for all. */
-function siteDecimals(values: ArrayLike<number>): number {
-  let largest = 0
-  for (let i = 0; i < values.length; i++) if (Math.abs(values[i]!) > largest) largest = Math.abs(values[i]!)
-  return largest > 0 ? Math.max(0, Math.min(8, 3 - Math.floor(Math.log10(largest)))) : 0
+  return [...shapes, ...siteValues(drawn, size, input, plane)]
 }
 
 function mapDescription(input: WaferMapInput, marks: readonly MarkKind[]): string {

@@ -125,7 +125,7 @@ function figures(wafer: WaferAnalysis, mapHeight: number, context: ReportContext
 }
 
 function mapCaption(method: string): Block {
-  const text = `Colours between the sites: ${method}; beyond the outermost sites they are extrapolated. Printed values are those of the sites.`
+  const text = `Colours between the sites: ${method}; extrapolated beyond the outermost. Printed values are those of the sites.`
   return { kind: 'paragraph', text, quiet: true }
 }
 
