@@ -74,7 +74,7 @@ const sentences: Sentences = {
   'mixed-files': ({ what, first, found }) =>
     `Its ${what} is ${quote(found)} but that of the first file is ${quote(first)}. Analyse files of one kind together.`,
 
-  'bad-cell': ({ found, why }) => `${quote(found)} was not used: ${ended(why)}`,
+  'bad-cell': ({ found, why }) => `${quote(found)} ${why}; the row was left out.`,
   'bad-row': ({ found, why }) => `The row was left out${found === '' ? '' : ` at ${quote(found)}`}: ${ended(why)}`,
   'doubled-site': ({ wafer, site, firstLine }) =>
     `Site ${quote(site)} of wafer ${quote(wafer)} was already read in line ${firstLine}. Remove one of the two, or give them different site names.`,

@@ -68,6 +68,7 @@ export type FileProblem =
 /** One row, or one cell of it. The row is left out of the analysis and listed. */
 export type RowProblem =
   | {
+      /** `why` follows the text found: "is empty", "is not a number". */
       readonly kind: 'bad-cell'
       readonly file: string
       readonly line: number

@@ -23,7 +23,7 @@ const examples: { readonly [Kind in ProblemKind]: Extract<Problem, { kind: Kind 
   'unknown-unit': { kind: 'unknown-unit', file, header: 'V [furlong]', unit: 'furlong', known: ['V', 'mV'] },
   'line-too-long': { kind: 'line-too-long', ...row, length: 2e6, max: 1e6 },
   'mixed-files': { kind: 'mixed-files', file, what: 'lot', first: 'TB-0417', found: 'TB-0418' },
-  'bad-cell': { kind: 'bad-cell', ...row, column: 'temperature_C', found: 'warm', why: 'it is no number' },
+  'bad-cell': { kind: 'bad-cell', ...row, column: 'temperature_C', found: 'warm', why: 'is not a number' },
   'bad-row': { kind: 'bad-row', ...row, column: 'voltage_V', found: 'open', why: 'it is no number' },
   'doubled-site': { kind: 'doubled-site', ...site, firstLine: 3 },
   'not-json': { kind: 'not-json', file: procedure, why: 'line 3, column 5: a comma or a closing } is missing' },
@@ -51,7 +51,7 @@ describe('explain', () => {
 
   it('says what is wrong, where and what would mend it', () => {
     expect(explain(examples['bad-cell'])).toBe(
-      'TB-0417.csv, line 12, column temperature_C: "warm" was not used: it is no number.',
+      'TB-0417.csv, line 12, column temperature_C: "warm" is not a number; the row was left out.',
     )
     expect(explain(examples['unknown-key'])).toBe(
       'TB-0417.procedure.json, wafer.diametre: A procedure has no such key. Was wafer.diameterMm meant?',
