@@ -4,7 +4,7 @@ import type { NumberColumn } from './column-kinds'
 import type { Layout } from './layout'
 import { REVERSE_BIT } from './read-role'
 
-/** Meters answer 9.9E37 for an overload (SCPI 1999, 7.2.1); no quantity we read comes near this. */
+/** Meters answer 9.9E37 for an overload (SCPI 1999, volume 1, 7.2.1; from memory); no quantity we read comes near this. */
 export const LARGEST = 1e30
 
 export class ReadingCheck {

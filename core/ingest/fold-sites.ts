@@ -53,6 +53,18 @@ export function foldSites(draft: LotDraft, files: readonly RowProblems[], isLong
   }
 }
 
+/** Sites that only we number are counted anew where rows were put together, lest they come out as 1, 3, 5. */
+export function renumberSites({ columns, sites }: LotDraft): void {
+  const counts = new Map<number, number>()
+  for (let row = 0; row < columns.count; row++) {
+    if (!(columns.role[row]! & NUMBERED_BIT)) continue
+    const wafer = columns.wafer[row]!
+    const number = (counts.get(wafer) ?? 0) + 1
+    counts.set(wafer, number)
+    columns.site[row] = sites.ofNumber(number)
+  }
+}
+
 /** Takes the row's current, voltage and V/I to the columns of its part, in the row `to`. */
 function movePart({ columns }: LotDraft, from: number, to: number, part: number): void {
   const move = (source: NumberColumn, target: NumberColumn) => {

@@ -3,7 +3,7 @@ import type { FileProblem, Problem, RowProblem } from '../problems/problem'
 import { decodeText } from './decode-text'
 import { guessDecimalMark } from './dialect'
 import { findHeader } from './find-header'
-import { foldSites } from './fold-sites'
+import { foldSites, renumberSites } from './fold-sites'
 import { namesFromFile } from './labels'
 import { LotDraft } from './lot-draft'
 import type { ReadOptions } from './read-options'
@@ -131,6 +131,7 @@ function settleRows(draft: LotDraft, files: readonly ReadFile[]): void {
     settleSigns(columns, begin, end, reader.problems, dropped, note)
   }
   if (dropped.includes(1)) columns.compact(dropped)
+  if (isLong) renumberSites(draft)
 }
 
 function emptyProblem(draft: LotDraft, { input, reader }: ReadFile, index: number): FileProblem[] {

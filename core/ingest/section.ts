@@ -14,6 +14,8 @@ export class Section {
   time = ''
   private date = ''
   private isOpen = false
+  /** Wafer and slot go together: a block that gives one of them doesn't keep the other of the block before. */
+  private isWaferOfBlock = false
 
   /** Returns false if a temperature was given that can't be read. */
   take(entries: readonly PreambleEntry[]): boolean {
@@ -34,6 +36,7 @@ export class Section {
   /** A new block is about another wafer; what it doesn't repeat of lot and temperature still holds. */
   private open(): void {
     this.isOpen = true
+    this.isWaferOfBlock = false
     this.time = ''
     this.date = ''
   }
@@ -41,10 +44,12 @@ export class Section {
   private takeOne(entry: PreambleEntry): boolean {
     const target = preambleTarget(entry.key)
     if (target === 'lot') this.lot = entry.value
-    if (target === 'wafer') {
-      this.wafer = entry.value
+    if ((target === 'wafer' || target === 'slot') && !this.isWaferOfBlock) {
+      this.wafer = ''
       this.slot = ''
+      this.isWaferOfBlock = true
     }
+    if (target === 'wafer') this.wafer = entry.value
     if (target === 'slot') this.slot = entry.value
     if (target === 'date') this.date = entry.value
     if (target === 'time') this.time = entry.value

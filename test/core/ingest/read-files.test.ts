@@ -135,6 +135,16 @@ describe('what is filled in, and where it comes from', () => {
     expect(readings!.files.map(({ dialect }) => dialect.delimiter)).toEqual([',', ';'])
   })
 
+  it('wafer and slot of one block, in either order, and of the next', () => {
+    const block = (lines: string, value: number) => `${lines}\nsite,Rs\n1,${value}\n`
+    const text = block('Slot: 7\nWafer: A', 90) + block('Slot: 8', 91) + block('Wafer: C', 92)
+    expect(readClean(text).wafers).toEqual([
+      { id: 'A', slot: 7 },
+      { id: '8', slot: 8 },
+      { id: 'C', slot: NaN },
+    ])
+  })
+
   it('a preamble temperature gives way to a column of temperatures', () => {
     expect(list(readClean('temperature: 30\nsite,Rs,temp\n1,90,23\n').temperature_C)).toEqual([23])
     expect(list(readClean('Temp (F): 73.4\nsite,Rs\n1,90\n').temperature_C)![0]).toBeCloseTo(23, 10)
@@ -191,6 +201,12 @@ describe('signs of reverse readings', () => {
     expect(readings!.count).toBe(1)
     expect(readings!.siteNames[readings!.site[0]!]).toBe('2')
     expect(problems).toMatchObject([{ kind: 'bad-row', line: 2 }])
+  })
+
+  it('nameless sites of a long file are put together by place and numbered one by one', () => {
+    const { readings, problems } = readText('x,y,direction,I,V\n0,0,+,1,2\n0,0,-,-1,-2\n5,0,+,1,2\n5,0,-,-1,-2\n')
+    expect(problems).toEqual([])
+    expect([...readings!.site].map((site) => readings!.siteNames[site])).toEqual(['1', '2'])
   })
 
   it('a ready-made V/I of the reverse direction has no place and is listed', () => {
