@@ -12,8 +12,8 @@ const ROOT = join(import.meta.dirname, '..')
 
 /** Inside core a folder imports from itself and from those before it. */
 const CORE_ORDER = [
-  'units', 'problems', 'numeric', 'wafer', 'geometry', 'silicon', 'layer', 'statistics', 'map', 'conformity', 'ingest',
-  'procedure', 'analysis', 'report',
+  'units', 'problems', 'numeric', 'wafer', 'geometry', 'silicon', 'layer', 'conversion', 'statistics', 'map', 'conformity',
+  'ingest', 'procedure', 'analysis', 'report',
 ] as const // prettier-ignore
 
 const CORE_PACKAGES = [

@@ -2,12 +2,11 @@
 import { explain } from '../../core/problems/explain'
 import { CoreError } from '../../core/problems/problem'
 import { analyzeCommand } from './analyze'
+import { CONVERT_USAGE, convertCommand } from './convert'
+import { SITES_USAGE, sitesCommand } from './sites'
 import { PROGRAM, VERSION } from './version'
 
-/** Exit status: 0 analysed and in spec; 1 analysed, but not in spec throughout; 2 could not be analysed. */
-const commands: Record<string, (args: readonly string[]) => Promise<number>> = { analyze: analyzeCommand }
-
-const usage = `usage: persquare analyze FILE... --procedure FILE [--out DIR] [options]
+const ANALYZE_USAGE = `usage: persquare analyze FILE... --procedure FILE [--out DIR] [options]
 
   FILE                 one CSV, or several of the same lot
   --procedure FILE     the procedure (JSON) that says how to correct and judge them
@@ -18,9 +17,26 @@ const usage = `usage: persquare analyze FILE... --procedure FILE [--out DIR] [op
   --json               print result.json instead of the table
   --quiet              print nothing but errors
 
-exit status: 0 analysed and in spec; 1 analysed, something is out of spec, undecided or not assessed; 2 not analysed
+exit status: 0 analysed and in spec; 1 analysed, something is out of spec, undecided or not assessed; 2 not analysed`
 
-persquare --version, persquare --help`
+interface Command {
+  /** Exit status: 0 done, and in spec where something was judged; 1 judged and not in spec throughout; 2 not done. */
+  readonly run: (args: readonly string[]) => Promise<number>
+  /** Its first line stands for it in the list of all commands. */
+  readonly usage: string
+}
+
+const commands: Record<string, Command> = {
+  analyze: { run: analyzeCommand, usage: ANALYZE_USAGE },
+  convert: { run: convertCommand, usage: CONVERT_USAGE },
+  sites: { run: sitesCommand, usage: SITES_USAGE },
+}
+
+const usage = [
+  ...Object.values(commands).map((command) => command.usage.split('\n', 1)[0]),
+  '',
+  'persquare COMMAND --help tells what a command takes; persquare --version',
+].join('\n')
 
 async function main(args: readonly string[]): Promise<number> {
   const [name, ...rest] = args
@@ -34,12 +50,12 @@ async function main(args: readonly string[]): Promise<number> {
   }
   const command = Object.hasOwn(commands, name) ? commands[name] : undefined
   if (!command || rest.includes('--help')) {
-    if (command) console.log(usage)
+    if (command) console.log(command.usage)
     else
       console.error(`persquare: there is no command "${name}". The commands are: ${Object.keys(commands).join(', ')}.`)
     return command ? 0 : 2
   }
-  return command(rest)
+  return command.run(rest)
 }
 
 main(process.argv.slice(2)).then(

@@ -7,15 +7,30 @@ export interface SitePlan {
   readonly y_mm: Float64Array
 }
 
-/** Radius of the outermost sites by method B of SEMI MF1618: half the diameter less the edge exclusion. Throws where nothing is left. */
+/**
+ * Radius of the outermost sites, from the fixed quality area: half the diameter less the edge exclusion.
+ *
+ * Method A of SEMI MF1618, where the diameter of the spot is given: the outermost spots touch the border of that area from
+ * inside. Method B, without: the middles of the outermost sites lie on it.
+ *
+ * @param diameter_mm      of the wafer, 1 to 1000 [mm]
+ * @param edgeExclusion_mm 0 to half the diameter [mm]
+ * @param spot_mm          > 0 [mm]; for a four-point probe of unknown spot the standard takes 1.5 pin spacings
+ * @throws CoreError out-of-range, also where nothing is left
+ */
 export function outerRadius_mm({
   diameter_mm,
   edgeExclusion_mm,
+  spot_mm,
 }: {
   readonly diameter_mm: number
   readonly edgeExclusion_mm: number
+  readonly spot_mm?: number
 }): number {
-  const radius_mm = diameter_mm / 2 - edgeExclusion_mm
+  requireRange('wafer diameter', diameter_mm, 'mm', 1, 1000)
+  requireRange('edge exclusion', edgeExclusion_mm, 'mm', 0, diameter_mm / 2)
+  if (spot_mm !== undefined) requireRange('spot diameter', spot_mm, 'mm', 1e-6, diameter_mm)
+  const radius_mm = diameter_mm / 2 - edgeExclusion_mm - (spot_mm ?? 0) / 2
   requireRange('radius of the outermost sites', radius_mm, 'mm', 1e-3, 1e4)
   return radius_mm
 }
@@ -98,6 +113,33 @@ export function diameterPlan({
   requireRadius(outerRadius_mm)
   const at = (i: number) => polar(outerRadius_mm * ((2 * i) / (count - 1) - 1), angle_deg)
   return asColumns(Array.from({ length: count }, (_, i) => at(i)))
+}
+
+/**
+ * The same sites in polar form, the angle anticlockwise from +x, from 0 to below 360. Both forms are rounded, so that a site on an
+ * axis lies on it and 360 is 0: 1e-6 mm is a nanometre.
+ */
+export function roundedSites({ count, x_mm, y_mm }: SitePlan): SitePlan & PolarColumns {
+  const x = x_mm.map(rounded)
+  const y = y_mm.map(rounded)
+  const angle = (i: number) => rounded((Math.atan2(y[i], x[i]) * 180) / Math.PI)
+  return {
+    count,
+    x_mm: x,
+    y_mm: y,
+    r_mm: x_mm.map((_, i) => rounded(Math.hypot(x_mm[i], y_mm[i]))),
+    theta_deg: x.map((_, i) => (angle(i) < 0 ? rounded(angle(i) + 360) : angle(i))),
+  }
+}
+
+export interface PolarColumns {
+  readonly r_mm: Float64Array
+  readonly theta_deg: Float64Array
+}
+
+/** To 1e-6, without negative zeros. */
+function rounded(value: number): number {
+  return Math.round(value * 1e6) / 1e6 + 0
 }
 
 type Site = readonly [x_mm: number, y_mm: number]
