@@ -16,7 +16,7 @@ import { isUsable } from '../wafer/die-grid'
 import type { Outline } from '../wafer/outline'
 import { correct } from './corrections'
 import { analyzeDies } from './dies'
-import { readingProblems, rejectedRowsOf, flagProblems } from './findings'
+import { flagProblems, readingProblems } from './findings'
 import { SITE_FLAGS } from './flags'
 import { layerResults } from './layer-results'
 import type { DieColumns, LotAnalysis } from './lot-analysis'
@@ -70,7 +70,6 @@ export function analyze({ readings, procedure, defaults, problems, notes }: Anal
 
   const members = waferMembers(readings, flags)
   const dies = analyzeDies(procedure, outline, positions, inReadingOrder(members), sites, limits.site)
-  const rejected = rejectedRowsOf(problems, readings)
   const waferLimits: WaferLimits = {
     site: limits.site,
     mean: limits.waferMean,
@@ -86,7 +85,6 @@ export function analyze({ readings, procedure, defaults, problems, notes }: Anal
       dies: dies && { columns: dies, rows: rowsOfWafer(dies, wafer.index, members.length) },
       limits: waferLimits,
       quantity,
-      rejectedRows: rejected.get(wafer.index) ?? 0,
     }),
   )
   const wafers = judged.map(({ wafer }) => wafer)

@@ -1,5 +1,5 @@
 /** What was wrong with single readings, and what the flags say, as problems. */
-import type { AnalysisProblem, Problem } from '../problems/problem'
+import type { AnalysisProblem } from '../problems/problem'
 import type { Readings } from '../ingest/readings'
 import type { Procedure } from '../procedure/schema'
 import { edgeDistance_mm, type Outline } from '../wafer/outline'
@@ -98,37 +98,4 @@ export function flagProblems(readings: Readings, flags: Uint32Array): AnalysisPr
     const ids = [...wafers].map((wafer) => readings.wafers[wafer].id)
     return { kind: 'flagged-sites' as const, flag: flag.id, count, wafers: ids, sentence: flag.sentence }
   })
-}
-
-/** How many rows each wafer lost: a rejected row is laid to the wafer of the good line nearest to it in the same file. */
-export function rejectedRowsOf(problems: readonly Problem[], readings: Readings): ReadonlyMap<number, number> {
-  const counts = new Map<number, number>()
-  for (const problem of problems) {
-    if (problem.kind !== 'bad-cell' && problem.kind !== 'bad-row' && problem.kind !== 'doubled-site') continue
-    const wafer = waferNearLine(readings, problem.file, problem.line)
-    if (wafer !== null) counts.set(wafer, (counts.get(wafer) ?? 0) + 1)
-  }
-  return counts
-}
-
-/** Readings stand in the order of their files and, within a file, of their lines. */
-function waferNearLine({ files, file, line, wafer, count }: Readings, name: string, wanted: number): number | null {
-  const index = files.findIndex((entry) => entry.name === name)
-  const after = firstRow(count, (i) => file[i] > index || (file[i] === index && line[i] >= wanted))
-  const inFile = [after - 1, after].filter((i) => i >= 0 && i < count && file[i] === index)
-  if (inFile.length === 0) return null
-  const nearest = inFile.reduce((a, b) => (Math.abs(line[b] - wanted) < Math.abs(line[a] - wanted) ? b : a))
-  return wafer[nearest]
-}
-
-/** The first row from which on `holds`, by halving; `count` where none does. */
-function firstRow(count: number, holds: (row: number) => boolean): number {
-  let low = 0
-  let high = count
-  while (low < high) {
-    const middle = (low + high) >> 1
-    if (holds(middle)) high = middle
-    else low = middle + 1
-  }
-  return low
 }

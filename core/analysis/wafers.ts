@@ -49,12 +49,11 @@ export interface WaferToAnalyze {
   readonly dies: { readonly columns: DieColumns; readonly rows: Uint32Array } | null
   readonly limits: WaferLimits
   readonly quantity: Quantity
-  readonly rejectedRows: number
 }
 
 export function analyzeWafer(wafer: WaferToAnalyze): { wafer: WaferAnalysis; judgement: WaferJudgement } {
   const { members, sites, positions, limits, quantity, readings } = wafer
-  const { id, slot } = readings.wafers[members.index]
+  const { id, slot, rejectedRows } = readings.wafers[members.index]
   const statistics = summarize(sites.value, members.counting)
   const judgement = judgeWafer({ id, statistics, limits, unit: quantity.unit, findings: findingsOf(wafer) })
   const meanOf = (column: Float64Array): number => finiteMean(column, members.counting)
@@ -75,7 +74,7 @@ export function analyzeWafer(wafer: WaferToAnalyze): { wafer: WaferAnalysis; jud
       },
       sitesOut: judgement.findings.counts['out-of-spec'],
       sitesNotAssessed: members.sites.length - members.counting.length,
-      rejectedRows: wafer.rejectedRows,
+      rejectedRows,
       dieCounts: wafer.dies && countVerdicts(wafer.dies.columns.verdict, wafer.dies.rows),
       verdict: judgement.verdict,
       reasons: judgement.reasons,

@@ -2,6 +2,9 @@
 
 import type { NumberColumn } from './column-kinds'
 
+/** Why a row is dropped after reading: its parts stand in another row of the same site, or it is listed as a problem. */
+export const DROPPED = { folded: 1, rejected: 2 } as const
+
 export class GrowingColumns {
   count = 0
   wafer = new Uint32Array(0)

@@ -2,6 +2,7 @@
  * One reading a site. Rows of a long file that hold the parts of one site (A and B, forward and reverse) become one
  * row; a part that is there already is a doubled site: the first is kept, the later is left out and listed.
  */
+import { DROPPED } from './columns'
 import type { NumberColumn } from './column-kinds'
 import type { LotDraft } from './lot-draft'
 import { B_BIT, NUMBERED_BIT, REVERSE_BIT } from './read-role'
@@ -37,9 +38,9 @@ export function foldSites(draft: LotDraft, files: readonly RowProblems[], isLong
     } else if (parts && !(parts[first]! & (1 << part))) {
       parts[first] = parts[first]! | (1 << part)
       movePart(draft, row, first, part)
-      dropped[row] = 1
+      dropped[row] = DROPPED.folded
     } else {
-      dropped[row] = 1
+      dropped[row] = DROPPED.rejected
       const problems = files[columns.file[row]!]!
       problems.add({
         kind: 'doubled-site',

@@ -49,7 +49,7 @@ function plainNumber(cell: string): number {
 }
 
 export class WaferLabels {
-  readonly labels: { id: string; slot: number }[] = []
+  readonly labels: { id: string; slot: number; rejectedRows: number }[] = []
   private readonly byId = new Map<string, number>()
   /** For sites that the file doesn't name: how many each wafer has. */
   private readonly siteCounts: number[] = []
@@ -62,7 +62,7 @@ export class WaferLabels {
       if (slot !== '' && !Number.isNaN(number)) this.labels[known]!.slot = number
       return known
     }
-    const index = this.labels.push({ id, slot: number }) - 1
+    const index = this.labels.push({ id, slot: number, rejectedRows: 0 }) - 1
     this.byId.set(id, index)
     this.siteCounts.push(0)
     return index
@@ -72,7 +72,14 @@ export class WaferLabels {
     return (this.siteCounts[wafer] = this.siteCounts[wafer]! + 1)
   }
 
-  /** The wafers that have rows, in order of first appearance; `column` is rewritten to their new indices. */
+  reject(wafer: number): void {
+    this.labels[wafer].rejectedRows++
+  }
+
+  /**
+   * The wafers that have rows, in order of first appearance, then those of which every row was rejected: a wafer that
+   * can't be judged must not vanish. `column` is rewritten to their new indices.
+   */
   used(column: Uint32Array, count: number): WaferLabel[] {
     const newIndex = new Int32Array(this.labels.length).fill(-1)
     const used: WaferLabel[] = []
@@ -81,7 +88,8 @@ export class WaferLabels {
       if (newIndex[old]! < 0) newIndex[old] = used.push(this.labels[old]!) - 1
       column[row] = newIndex[old]!
     }
-    return used
+    const lost = this.labels.filter(({ rejectedRows }, index) => newIndex[index] < 0 && rejectedRows > 0)
+    return [...used, ...lost]
   }
 }
 

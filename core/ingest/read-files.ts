@@ -1,4 +1,5 @@
 /** From the bytes of a prober's files to one lot of readings. Nothing here throws for a bad file: what is wrong is data. */
+import { DROPPED } from './columns'
 import type { FileProblem, Problem, RowProblem } from '../problems/problem'
 import { decodeText } from './decode-text'
 import { guessDecimalMark } from './dialect'
@@ -130,7 +131,10 @@ function settleRows(draft: LotDraft, files: readonly ReadFile[]): void {
     const note = (sentence: string) => draft.notes.add(`${input.name}: ${sentence}`)
     settleSigns(columns, begin, end, reader.problems, dropped, note)
   }
-  if (dropped.includes(1)) columns.compact(dropped)
+  dropped.forEach((why, row) => {
+    if (why === DROPPED.rejected) draft.wafers.reject(columns.wafer[row])
+  })
+  if (dropped.some((why) => why !== 0)) columns.compact(dropped)
   if (isLong) renumberSites(draft)
 }
 

@@ -49,6 +49,8 @@ export interface WaferLabel {
   readonly id: string
   /** NaN where no slot is given and the wafer's name is no plain number. */
   readonly slot: number
+  /** Rows of this wafer that could not be used; a wafer may have no others. */
+  readonly rejectedRows: number
 }
 
 export interface SourceFile {

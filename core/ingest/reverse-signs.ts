@@ -3,7 +3,7 @@
  * over all its rows: currents may be given as magnitudes, or not given again at all.
  */
 import type { NumberColumn } from './column-kinds'
-import type { GrowingColumns } from './columns'
+import { DROPPED, type GrowingColumns } from './columns'
 import { B_BIT, REVERSE_BIT } from './read-role'
 import type { RowProblems } from './row-problems'
 
@@ -137,7 +137,7 @@ function refuseOpposites(
     const i = rows.i[row]!
     const v = rows.v[row]!
     if ((i > 0 && v > 0) || (i < 0 && v < 0)) return
-    dropped[row] = 1
+    dropped[row] = DROPPED.rejected
     const found = `${v} V, ${i} A`
     problems.row(columns.line[row]!, side.voltage, found, `${side.title} voltage and current give no positive V/I`)
   })
@@ -166,7 +166,7 @@ function dropPartsWithoutForward(
     if (dropped[row]) continue
     const isOrphan = (has(pairs[0], row) && !has(pairs[1], row)) || (has(pairs[2], row) && !has(pairs[3], row))
     if (has(forward, row) && !isOrphan) continue
-    dropped[row] = 1
+    dropped[row] = DROPPED.rejected
     problems.row(
       columns.line[row]!,
       '',

@@ -284,7 +284,9 @@ export class RowReader {
       return this.reject(line, cells, `has ${count} ${count === 1 ? 'field' : 'fields'} where the header has ${width}`)
     }
     this.rows++
-    if (at.site < 0 && this.waferOf(cells) >= 0) this.draft.wafers.nextSite(this.waferOf(cells))
+    const wafer = this.waferOf(cells)
+    if (wafer >= 0) this.draft.wafers.reject(wafer)
+    if (wafer >= 0 && at.site < 0) this.draft.wafers.nextSite(wafer)
     const bad = numbers.find((cell) => !this.isNumberCell(cells, cell))
     if (bad) return this.problems.cell(line, bad.header, cells[bad.at]!, this.explainCell(cells[bad.at]!))
     if (this.layout!.isLong && readRole(cells, at) < 0) {
@@ -322,8 +324,10 @@ export class RowReader {
     return value === value ? 'is too large: an overload mark of the meter' : explainNumber(cell, this.decimalMark)
   }
 
+  /** A row too broken to say which wafer it belongs to is laid to the one before it. */
   private reject(line: number, cells: readonly string[], why: string): void {
     this.rows++
+    if (this.lastWafer >= 0) this.draft.wafers.reject(this.lastWafer)
     this.problems.row(line, '', cells.join(this.delimiter), why)
   }
 

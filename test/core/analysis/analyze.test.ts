@@ -262,3 +262,18 @@ describe('what cannot be judged', () => {
     })
   })
 })
+
+describe('a wafer without a usable row', () => {
+  const csv = 'wafer,site,v_over_i_ohm\n1,1,20\n1,2,20.1\n2,1,---\n2,2,---\n3,1,20\n3,2,bad\n3,3,20\n'
+  const lot = analyzeText(csv, { limits: { sheetResistanceOhmSq: { lower: 80, upper: 100 } } })
+
+  it('stays in the lot, is not assessed, and leaves the lot undecided', () => {
+    expect(lot.wafers.map(({ id, verdict, rejectedRows }) => ({ id, verdict, rejectedRows }))).toEqual([
+      { id: '1', verdict: 'in-spec', rejectedRows: 0 },
+      { id: '2', verdict: 'not-assessed', rejectedRows: 2 },
+      { id: '3', verdict: 'in-spec', rejectedRows: 1 },
+    ])
+    expect(lot.lot.verdict).toBe('undecided')
+    expect(lot.lot.sentence).toMatch(/wafer 2 has no usable reading/)
+  })
+})

@@ -51,7 +51,7 @@ describe('preambles', () => {
   ])('%j', (preamble) => {
     const readings = readClean(`${preamble}\nsite,x,y,Rs\n1,0,0,92\n`)
     expect(readings.lot).toBe('TB-0417')
-    expect(readings.wafers).toEqual([{ id: '4', slot: 4 }])
+    expect(readings.wafers).toMatchObject([{ id: '4', slot: 4 }])
   })
 
   it('a wafer line among the rows holds for the rows under it', () => {

@@ -6,7 +6,7 @@ describe('files as they come', () => {
   it('two wafers in one file, each with its preamble and header; statistics and end mark are listed', () => {
     const { readings, problems, notes } = readReadings([fixture('two-wafer-blocks.csv')])
     expect(readings!.lot).toBe('TB-0417')
-    expect(readings!.wafers).toEqual([
+    expect(readings!.wafers).toMatchObject([
       { id: '4', slot: 7 },
       { id: '5', slot: 5 },
     ])
@@ -47,7 +47,7 @@ describe('files as they come', () => {
   it('semicolons, decimal commas, Latin-1, CRLF, trailing delimiters; thousands separators are refused', () => {
     const { readings, problems } = readReadings([fixture('semicolon-decimal-comma.csv')])
     expect(readings!.files[0]!.dialect).toEqual({ encoding: 'Windows-1252', delimiter: ';', decimalMark: ',' })
-    expect(readings!.wafers).toEqual([{ id: '3', slot: 3 }])
+    expect(readings!.wafers).toMatchObject([{ id: '3', slot: 3 }])
     expect(list(readings!.voltage_V)).toEqual([0.003512, 0.003498])
     expect(list(readings!.current_A)).toEqual([1e-4, 1e-4])
     expect(list(readings!.y_mm)).toEqual([0, -40.25])
@@ -108,7 +108,7 @@ describe('files as they come', () => {
 
 describe('what is filled in, and where it comes from', () => {
   it('wafer from the slot column, from the file name; lot from the file name', () => {
-    expect(readClean('slot,site,Rs\n3,1,92\n').wafers).toEqual([{ id: '3', slot: 3 }])
+    expect(readClean('slot,site,Rs\n3,1,92\n').wafers).toMatchObject([{ id: '3', slot: 3 }])
     const { readings, notes } = readReadings([
       textFile('site,Rs\n1,92\n', 'TB-0417_W05.csv'),
       textFile('site,Rs\n1,93\n', 'TB-0417_W06.csv'),
@@ -138,7 +138,7 @@ describe('what is filled in, and where it comes from', () => {
   it('wafer and slot of one block, in either order, and of the next', () => {
     const block = (lines: string, value: number) => `${lines}\nsite,Rs\n1,${value}\n`
     const text = block('Slot: 7\nWafer: A', 90) + block('Slot: 8', 91) + block('Wafer: C', 92)
-    expect(readClean(text).wafers).toEqual([
+    expect(readClean(text).wafers).toMatchObject([
       { id: 'A', slot: 7 },
       { id: '8', slot: 8 },
       { id: 'C', slot: NaN },

@@ -107,7 +107,7 @@ describe('whole files', () => {
       textFile('wafer,site,Rs\n2,1,91\n', 'b.csv'),
     ])
     expect(problems.map(({ kind }) => kind)).toEqual(['ambiguous-column'])
-    expect(readings!.wafers).toEqual([{ id: '2', slot: 2 }])
+    expect(readings!.wafers).toMatchObject([{ id: '2', slot: 2 }])
     expect([...readings!.sheetResistance_ohm_sq!]).toEqual([91])
   })
 })
