@@ -1,6 +1,6 @@
 /** What was assumed, taken from where, or left undone, each as a sentence that the report prints. */
 import type { Readings } from '../ingest/readings'
-import type { Procedure } from '../procedure/schema'
+import { UNCERTAINTY_COMPONENTS, type Procedure } from '../procedure/schema'
 import { layerMobility } from './prepare-layer'
 import { CELSIUS_ZERO_K } from '../units/constants'
 import type { Corrections } from './corrections'
@@ -24,6 +24,7 @@ export function analysisNotes(input: NotesInput): string[] {
     ...placeNotes(input),
     ...(input.corrections.reported && allReported(input) ? [] : [input.corrections.temperature.note]),
     ...modelNotes(input),
+    ...uncertaintyNotes(input),
   ]
 }
 
@@ -79,4 +80,11 @@ function modelNotes({ procedure }: NotesInput): string[] {
     )
   }
   return notes
+}
+
+function uncertaintyNotes({ procedure: { uncertainty } }: NotesInput): string[] {
+  if (UNCERTAINTY_COMPONENTS.some((component) => uncertainty[component] > 0)) return []
+  return [
+    'The procedure gives no uncertainties: every result counts as exact, and probabilities to conform are 0 or 1.',
+  ]
 }

@@ -3,6 +3,7 @@ import { decodeText } from '../ingest/decode-text'
 import { readReadings, type InputFile } from '../ingest/read-files'
 import { CoreError, type Problem } from '../problems/problem'
 import { parseProcedure } from '../procedure/parse-procedure'
+import { PROCEDURE_FORMAT } from '../procedure/schema'
 import { analyze } from './analyze'
 import type { LotAnalysis } from './lot-analysis'
 
@@ -33,13 +34,17 @@ export function run({ readings: files, procedure: { name, bytes } }: RunInput): 
       procedure: parsed.procedure,
       defaults: parsed.defaults,
       problems: read.problems,
-      notes: read.notes,
+      notes: [...migrationNotes(parsed.migratedFrom, name), ...read.notes],
     })
     return { analysis, problems: analysis.problems }
   } catch (error) {
     if (!(error instanceof CoreError)) throw error
     return { analysis: null, problems: [...read.problems, namingFile(error.problem, name)] }
   }
+}
+
+function migrationNotes(from: string | null, file: string): readonly string[] {
+  return from === null ? [] : [`${file}: written in the older edition ${from} and read as ${PROCEDURE_FORMAT}`]
 }
 
 /** The pipeline knows no file names; a key that turned out to be missing is missed in the procedure's file. */

@@ -36,7 +36,7 @@ export function fillConformanceProbability(
   out: Float64Array,
 ): Float64Array {
   requireOrder(limits)
-  for (let i = 0; i < value.length; i++) out[i] = probability(value[i]!, u[i]!, limits)
+  for (let i = 0; i < value.length; i++) out[i] = probability(value[i], u[i], limits)
   return out
 }
 

@@ -20,7 +20,7 @@ export function fillVerdicts(value: Float64Array, limits: Limits | undefined, ou
   if (!hasLimits(limits)) return out.fill(notAssessed, 0, value.length)
   const { lower = -Infinity, upper = Infinity } = limits
   for (let i = 0; i < value.length; i++) {
-    const v = value[i]!
+    const v = value[i]
     out[i] = v >= lower && v <= upper ? inSpec : v < lower || v > upper ? outOfSpec : notAssessed
   }
   return out
@@ -51,7 +51,7 @@ export function siteFindings({ value, verdict, x_mm, y_mm, sites, limits }: Judg
   let above = 0
   let below = 0
   for (const site of sites) {
-    const side = limits ? sideOf(value[site]!, limits) : null
+    const side = limits ? sideOf(value[site], limits) : null
     if (side === 'above') above++
     if (side === 'below') below++
   }
@@ -71,7 +71,7 @@ function isOutOnlyAtEdge({
   let innermostOut = Infinity
   let innermostIn = Infinity
   for (const site of sites) {
-    const radius = Math.hypot(x_mm[site]!, y_mm[site]!)
+    const radius = Math.hypot(x_mm[site], y_mm[site])
     largest = Math.max(largest, radius)
     if (verdict[site] === outOfSpec) innermostOut = Math.min(innermostOut, radius)
     if (verdict[site] === inSpec) innermostIn = Math.min(innermostIn, radius)

@@ -30,7 +30,7 @@ export function lotSentence({ lot, verdict, wafers, statistics, unit }: LotToTel
     case 'undecided':
       return `${lot} is undecided: ${trouble(wafers, unit)}.`
     case 'in-spec': {
-      const all = wafers.length === 1 ? waferName(wafers[0]!.id) : `all ${wafers.length} wafers`
+      const all = wafers.length === 1 ? waferName(wafers[0].id) : `all ${wafers.length} wafers`
       return `${lot} is in spec: ${all}${mean && `, ${mean}`}.`
     }
     case 'not-assessed': {
@@ -78,6 +78,7 @@ function whatIsWrong({ deciding, findings, statistics, limits }: WaferJudgement)
   const first = deciding[0]?.about
   if (first === 'sites') {
     const sides = findings.below === 0 ? 'high' : findings.above === 0 ? 'low' : 'both high and low'
+    if (findings.above + findings.below === 1) return `has one ${sides} site`
     return `reads ${sides}${findings.outOnlyAtEdge ? ' at the edge' : ''}`
   }
   if (first === 'mean') return `has a ${sideOf(statistics.mean, limits.mean!) === 'above' ? 'high' : 'low'} mean`

@@ -15,11 +15,11 @@ export type VerdictCounts = Readonly<Record<Verdict, number>>
 export function countVerdicts(codes: Uint8Array, indices?: Uint32Array): VerdictCounts {
   const counts = [0, 0, 0, 0]
   const count = indices ? indices.length : codes.length
-  for (let i = 0; i < count; i++) counts[codes[indices ? indices[i]! : i]!]!++
+  for (let i = 0; i < count; i++) counts[codes[indices ? indices[i] : i]]!++
   return {
-    'in-spec': counts[0]!,
-    'out-of-spec': counts[1]!,
-    undecided: counts[2]!,
-    'not-assessed': counts[3]!,
+    'in-spec': counts[0],
+    'out-of-spec': counts[1],
+    undecided: counts[2],
+    'not-assessed': counts[3],
   }
 }

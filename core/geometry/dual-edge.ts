@@ -46,7 +46,7 @@ export function dualEdgeError({
   spacings_mm,
 }: Placement & { readonly outline: Outline }): number {
   const site = { x_mm: Float64Array.of(x_mm), y_mm: Float64Array.of(y_mm) }
-  const error = dualEdgeErrors({ outline, orientation, spacings_mm, ...site })[0]!
+  const error = dualEdgeErrors({ outline, orientation, spacings_mm, ...site })[0]
   if (Number.isNaN(error)) {
     throw new CoreError({ kind: 'not-applicable', what: 'dual relation', why: 'a pin is off the outline' })
   }

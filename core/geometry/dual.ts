@@ -71,8 +71,8 @@ export function dualSheetResistances(resistances: {
   const column = () => new Float64Array(length).fill(NaN)
   const columns = { sheetResistance_ohm_sq: column(), dLnA: column(), dLnB: column() }
   for (let site = 0; site < length; site++) {
-    const a = resistanceA_ohm[site]!
-    const b = resistanceB_ohm[site]!
+    const a = resistanceA_ohm[site]
+    const b = resistanceB_ohm[site]
     if (!(b > 0 && a >= DUAL_RATIO.min * b && a <= DUAL_RATIO.max * b)) continue
     const rs = solveDual(a, b)
     const dLnB = sensitivityToB(a, b, rs)

@@ -70,10 +70,10 @@ export function fourTerminalGradient(terminals: Terminals, logDistance: LogDista
 
 function addPair(i: number, j: number, sign: number, logDistance: LogDistance, pins: PinColumns): number {
   const { x, y, gx, gy, pair } = pins
-  logDistance(x[i]!, y[i]!, x[j]!, y[j]!, pair)
-  gx[i] = gx[i]! + sign * pair[1]!
-  gy[i] = gy[i]! + sign * pair[2]!
-  gx[j] = gx[j]! + sign * pair[3]!
-  gy[j] = gy[j]! + sign * pair[4]!
-  return sign * pair[0]!
+  logDistance(x[i], y[i], x[j], y[j], pair)
+  gx[i] = gx[i] + sign * pair[1]
+  gy[i] = gy[i] + sign * pair[2]
+  gx[j] = gx[j] + sign * pair[3]
+  gy[j] = gy[j] + sign * pair[4]
+  return sign * pair[0]
 }

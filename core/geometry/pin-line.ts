@@ -55,7 +55,7 @@ export function pinPositions({ x_mm, y_mm, orientation, spacings_mm }: Placement
   const direction = new Float64Array(2)
   writeDirection(orientation, x_mm, y_mm, direction)
   return Array.from(pinOffsets_mm(spacings_mm), (offset) => ({
-    x_mm: x_mm + offset * direction[0]!,
-    y_mm: y_mm + offset * direction[1]!,
+    x_mm: x_mm + offset * direction[0],
+    y_mm: y_mm + offset * direction[1],
   }))
 }

@@ -34,13 +34,13 @@ export function pinPlacer(sites: ProbeSites, pins: PinColumns, direction: Float6
   const fixed = typeof orientation === 'object'
   writeDirection(orientation, 0, 0, direction)
   return (site) => {
-    const x = x_mm[site]!
-    const y = y_mm[site]!
+    const x = x_mm[site]
+    const y = y_mm[site]
     if (!fixed) writeDirection(orientation, x, y, direction)
     for (let pin = 0; pin < 4; pin++) {
-      pins.x[pin] = x + offsets[pin]! * direction[0]!
-      pins.y[pin] = y + offsets[pin]! * direction[1]!
+      pins.x[pin] = x + offsets[pin] * direction[0]
+      pins.y[pin] = y + offsets[pin] * direction[1]
     }
-    return Math.min(edgeDistance_mm(outline, pins.x[0]!, pins.y[0]!), edgeDistance_mm(outline, pins.x[3]!, pins.y[3]!))
+    return Math.min(edgeDistance_mm(outline, pins.x[0], pins.y[0]), edgeDistance_mm(outline, pins.x[3], pins.y[3]))
   }
 }

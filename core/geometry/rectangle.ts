@@ -34,8 +34,8 @@ export const rectangle = {
 } as const satisfies OutlineGeometry<'rectangle'>
 
 function swap(out: Float64Array, m: number, n: number): void {
-  const kept = out[m]!
-  out[m] = out[n]!
+  const kept = out[m]
+  out[m] = out[n]
   out[n] = kept
 }
 
@@ -62,14 +62,14 @@ function uprightLogDistance(a: number, b: number): LogDistance {
       if (dy > b) dy -= 2 * b
       const Y = scale * Math.abs(dy)
       multiplyFactors(scale * dx, Y, q2, pairs, aspect, lattice)
-      product *= lattice[0]!
+      product *= lattice[0]
       linear += Y * (1 - Y / (Math.PI * aspect))
-      const gx = scale * lattice[1]!
-      const gy = scale * Math.sign(dy) * (1 - (2 * Y) / (Math.PI * aspect) + lattice[2]!)
-      out[1] = out[1]! + gx
-      out[2] = out[2]! + gy
-      out[3] = out[3]! + signX * gx
-      out[4] = out[4]! + signY * gy
+      const gx = scale * lattice[1]
+      const gy = scale * Math.sign(dy) * (1 - (2 * Y) / (Math.PI * aspect) + lattice[2])
+      out[1] = out[1] + gx
+      out[2] = out[2] + gy
+      out[3] = out[3] + signX * gx
+      out[4] = out[4] + signY * gy
     }
     out[0] = linear + 0.5 * Math.log(product)
   }

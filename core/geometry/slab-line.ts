@@ -16,7 +16,7 @@ export interface SlabLine {
 export function slabLine(spacings: PinSpacings, thickness: number, back: Back, configuration: Configuration): SlabLine {
   const offsets = pinOffsets_mm(spacings)
   const terminals = TERMINALS[configuration]
-  const distance = (i: number, j: number) => Math.abs(offsets[i]! - offsets[j]!)
+  const distance = (i: number, j: number) => Math.abs(offsets[i] - offsets[j])
   const thin = fourTerminalSum(terminals, (i, j) => Math.log(distance(i, j)))
   const excess = fourTerminalSum(terminals, (i, j) => slabTerm(distance(i, j) / thickness, back).value)
   const slope = -fourTerminalSum(terminals, (i, j) => slabTerm(distance(i, j) / thickness, back).slope)

@@ -101,8 +101,8 @@ function powerTerm(ratio: number, { thinShare: share, constant, powers }: SlabSe
   let power = 1
   for (let k = 1; k <= POWERS; k++) {
     power *= square
-    value += powers[k - 1]! * power
-    slope += 2 * k * powers[k - 1]! * power
+    value += powers[k - 1] * power
+    slope += 2 * k * powers[k - 1] * power
   }
   return {
     value: constant - 1 / ratio - share * Math.log(ratio) + value,

@@ -85,19 +85,19 @@ function writeDerivatives(
   size_mm: number,
   columns: ThinSheetColumns,
 ): void {
-  const ux = direction[0]!
-  const uy = direction[1]!
-  const g1 = gx[0]! * ux + gy[0]! * uy
-  const g2 = gx[1]! * ux + gy[1]! * uy
-  const g3 = gx[2]! * ux + gy[2]! * uy
-  const g4 = gx[3]! * ux + gy[3]! * uy
+  const ux = direction[0]
+  const uy = direction[1]
+  const g1 = gx[0] * ux + gy[0] * uy
+  const g2 = gx[1] * ux + gy[1] * uy
+  const g3 = gx[2] * ux + gy[2] * uy
+  const g4 = gx[3] * ux + gy[3] * uy
   const toLnC = -1 / sum
   // A longer spacing moves the pins before it by -1/2 and those after it by +1/2.
   const d1 = 0.5 * toLnC * (-g1 + g2 + g3 + g4)
   const d2 = 0.5 * toLnC * (-g1 - g2 + g3 + g4)
   const d3 = 0.5 * toLnC * (-g1 - g2 - g3 + g4)
-  const dx = toLnC * (gx[0]! + gx[1]! + gx[2]! + gx[3]!)
-  const dy = toLnC * (gy[0]! + gy[1]! + gy[2]! + gy[3]!)
+  const dx = toLnC * (gx[0] + gx[1] + gx[2] + gx[3])
+  const dy = toLnC * (gy[0] + gy[1] + gy[2] + gy[3])
   columns.dSpacing1_per_mm[site] = d1
   columns.dSpacing2_per_mm[site] = d2
   columns.dSpacing3_per_mm[site] = d3
@@ -105,8 +105,7 @@ function writeDerivatives(
   columns.dY_per_mm[site] = dy
   // Euler: all lengths grown alike leave C as it is.
   const [s1, s2, s3] = sites.spacings_mm
-  columns.dSize_per_mm[site] =
-    -(s1 * d1 + s2 * d2 + s3 * d3 + sites.x_mm[site]! * dx + sites.y_mm[site]! * dy) / size_mm
+  columns.dSize_per_mm[site] = -(s1 * d1 + s2 * d2 + s3 * d3 + sites.x_mm[site] * dx + sites.y_mm[site] * dy) / size_mm
 }
 
 /**
@@ -126,7 +125,7 @@ export function thinSheetFactor({
 } {
   const site = { x_mm: Float64Array.of(x_mm), y_mm: Float64Array.of(y_mm) }
   const columns = thinSheetFactors({ outline, configuration, orientation, spacings_mm, ...site })
-  const value = columns.factor[0]!
+  const value = columns.factor[0]
   if (Number.isNaN(value)) {
     throw new CoreError({ kind: 'not-applicable', what: 'geometry factor', why: 'a pin is off the outline' })
   }

@@ -38,11 +38,11 @@ export class ReadingCheck {
   isGood(row: number, role: number): boolean {
     const isReverse = (role & REVERSE_BIT) !== 0
     const { x, y, current, voltage } = this
-    if (x !== null && y !== null && !(Math.abs(x[row]!) < LARGEST && Math.abs(y[row]!) < LARGEST)) return false
+    if (x !== null && y !== null && !(Math.abs(x[row]) < LARGEST && Math.abs(y[row]) < LARGEST)) return false
     let found = false
     if (current !== null && voltage !== null) {
-      const i = current[row]!
-      const v = voltage[row]!
+      const i = current[row]
+      const v = voltage[row]
       if (i === i || v === v) {
         if (!(isReverse ? i * v !== 0 && i === i && v === v : (i > 0 && v > 0) || (i < 0 && v < 0))) return false
         found = true
@@ -50,20 +50,20 @@ export class ReadingCheck {
     }
     if (role !== 0 && !found && !this.hasPlaceFor(row, isReverse)) return false
     for (const column of this.ready) {
-      const value = column[row]!
+      const value = column[row]
       if (value <= 0) return false
       if (value === value) found = true
     }
     for (const [i, v] of this.pairs) {
-      const hasVoltage = v[row]! === v[row]!
-      if (hasVoltage && !(i[row]! !== 0 && i[row]! === i[row]! && v[row]! !== 0)) return false
+      const hasVoltage = v[row] === v[row]
+      if (hasVoltage && !(i[row] !== 0 && i[row] === i[row] && v[row] !== 0)) return false
     }
     return found
   }
 
   /** A value ready made: `Readings` has a place for a V/I of configuration B, and none for the reverse direction. */
   private hasPlaceFor(row: number, isReverse: boolean): boolean {
-    return !isReverse && this.vOverI !== null && this.vOverI[row]! === this.vOverI[row]!
+    return !isReverse && this.vOverI !== null && this.vOverI[row] === this.vOverI[row]
   }
 
   /** The column at fault and why, for a row that isn't good. */
@@ -72,7 +72,7 @@ export class ReadingCheck {
     columns: GrowingColumns,
     role: number,
   ): { readonly column: NumberColumn; readonly why: string; readonly isCell: boolean } {
-    const value = (name: NumberColumn) => (has(this.layout, name) ? columns.number(name)[row]! : NaN)
+    const value = (name: NumberColumn) => (has(this.layout, name) ? columns.number(name)[row] : NaN)
     const cell = (column: NumberColumn, why: string) => ({ column, why, isCell: true })
     if (this.x && Number.isNaN(value('x_mm'))) return cell('x_mm', 'is empty')
     if (this.y && Number.isNaN(value('y_mm'))) return cell('y_mm', 'is empty')

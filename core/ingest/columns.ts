@@ -56,7 +56,7 @@ export class GrowingColumns {
     let kept = 0
     for (let row = 0; row < this.count; row++) {
       if (dropped[row]) continue
-      if (kept !== row) for (const array of arrays) array[kept] = array[row]!
+      if (kept !== row) for (const array of arrays) array[kept] = array[row]
       kept++
     }
     this.count = kept

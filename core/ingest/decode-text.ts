@@ -44,7 +44,7 @@ function utf16(bytes: Uint8Array, isLittle: boolean, encoding: string): DecodedT
   const low = isLittle ? 0 : 1
   let controls = 0
   for (let at = 0; at < units.length; at++) {
-    const unit = bytes[2 * at + low]! | (bytes[2 * at + 1 - low]! << 8)
+    const unit = bytes[2 * at + low] | (bytes[2 * at + 1 - low] << 8)
     if (unit < 9 || (unit > 13 && unit < 26)) controls++
     units[at] = unit
   }
@@ -53,7 +53,7 @@ function utf16(bytes: Uint8Array, isLittle: boolean, encoding: string): DecodedT
 }
 
 function isAscii(bytes: Uint8Array): boolean {
-  for (let at = 0; at < bytes.length; at++) if (bytes[at]! > 127) return false
+  for (let at = 0; at < bytes.length; at++) if (bytes[at] > 127) return false
   return true
 }
 
@@ -65,7 +65,7 @@ function fromUnits(units: Uint8Array | Uint16Array): string {
   for (let begin = 0; begin < units.length; begin += PIECE) {
     const size = Math.min(PIECE, units.length - begin)
     if (size < PIECE) piece.length = size
-    for (let at = 0; at < size; at++) piece[at] = units[begin + at]!
+    for (let at = 0; at < size; at++) piece[at] = units[begin + at]
     text += String.fromCharCode.apply(null, piece)
   }
   return text
@@ -76,7 +76,7 @@ function utf8(bytes: Uint8Array): string | null {
   const units = new Uint16Array(bytes.length)
   let length = 0
   for (let at = 0; at < bytes.length;) {
-    const lead = bytes[at]!
+    const lead = bytes[at]
     if (lead < 0x80) {
       units[length++] = lead
       at++
@@ -86,7 +86,7 @@ function utf8(bytes: Uint8Array): string | null {
     if (lead < 0xc2 || lead > 0xf4 || at + size > bytes.length) return null
     let point = lead & (0xff >> (size + 1))
     for (let k = 1; k < size; k++) {
-      const next = bytes[at + k]!
+      const next = bytes[at + k]
       if ((next & 0xc0) !== 0x80) return null
       point = (point << 6) | (next & 0x3f)
     }
@@ -111,7 +111,7 @@ const WINDOWS_1252 =
 function windows1252(bytes: Uint8Array): string {
   const units = new Uint16Array(bytes.length)
   for (let at = 0; at < bytes.length; at++) {
-    const byte = bytes[at]!
+    const byte = bytes[at]
     units[at] = byte >= 0x80 && byte <= 0x9f ? WINDOWS_1252.charCodeAt(byte - 0x80) : byte
   }
   return fromUnits(units)

@@ -37,7 +37,7 @@ function searchRows(rows: Rows, options: ReadOptions): { row: number; rank: numb
   let unnamed: { row: number; rank: number } | null = null
   const end = Math.min(rows.cells.length, SEARCH_ROWS)
   for (let row = 0; row < end; row++) {
-    const cells = rows.cells[row]!
+    const cells = rows.cells[row]
     if (!isWordRow(cells) || isUnsplit(cells)) continue
     const strength = headerStrength(trimmed(cells), options)
     const next = nextFilled(rows, row)
@@ -52,7 +52,7 @@ function searchRows(rows: Rows, options: ReadOptions): { row: number; rank: numb
 
 /** One cell with another delimiter in it: the row is not split as it should be, and "1,92" under it is no 1.92. */
 function isUnsplit(cells: readonly string[]): boolean {
-  return widthOf(cells) === 1 && /[,;\t]/.test(cells[0]!.trim())
+  return widthOf(cells) === 1 && /[,;\t]/.test(cells[0].trim())
 }
 
 export function trimmed(cells: readonly string[]): string[] {
@@ -76,13 +76,13 @@ export function isUnitsRow(cells: readonly string[]): boolean {
 /** Without the empty cells at the end. */
 export function widthOf(cells: readonly string[]): number {
   let width = cells.length
-  while (width > 0 && isBlank(cells[width - 1]!)) width--
+  while (width > 0 && isBlank(cells[width - 1])) width--
   return width
 }
 
 function nextFilled(rows: Rows, row: number): readonly string[] | null {
   for (let next = row + 1; next < Math.min(rows.cells.length, row + 10); next++) {
-    const cells = rows.cells[next]!
+    const cells = rows.cells[next]
     if (!cells.every(isBlank) && !isUnitsRow(cells)) return cells
   }
   return null

@@ -28,27 +28,27 @@ export function foldSites(draft: LotDraft, files: readonly RowProblems[], isLong
   const parts = isLong ? new Uint8Array(columns.count) : null
   for (let row = 0; row < columns.count; row++) {
     const first = finder.find(row)
-    const part = columns.role[row]! & (REVERSE_BIT | B_BIT)
+    const part = columns.role[row] & (REVERSE_BIT | B_BIT)
     if (first < 0) {
       finder.insert(row)
       if (parts) {
         parts[row] = 1 << part
         if (part !== 0) movePart(draft, row, row, part)
       }
-    } else if (parts && !(parts[first]! & (1 << part))) {
-      parts[first] = parts[first]! | (1 << part)
+    } else if (parts && !(parts[first] & (1 << part))) {
+      parts[first] = parts[first] | (1 << part)
       movePart(draft, row, first, part)
       dropped[row] = DROPPED.folded
     } else {
       dropped[row] = DROPPED.rejected
-      const problems = files[columns.file[row]!]!
+      const problems = files[columns.file[row]]
       problems.add({
         kind: 'doubled-site',
         file: problems.file,
-        line: columns.line[row]!,
-        wafer: draft.wafers.labels[columns.wafer[row]!]!.id,
-        site: draft.sites.names[columns.site[row]!]!,
-        firstLine: columns.line[first]!,
+        line: columns.line[row],
+        wafer: draft.wafers.labels[columns.wafer[row]]!.id,
+        site: draft.sites.names[columns.site[row]]!,
+        firstLine: columns.line[first],
       })
     }
   }
@@ -58,8 +58,8 @@ export function foldSites(draft: LotDraft, files: readonly RowProblems[], isLong
 export function renumberSites({ columns, sites }: LotDraft): void {
   const counts = new Map<number, number>()
   for (let row = 0; row < columns.count; row++) {
-    if (!(columns.role[row]! & NUMBERED_BIT)) continue
-    const wafer = columns.wafer[row]!
+    if (!(columns.role[row] & NUMBERED_BIT)) continue
+    const wafer = columns.wafer[row]
     const number = (counts.get(wafer) ?? 0) + 1
     counts.set(wafer, number)
     columns.site[row] = sites.ofNumber(number)
@@ -74,8 +74,8 @@ function movePart({ columns }: LotDraft, from: number, to: number, part: number)
     columns.number(target)[to] = value
     columns.number(source)[from] = NaN
   }
-  move('current_A', CURRENTS[part]!)
-  move('voltage_V', VOLTAGES[part]!)
+  move('current_A', CURRENTS[part])
+  move('voltage_V', VOLTAGES[part])
   // A ready-made V/I has a place for either configuration, none for the reverse direction.
   if (part === B_BIT) move('vOverI_ohm', 'vOverIB_ohm')
   else if (part === 0) for (const name of READY) move(name, name)
@@ -115,12 +115,12 @@ class SiteFinder {
   insert(row: number): void {
     if (!this.isNumbered(row)) this.byName.insert(this.nameHash(row), row)
     if (this.byPlace && this.hasPlace(row))
-      this.byPlace.insert(this.placeHash(row, cell(this.x![row]!), cell(this.y![row]!)), row)
+      this.byPlace.insert(this.placeHash(row, cell(this.x![row]), cell(this.y![row])), row)
   }
 
   private findPlace(row: number, table: RowTable): number {
-    const [x0, x1] = cellsOf(this.x![row]!)
-    const [y0, y1] = cellsOf(this.y![row]!)
+    const [x0, x1] = cellsOf(this.x![row])
+    const [y0, y1] = cellsOf(this.y![row])
     for (let x = x0; x <= x1; x++) {
       for (let y = y0; y <= y1; y++) {
         const found = table.find(this.placeHash(row, x, y), this.isSamePlace)
@@ -138,21 +138,21 @@ class SiteFinder {
 
   private readonly isSamePlace = (other: number): boolean =>
     this.draft.columns.wafer[other] === this.draft.columns.wafer[this.row] &&
-    Math.abs(this.x![other]! - this.x![this.row]!) <= SAME_PLACE_MM &&
-    Math.abs(this.y![other]! - this.y![this.row]!) <= SAME_PLACE_MM
+    Math.abs(this.x![other] - this.x![this.row]) <= SAME_PLACE_MM &&
+    Math.abs(this.y![other] - this.y![this.row]) <= SAME_PLACE_MM
 
   private nameHash(row: number): number {
     const { wafer, site } = this.draft.columns
-    const die = this.dieX && this.dieY ? (this.dieX[row]! * 8191 + this.dieY[row]!) | 0 : 0
-    return mix(wafer[row]!, site[row]!, die)
+    const die = this.dieX && this.dieY ? (this.dieX[row] * 8191 + this.dieY[row]) | 0 : 0
+    return mix(wafer[row], site[row], die)
   }
 
   private placeHash(row: number, x: number, y: number): number {
-    return mix(this.draft.columns.wafer[row]!, x, y)
+    return mix(this.draft.columns.wafer[row], x, y)
   }
 
   private isNumbered(row: number): boolean {
-    return (this.draft.columns.role[row]! & NUMBERED_BIT) !== 0
+    return (this.draft.columns.role[row] & NUMBERED_BIT) !== 0
   }
 
   private hasPlace(row: number): boolean {

@@ -40,7 +40,7 @@ export function readHeader(header: string): readonly HeaderReading[] {
     const rest = brackets.filter((_, at) => at !== unitAt).join(' ')
     readings.push({
       words: wordsOf(`${outside} ${rest}`),
-      unit: findUnit(brackets[unitAt]!),
+      unit: findUnit(brackets[unitAt]),
       isBracketUnit: true,
       bracket: null,
     })
@@ -94,11 +94,11 @@ function wordsOf(text: string): string[] {
   const words = tokensOf(text).flatMap((token) => (RUN_TOGETHER[token.toLowerCase()] ?? token.toLowerCase()).split(' '))
   const joined: string[] = []
   for (let at = 0; at < words.length; at++) {
-    const pair = PIN_PAIRS[`${words[at]}${words[at + 1] ?? ''}`] ?? PIN_PAIRS[words[at]!]
-    if (pair === undefined) joined.push(words[at]!)
+    const pair = PIN_PAIRS[`${words[at]}${words[at + 1] ?? ''}`] ?? PIN_PAIRS[words[at]]
+    if (pair === undefined) joined.push(words[at])
     else {
       joined.push(pair)
-      if (words[at]!.length === 1) at++
+      if (words[at].length === 1) at++
     }
   }
   return joined

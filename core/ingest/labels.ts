@@ -22,8 +22,8 @@ export class SiteNames {
     if (number > MAX_PLAIN_NUMBER) return this.ofText(String(number))
     const page = (this.pages[number >> PAGE_BITS] ??= new Int32Array(1 << PAGE_BITS).fill(-1))
     const at = number & ((1 << PAGE_BITS) - 1)
-    if (page[at]! < 0) page[at] = this.names.push(String(number)) - 1
-    return page[at]!
+    if (page[at] < 0) page[at] = this.names.push(String(number)) - 1
+    return page[at]
   }
 
   ofText(text: string): number {
@@ -59,7 +59,7 @@ export class WaferLabels {
     const known = this.byId.get(id)
     const number = slotNumber(slot === '' ? id : slot)
     if (known !== undefined) {
-      if (slot !== '' && !Number.isNaN(number)) this.labels[known]!.slot = number
+      if (slot !== '' && !Number.isNaN(number)) this.labels[known].slot = number
       return known
     }
     const index = this.labels.push({ id, slot: number, rejectedRows: 0 }) - 1
@@ -69,7 +69,7 @@ export class WaferLabels {
   }
 
   nextSite(wafer: number): number {
-    return (this.siteCounts[wafer] = this.siteCounts[wafer]! + 1)
+    return (this.siteCounts[wafer] = this.siteCounts[wafer] + 1)
   }
 
   reject(wafer: number): void {
@@ -84,9 +84,9 @@ export class WaferLabels {
     const newIndex = new Int32Array(this.labels.length).fill(-1)
     const used: WaferLabel[] = []
     for (let row = 0; row < count; row++) {
-      const old = column[row]!
-      if (newIndex[old]! < 0) newIndex[old] = used.push(this.labels[old]!) - 1
-      column[row] = newIndex[old]!
+      const old = column[row]
+      if (newIndex[old] < 0) newIndex[old] = used.push(this.labels[old]) - 1
+      column[row] = newIndex[old]
     }
     const lost = this.labels.filter(({ rejectedRows }, index) => newIndex[index] < 0 && rejectedRows > 0)
     return [...used, ...lost]
@@ -111,12 +111,12 @@ export function isStatisticsWord(cell: string): boolean {
     .trim()
     .toLowerCase()
     .split(/[\s:=(%]+/)
-  return STATISTICS_WORDS.has(words[0]!)
+  return STATISTICS_WORDS.has(words[0])
 }
 
 /** `TB-0417_W04.csv`: the lot (or a name for it) is the stem, the wafer its part after W, wafer or slot. */
 export function namesFromFile(file: string): { readonly stem: string; readonly wafer: string } {
   const stem = file.replace(/^.*[\\/]/, '').replace(/\.[^.]{1,5}$/, '') || file
   const part = /(?:^|[_\-. ])(?:wafer|wfr|w|slot)[_\-. #]?(\d{1,3})(?=$|[_\-. ])/i.exec(stem)
-  return { stem, wafer: part ? part[1]! : stem }
+  return { stem, wafer: part ? part[1] : stem }
 }

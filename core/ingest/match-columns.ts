@@ -78,9 +78,9 @@ function mapColumns(file: string, headers: readonly string[], options: ReadOptio
         candidates: places.map((at) => candidateName(headers, at)),
       })
     }
-    const unit = mappedUnit(file, target, headers[places[0]!]!, typeof wish === 'string' ? undefined : wish.unit)
+    const unit = mappedUnit(file, target, headers[places[0]]!, typeof wish === 'string' ? undefined : wish.unit)
     if (unit !== null && 'kind' in unit) return refuse(unit)
-    columns.push({ target, at: places[0]!, header: headers[places[0]!]!, unit, why: 'given in the procedure' })
+    columns.push({ target, at: places[0], header: headers[places[0]]!, unit, why: 'given in the procedure' })
   }
   return { columns, problem: null }
 }

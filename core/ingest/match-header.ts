@@ -56,7 +56,7 @@ function matchFamily(reading: HeaderReading, family: Family): HeaderMatch | null
   const namesUnit = hasOwnUnit || /ohm|Ω/i.test(reading.bracket ?? '')
   if (weight === undefined || (family.needUnit.includes(parts.phrase) && !namesUnit)) return null
   return {
-    target: family.columns[parts.column]!,
+    target: family.columns[parts.column],
     score: weight + (unit === null ? 0 : UNIT_BONUS) - FILLER_COST * parts.fillers,
     unit,
     unknownUnit: reading.bracket,

@@ -58,7 +58,7 @@ export function parseNumber(cell: string, decimal: number, shift: number): numbe
   }
   const power = exponent - fraction + shift
   if (significant > 15 || power > 22 || power < -22) return parseLong(cell.slice(begin, end), shift)
-  const value = power < 0 ? mantissa / POWERS_OF_TEN[-power]! : mantissa * POWERS_OF_TEN[power]!
+  const value = power < 0 ? mantissa / POWERS_OF_TEN[-power] : mantissa * POWERS_OF_TEN[power]
   return negative ? -value : value
 }
 

@@ -52,7 +52,7 @@ export function readPreambleRow(cells: readonly string[], delimiter: string): re
     filled.every((cell, at) => at % 2 === 1 || preambleTarget(bareKey(cell)) !== null)
   ) {
     return filled.flatMap((cell, at) =>
-      at % 2 === 0 ? [{ key: bareKey(cell), value: readTextCell(filled[at + 1]!) }] : [],
+      at % 2 === 0 ? [{ key: bareKey(cell), value: readTextCell(filled[at + 1]) }] : [],
     )
   }
   const pair = readPair(cells.join(delimiter).replace(/[\s,;]+$/, ''))
@@ -79,7 +79,7 @@ function isTooLong(cells: readonly string[]): boolean {
 
 function isKnownKey(key: string): boolean {
   if (key === '') return false
-  return preambleTarget(key) !== null || OTHER_KEYS.has(key.toLowerCase().split(/[\s_/(-]+/)[0]!)
+  return preambleTarget(key) !== null || OTHER_KEYS.has(key.toLowerCase().split(/[\s_/(-]+/)[0])
 }
 
 function bareKey(cell: string): string {
@@ -89,12 +89,12 @@ function bareKey(cell: string): string {
 function readPair(text: string): (PreambleEntry & { readonly mark: string }) | null {
   const match = PAIR.exec(text)
   if (!match || match[1] === '') return null
-  const value = match[2]!.trim().replace(/^[:=]\s*/, '')
+  const value = match[2].trim().replace(/^[:=]\s*/, '')
   const unquoted = /^"(.*)"$/.exec(value)?.[1] ?? value
   return {
-    key: match[1]!.trim(),
+    key: match[1].trim(),
     value: readTextCell(unquoted),
-    mark: text.charAt(text.indexOf(match[1]!) + match[1]!.length).trim() || text.slice(match[1]!.length),
+    mark: text.charAt(text.indexOf(match[1]) + match[1].length).trim() || text.slice(match[1].length),
   }
 }
 
@@ -102,8 +102,8 @@ function readPair(text: string): (PreambleEntry & { readonly mark: string }) | n
 export function preambleTemperature_C(entry: PreambleEntry): number {
   const match = /^([+-]?[\d.,]+(?:e[+-]?\d+)?)\s*(.*)$/i.exec(entry.value)
   if (!match) return NaN
-  const number = parseNumber(match[1]!.replace(',', '.'), 46, 0)
-  const unit = match[2] === '' ? matchHeader(entry.key)?.unit : findUnit(match[2]!)
+  const number = parseNumber(match[1].replace(',', '.'), 46, 0)
+  const unit = match[2] === '' ? matchHeader(entry.key)?.unit : findUnit(match[2])
   if (unit === undefined || (unit === null && match[2] !== '')) return NaN
   if (unit === null) return number
   return unit.quantity === 'temperature' ? toBase(number, unit) : NaN

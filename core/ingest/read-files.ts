@@ -95,7 +95,7 @@ function readBlocks(
     let from = 0
     if (begin === 0) {
       for (const cells of rows.cells.slice(0, header.row)) reader.readPreamble(cells)
-      if (!reader.readHeader(rows.cells[header.row]!)) return reader.failure
+      if (!reader.readHeader(rows.cells[header.row])) return reader.failure
       from = header.row + 1
       reader.setDecimalMark(options.decimalMark ?? guessDecimalMark(rows.cells.slice(from), reader.columns))
     }
@@ -153,7 +153,7 @@ function finish(draft: LotDraft, files: readonly ReadFile[]): Readings {
   const { count } = columns
   const usedWafers = wafers.used(columns.wafer, count)
   return {
-    lot: draft.lot?.name ?? namesFromFile(files[0]!.input.name).stem,
+    lot: draft.lot?.name ?? namesFromFile(files[0].input.name).stem,
     files: files.map(sourceFile),
     wafers: usedWafers,
     count,

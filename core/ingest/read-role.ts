@@ -17,8 +17,8 @@ export function readRole(
   cells: readonly string[],
   at: { readonly configuration: number; readonly direction: number },
 ): number {
-  const configuration = at.configuration < 0 ? 0 : CONFIGURATIONS[keyOf(cells[at.configuration]!)]
-  const direction = at.direction < 0 ? 0 : DIRECTIONS[keyOf(cells[at.direction]!)]
+  const configuration = at.configuration < 0 ? 0 : CONFIGURATIONS[keyOf(cells[at.configuration])]
+  const direction = at.direction < 0 ? 0 : DIRECTIONS[keyOf(cells[at.direction])]
   return configuration === undefined || direction === undefined ? -1 : configuration | direction
 }
 

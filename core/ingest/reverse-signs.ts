@@ -79,12 +79,12 @@ class SideRows {
     this.forwardI = columns.number(side.forwardCurrent)
     this.forwardV = columns.number(side.forwardVoltage)
     this.each((row) => {
-      const i = this.i[row]!
-      const v = this.v[row]!
+      const i = this.i[row]
+      const v = this.v[row]
       this.count++
       if (i === i) this.ownCurrents++
-      if (v * this.forwardV[row]! < 0) this.againstForward++
-      if (i > 0 && v < 0 && this.forwardV[row]! > 0) this.magnitudes++
+      if (v * this.forwardV[row] < 0) this.againstForward++
+      if (i > 0 && v < 0 && this.forwardV[row] > 0) this.magnitudes++
     })
   }
 
@@ -111,7 +111,7 @@ function fillCurrents(rows: SideRows, side: Side, notes: (sentence: string) => v
   const { i, forwardI } = rows
   if (!rows.hasOwnCurrent) {
     const isTurned = side.isReverse && !rows.isNeverAgainstForward
-    rows.each((row) => (i[row] = isTurned ? -forwardI[row]! : forwardI[row]!))
+    rows.each((row) => (i[row] = isTurned ? -forwardI[row] : forwardI[row]))
     if (isTurned) notes(`the ${side.title} voltage has no current of its own: the forward current reversed is used`)
     else if (side.isReverse)
       notes(
@@ -119,7 +119,7 @@ function fillCurrents(rows: SideRows, side: Side, notes: (sentence: string) => v
       )
     else notes(`the voltage of ${side.title} has no current of its own: that of configuration A is used`)
   } else if (side.isReverse && rows.areCurrentsMagnitudes) {
-    rows.each((row) => (i[row] = -i[row]!))
+    rows.each((row) => (i[row] = -i[row]))
     notes(
       `the ${side.title} currents are all positive and the voltages all negative: the currents are taken as magnitudes and reversed`,
     )
@@ -134,12 +134,12 @@ function refuseOpposites(
   dropped: Uint8Array,
 ): void {
   rows.each((row) => {
-    const i = rows.i[row]!
-    const v = rows.v[row]!
+    const i = rows.i[row]
+    const v = rows.v[row]
     if ((i > 0 && v > 0) || (i < 0 && v < 0)) return
     dropped[row] = DROPPED.rejected
     const found = `${v} V, ${i} A`
-    problems.row(columns.line[row]!, side.voltage, found, `${side.title} voltage and current give no positive V/I`)
+    problems.row(columns.line[row], side.voltage, found, `${side.title} voltage and current give no positive V/I`)
   })
 }
 
@@ -168,7 +168,7 @@ function dropPartsWithoutForward(
     if (has(forward, row) && !isOrphan) continue
     dropped[row] = DROPPED.rejected
     problems.row(
-      columns.line[row]!,
+      columns.line[row],
       '',
       '',
       'only a reverse or a configuration B reading of this site is usable, no forward reading of A',

@@ -59,7 +59,7 @@ export class RowReader {
   }
 
   readPreamble(cells: readonly string[]): void {
-    if (cells.every(isBlank) || /^sep=.?$/i.test(cells[0]!.trim())) return
+    if (cells.every(isBlank) || /^sep=.?$/i.test(cells[0].trim())) return
     this.lastWafer = -1
     const isRead = this.section.take(readPreambleRow(cells, this.delimiter))
     if (!isRead) {
@@ -107,8 +107,8 @@ export class RowReader {
     if (this.draft.columns.reserve(cells.length)) this.bind()
     for (let row = from; row < cells.length && this.failure === null; row++) {
       if (rows.isBroken(row))
-        this.reject(rows.line(row), cells[row]!, 'has a quotation mark that is not closed as it should be')
-      else if (!this.readRow(cells[row]!, rows.line(row))) this.readOther(cells[row]!, rows.line(row))
+        this.reject(rows.line(row), cells[row], 'has a quotation mark that is not closed as it should be')
+      else if (!this.readRow(cells[row], rows.line(row))) this.readOther(cells[row], rows.line(row))
     }
   }
 
@@ -146,10 +146,10 @@ export class RowReader {
     const role = layout.isLong ? readRole(cells, layout.at) : 0
     if (role < 0 || !this.check!.isGood(row, role)) return false
     const { at } = layout
-    if (this.isStatistics(cells[0]!) || (at.site > 0 && this.isStatistics(cells[at.site]!))) return false
+    if (this.isStatistics(cells[0]) || (at.site > 0 && this.isStatistics(cells[at.site]))) return false
     const wafer = this.waferOf(cells)
     if (wafer < 0) return false
-    if (at.lot >= 0) this.readLot(cells[at.lot]!)
+    if (at.lot >= 0) this.readLot(cells[at.lot])
     if (layout.isPolar) turnPolar(columns.number('x_mm'), columns.number('y_mm'), row)
     columns.wafer[row] = wafer
     columns.site[row] = this.siteOf(cells, wafer, line)
@@ -166,12 +166,12 @@ export class RowReader {
   private readNumbers(cells: readonly string[], row: number): boolean {
     const { numbers } = this.layout!
     for (let k = 0; k < numbers.length; k++) {
-      const { at, shift, scale, offset } = numbers[k]!
-      const cell = cells[at]!
+      const { at, shift, scale, offset } = numbers[k]
+      const cell = cells[at]
       let value = parseNumber(cell, this.decimal, shift)
       if (!(value < LARGEST && value > -LARGEST) && !isBlank(cell)) return false
       if (scale !== 1 || offset !== 0) value = value * scale + offset
-      this.targets[k]![row] = value
+      this.targets[k][row] = value
     }
     return true
   }
@@ -193,8 +193,8 @@ export class RowReader {
   /** -1 where the row leaves it empty. */
   private waferOf(cells: readonly string[]): number {
     const { at } = this.layout!
-    const waferCell = at.wafer >= 0 ? cells[at.wafer]! : ''
-    const slotCell = at.slot >= 0 ? cells[at.slot]! : ''
+    const waferCell = at.wafer >= 0 ? cells[at.wafer] : ''
+    const slotCell = at.slot >= 0 ? cells[at.slot] : ''
     if (this.lastWafer >= 0 && waferCell === this.lastWaferCell && slotCell === this.lastSlotCell) return this.lastWafer
     let id = readTextCell(waferCell)
     let slot = readTextCell(slotCell)
@@ -213,7 +213,7 @@ export class RowReader {
     const { at } = this.layout!
     const { sites, wafers } = this.draft
     if (at.site < 0) return sites.ofNumber(wafers.nextSite(wafer))
-    const cell = cells[at.site]!
+    const cell = cells[at.site]
     return isBlank(cell) ? sites.ofText(`line ${line}`) : sites.ofCell(cell)
   }
 
@@ -233,8 +233,8 @@ export class RowReader {
         this.note(`temperature ${section.temperatureText} of the preamble used for the rows under it`)
     }
     if (at.time >= 0 || at.date >= 0) {
-      const time = at.time >= 0 ? readTextCell(cells[at.time]!) : ''
-      const date = at.date >= 0 ? readTextCell(cells[at.date]!) : ''
+      const time = at.time >= 0 ? readTextCell(cells[at.time]) : ''
+      const date = at.date >= 0 ? readTextCell(cells[at.date]) : ''
       columns.number('time_ms')[row] = this.times.read(date === '' ? time : joinDate(date, time), line)
     } else if (section.time !== '') columns.number('time_ms')[row] = this.times.read(section.time, line)
   }
@@ -276,7 +276,7 @@ export class RowReader {
 
   private rejectReading(cells: readonly string[], line: number, filled: number): void {
     const { width, numbers, headers, at } = this.layout!
-    if (isStatisticsWord(cells[0]!) || (at.site >= 0 && isStatisticsWord(cells[at.site] ?? ''))) {
+    if (isStatisticsWord(cells[0]) || (at.site >= 0 && isStatisticsWord(cells[at.site] ?? ''))) {
       return this.reject(line, cells, 'looks like statistics or an end mark, not like a reading')
     }
     if (cells.length < width || filled > width) {
@@ -288,13 +288,13 @@ export class RowReader {
     if (wafer >= 0) this.draft.wafers.reject(wafer)
     if (wafer >= 0 && at.site < 0) this.draft.wafers.nextSite(wafer)
     const bad = numbers.find((cell) => !this.isNumberCell(cells, cell))
-    if (bad) return this.problems.cell(line, bad.header, cells[bad.at]!, this.explainCell(cells[bad.at]!))
+    if (bad) return this.problems.cell(line, bad.header, cells[bad.at], this.explainCell(cells[bad.at]))
     if (this.layout!.isLong && readRole(cells, at) < 0) {
       const place =
         at.direction >= 0 && readRole(cells, { direction: at.direction, configuration: -1 }) < 0
           ? at.direction
           : at.configuration
-      return this.problems.cell(line, headers[place]!, cells[place]!, 'is none of A, B, forward, reverse, + and -')
+      return this.problems.cell(line, headers[place], cells[place], 'is none of A, B, forward, reverse, + and -')
     }
     this.rejectNumbers(cells, line)
   }
@@ -315,8 +315,8 @@ export class RowReader {
   }
 
   private isNumberCell(cells: readonly string[], { at, shift }: NumberCell): boolean {
-    const value = parseNumber(cells[at]!, this.decimal, shift)
-    return (value < LARGEST && value > -LARGEST) || isBlank(cells[at]!)
+    const value = parseNumber(cells[at], this.decimal, shift)
+    return (value < LARGEST && value > -LARGEST) || isBlank(cells[at])
   }
 
   private explainCell(cell: string): string {
@@ -343,8 +343,8 @@ function withUnit(header: string, cell: string): string {
 
 /** r and theta [deg] stand in x and y; theta counts from +x towards +y. Quarter turns come out exact. */
 function turnPolar(x: Float64Array, y: Float64Array, row: number): void {
-  const r = x[row]!
-  const turn = (((y[row]! % 360) + 360) % 360) / 90
+  const r = x[row]
+  const turn = (((y[row] % 360) + 360) % 360) / 90
   const angle = (turn * Math.PI) / 2
   x[row] = r * (turn === 1 || turn === 3 ? 0 : turn === 2 ? -1 : Math.cos(angle))
   y[row] = r * (turn === 0 || turn === 2 ? 0 : turn === 3 ? -1 : Math.sin(angle))

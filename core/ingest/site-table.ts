@@ -22,7 +22,7 @@ export class RowTable {
   /** The first row under this hash for which `isSame` holds, or -1. */
   find(hash: number, isSame: (row: number) => boolean): number {
     for (let slot = hash & this.mask; this.slots[slot] !== EMPTY; slot = (slot + 1) & this.mask) {
-      if (isSame(this.slots[slot]!)) return this.slots[slot]!
+      if (isSame(this.slots[slot])) return this.slots[slot]
     }
     return EMPTY
   }

@@ -92,7 +92,7 @@ export function splitRows(block: string, delimiter: string, firstLine: number): 
   let longest = 1
   for (let row = 0; row < data.length; row++) {
     lineOf[row] = line
-    const height = 1 + lineBreaksIn(data[row]!)
+    const height = 1 + lineBreaksIn(data[row])
     longest = Math.max(longest, height)
     line += height
   }
@@ -100,7 +100,7 @@ export function splitRows(block: string, delimiter: string, firstLine: number): 
     return splitLineByLine(text, delimiter, firstLine)
   }
   if (text.endsWith('\n')) data.pop()
-  return { cells: data, line: (row) => lineOf[row]!, isBroken: () => false, lines: line - 1 - firstLine }
+  return { cells: data, line: (row) => lineOf[row], isBroken: () => false, lines: line - 1 - firstLine }
 }
 
 function splitPlain(block: string, delimiter: string, firstLine: number): Rows {

@@ -24,7 +24,7 @@ const SAMPLE_BYTES = 65536
 export function nonTextKind(bytes: Uint8Array): string | null {
   const known = SIGNATURES.find((signature) => startsWith(bytes, signature.bytes))
   if (known) return known.looksLike
-  if (startsWith(bytes, ZIP) && bytes[2]! <= 8 && bytes[3]! <= 8) return zipKind(bytes)
+  if (startsWith(bytes, ZIP) && bytes[2] <= 8 && bytes[3] <= 8) return zipKind(bytes)
   return controlBytes(bytes) > MAX_CONTROL_SHARE * Math.min(bytes.length, SAMPLE_BYTES) ? 'binary data' : null
 }
 
@@ -45,7 +45,7 @@ function controlBytes(bytes: Uint8Array): number {
   let count = 0
   const end = Math.min(bytes.length, SAMPLE_BYTES)
   for (let at = 0; at < end; at++) {
-    const byte = bytes[at]!
+    const byte = bytes[at]
     const isControl = byte < 32 && byte !== 9 && byte !== 10 && byte !== 13 && byte !== 12 && byte !== 26 && byte !== 27
     // A zero byte has no business in 8-bit text at all.
     if (isControl) count += byte === 0 ? 8 : 1

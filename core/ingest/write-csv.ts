@@ -14,7 +14,7 @@ export function writeCsv(columns: readonly CsvColumn[], rowCount: number): strin
   for (let row = 0; row < rowCount; row++) {
     let line = ''
     for (let at = 0; at < columns.length; at++) {
-      const cell = columns[at]!.cell(row)
+      const cell = columns[at].cell(row)
       if (at > 0) line += ','
       line += typeof cell === 'number' ? writeNumber(cell) : writeText(cell)
     }

@@ -20,5 +20,5 @@ export function quotedList(words: readonly string[], most = 12): string {
   const shown = words.slice(0, most).map(quote)
   const rest = words.length - shown.length
   if (rest > 0) return `${shown.join(', ')} and ${rest} more`
-  return shown.length === 1 ? shown[0]! : `${shown.slice(0, -1).join(', ')} and ${shown[shown.length - 1]!}`
+  return shown.length === 1 ? shown[0] : `${shown.slice(0, -1).join(', ')} and ${shown[shown.length - 1]}`
 }

@@ -13,6 +13,6 @@ const PLAIN: Readonly<Record<string, string>> = {
 /** Why a file or a port could not be had, as the end of a sentence, from what the system threw; never its stack. */
 export function systemReason(error: unknown): string {
   const code = typeof error === 'object' && error !== null && 'code' in error ? String(error.code) : ''
-  if (Object.hasOwn(PLAIN, code)) return PLAIN[code]!
+  if (Object.hasOwn(PLAIN, code)) return PLAIN[code]
   return error instanceof Error ? error.message : String(error)
 }

@@ -14,6 +14,9 @@ import { sourceList, type SourceUse } from './source-list'
 
 export type { LotReportInput } from './report-context'
 
+/** What a report without a date carries in its file, where a date must stand: the same input makes the same bytes. */
+const UNDATED = '1970-01-01T00:00:00Z'
+
 export function lotReport(input: LotReportInput): ReportDocument {
   const { analysis, working, date, program, paper } = input
   const context = reportContext(input, sourceList(input.sources, sourceUses(input)))
@@ -22,7 +25,7 @@ export function lotReport(input: LotReportInput): ReportDocument {
     subject: analysis.lot.sentence,
     language: 'en',
     program,
-    date,
+    date: date ?? UNDATED,
     paper,
     footer: `Lot ${analysis.lot.name}`,
     blocks: [

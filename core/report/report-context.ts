@@ -15,8 +15,8 @@ export interface LotReportInput {
   readonly analysis: LotAnalysis
   /** Of one site, set out in full; null leaves the section out. */
   readonly working: Working | null
-  /** ISO 8601 with zone. */
-  readonly date: string
+  /** ISO 8601 with zone; null where neither the readings nor anybody says. */
+  readonly date: string | null
   /** Name and version. */
   readonly program: string
   readonly paper: PaperSize
@@ -62,10 +62,10 @@ export function reportContext(input: LotReportInput, sources: SourceList): Repor
     siteLimits,
     meanLimits,
     sitesOf: ({ sites }) => ({
-      x_mm: Float64Array.from(sites, (i) => x[i]!),
-      y_mm: Float64Array.from(sites, (i) => y[i]!),
-      value: Float64Array.from(sites, (i) => value[i]!),
-      verdict: Uint8Array.from(sites, (i) => verdict[i]!),
+      x_mm: Float64Array.from(sites, (i) => x[i]),
+      y_mm: Float64Array.from(sites, (i) => y[i]),
+      value: Float64Array.from(sites, (i) => value[i]),
+      verdict: Uint8Array.from(sites, (i) => verdict[i]),
     }),
     hasPositions: positions !== null,
     positions,
@@ -110,16 +110,16 @@ function scaleOf(values: Float64Array, limits: SiteLimits): BandScale | null {
   const sorted = values.filter(Number.isFinite).sort()
   if (sorted.length === 0) return null
   const last = sorted.length - 1
-  const lower = sorted[Math.floor(0.25 * last)]!
-  const upper = sorted[Math.ceil(0.75 * last)]!
+  const lower = sorted[Math.floor(0.25 * last)]
+  const upper = sorted[Math.ceil(0.75 * last)]
   const reach = 4 * Math.max(upper - lower, 1e-6 * Math.abs(upper))
   const stray = Math.ceil(STRAY_SHARE * sorted.length)
   let low = 0
   let high = last
-  while (low < stray && sorted[low]! < lower - reach) low++
-  while (last - high < stray && sorted[high]! > upper + reach) high--
-  const least = sorted[low]!
-  const most = sorted[high]!
+  while (low < stray && sorted[low] < lower - reach) low++
+  while (last - high < stray && sorted[high] > upper + reach) high--
+  const least = sorted[low]
+  const most = sorted[high]
   const room = Math.max(most - least, 1e-6 * Math.abs(most))
   const min = limits.lower < least && least - limits.lower < room ? limits.lower : least
   const max = limits.upper > most && limits.upper - most < room ? limits.upper : most
@@ -145,8 +145,8 @@ export function waferMarkOf(
   let below = 0
   for (const i of wafer.sites) {
     if (analysis.sites.verdict[i] !== 1) continue
-    if (analysis.sites.value[i]! > siteLimits.upper) above++
-    if (analysis.sites.value[i]! < siteLimits.lower) below++
+    if (analysis.sites.value[i] > siteLimits.upper) above++
+    if (analysis.sites.value[i] < siteLimits.lower) below++
   }
   if (above !== below) return above > below ? 'above' : 'below'
   return wafer.statistics.mean < meanLimits.lower ? 'below' : 'above'

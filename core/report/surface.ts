@@ -67,8 +67,8 @@ function withValue({ x_mm, y_mm, value }: MapSites) {
     if (Number.isFinite(value[i]) && Number.isFinite(x_mm[i]) && Number.isFinite(y_mm[i])) rows.push(i)
   }
   return {
-    x_mm: Float64Array.from(rows, (i) => x_mm[i]!),
-    y_mm: Float64Array.from(rows, (i) => y_mm[i]!),
-    value: Float64Array.from(rows, (i) => value[i]!),
+    x_mm: Float64Array.from(rows, (i) => x_mm[i]),
+    y_mm: Float64Array.from(rows, (i) => y_mm[i]),
+    value: Float64Array.from(rows, (i) => value[i]),
   }
 }

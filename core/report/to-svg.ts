@@ -75,7 +75,7 @@ function ringsPath(rings: readonly (readonly number[])[], closed: boolean): stri
   const parts: string[] = []
   for (const ring of rings) {
     for (let i = 0; i + 1 < ring.length; i += 2) {
-      parts.push(`${i === 0 ? 'M' : 'L'}${number(ring[i]!)} ${number(ring[i + 1]!)}`)
+      parts.push(`${i === 0 ? 'M' : 'L'}${number(ring[i])} ${number(ring[i + 1])}`)
     }
     if (closed && ring.length > 0) parts.push('Z')
   }

@@ -36,7 +36,7 @@ export function drawKeyValues(block: KeyValuesBlock, paper: Paper, { x, width }:
   paper.branch('Div', () => {
     for (const row of rows) {
       paper.ensure(rowHeight(row))
-      row.forEach((pair, i) => drawPair(pair, paper, x + i * (columnWidth + COLUMN_GAP_PT), valueAt[i]!))
+      row.forEach((pair, i) => drawPair(pair, paper, x + i * (columnWidth + COLUMN_GAP_PT), valueAt[i]))
       paper.y += rowHeight(row)
     }
   })
@@ -49,7 +49,7 @@ function drawPair(pair: Pair, paper: Paper, x: number, valueAt: number): void {
     pair.lines.forEach((line, i) => paper.text(line, x + valueAt, baselineOf(paper.y, i, VALUE), VALUE))
     if (pair.note === '') return
     const last = pair.lines.length - 1
-    const beside = paper.measure(pair.lines[last]!, VALUE) + 7
+    const beside = paper.measure(pair.lines[last], VALUE) + 7
     if (pair.noteBelow) paper.text(pair.note, x + valueAt, baselineOf(paper.y, last + 1, VALUE), NOTE)
     else paper.text(pair.note, x + valueAt + beside, baselineOf(paper.y, last, VALUE), NOTE)
   })
@@ -64,14 +64,14 @@ function setting({ columns, entries }: KeyValuesBlock, paper: Paper, width: numb
   const rows: Pair[][] = []
   entries.forEach((entry, i) => {
     if (i % columns === 0) rows.push([])
-    rows[rows.length - 1]!.push(pairOf(entry, paper, columnWidth - valueAt[i % columns]!))
+    rows[rows.length - 1].push(pairOf(entry, paper, columnWidth - valueAt[i % columns]))
   })
   return { rows, columnWidth, valueAt }
 }
 
 function pairOf({ key, value, note = '' }: KeyValue, paper: Paper, width: number): Pair {
   const lines = linesOf(value, paper, width, VALUE)
-  const beside = paper.measure(lines[lines.length - 1]!, VALUE) + 7 + paper.measure(note, NOTE)
+  const beside = paper.measure(lines[lines.length - 1], VALUE) + 7 + paper.measure(note, NOTE)
   return { key, lines, note, noteBelow: note !== '' && beside > width }
 }
 

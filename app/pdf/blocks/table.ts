@@ -124,7 +124,7 @@ function drawRow(
   if (isResult) paper.rule(x, paper.y, x + width, { colour: INK, width: 0.6 })
   const top = paper.y + (height - lineCount(cells) * TEXT_PT * LEADING) / 2
   paper.branch('TR', () => {
-    columns.forEach((set, i) => paper.leaf('TD', () => drawCell(cells[i]!, i, top, set, row, paper)))
+    columns.forEach((set, i) => paper.leaf('TD', () => drawCell(cells[i], i, top, set, row, paper)))
   })
   paper.y += height
   paper.rule(x, paper.y, x + width, isResult ? { colour: RULE, width: 0.6 } : { colour: FAINT, width: 0.4 })
@@ -170,7 +170,7 @@ function rowLook(column: TableColumn, row: TableRow): Look {
 
 /** What stands left of the decimal point, and the rest with the point. */
 function headOf(text: string): string {
-  return text.split('.')[0]!
+  return text.split('.')[0]
 }
 
 function tailOf(text: string): string {

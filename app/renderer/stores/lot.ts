@@ -33,7 +33,7 @@ export const useLotStore = defineStore('lot', () => {
     if (!reply.ok || reply.value.length === 0) return
     const procedures = reply.value.filter(isProcedure)
     const others = reply.value.filter((file) => !isProcedure(file))
-    if (procedures.length > 0) procedure.value = procedures[procedures.length - 1]!
+    if (procedures.length > 0) procedure.value = procedures[procedures.length - 1]
     if (others.length > 0) readings.value = others
     await analyse()
   }

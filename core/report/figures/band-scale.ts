@@ -35,14 +35,14 @@ export function bandOf(scale: BandScale, value: number): number {
   let high = colours.length - 1
   while (low < high) {
     const middle = (low + high + 1) >> 1
-    if (value >= edges[middle]!) low = middle
+    if (value >= edges[middle]) low = middle
     else high = middle - 1
   }
   return low
 }
 
 export function colourOf(scale: BandScale, value: number): string {
-  return scale.colours[bandOf(scale, value)]!
+  return scale.colours[bandOf(scale, value)]
 }
 
 /** Whether ink or paper reads better on a colour: relative luminance of WCAG 2 (2008). */

@@ -20,15 +20,15 @@ const BAR_WIDTH_PT = 9
 
 export function colourBar(input: ColourBarInput): Shape {
   const { scale, height_pt } = input
-  const first = scale.edges[0]!
-  const last = scale.edges[scale.edges.length - 1]!
+  const first = scale.edges[0]
+  const last = scale.edges[scale.edges.length - 1]
   const yOf = (value: number) => height_pt * (1 - (value - first) / (last - first))
   const shapes: Shape[] = [
     text(0, -9, `${input.quantity.symbol} / ${input.quantity.unit}`, { size_pt: AXIS_PT, fill: INK }),
   ]
   scale.colours.forEach((fill, i) => {
-    const top = yOf(scale.edges[i + 1]!)
-    shapes.push(rectangle(0, top, BAR_WIDTH_PT, yOf(scale.edges[i]!) - top, { fill }))
+    const top = yOf(scale.edges[i + 1])
+    shapes.push(rectangle(0, top, BAR_WIDTH_PT, yOf(scale.edges[i]) - top, { fill }))
   })
   shapes.push(...openEnds(scale, height_pt))
   const every = Math.ceil(scale.edges.length / Math.max(2, Math.floor(height_pt / 10)))
@@ -53,8 +53,8 @@ function openEnds({ goesOn, colours }: BandScale, height: number): Shape[] {
   const tip = (y: number, by: number, fill: string) =>
     polygon([0, y, BAR_WIDTH_PT / 2, y + by, BAR_WIDTH_PT, y], { fill })
   return [
-    ...(goesOn.above ? [tip(0, -5, colours[colours.length - 1]!)] : []),
-    ...(goesOn.below ? [tip(height, 5, colours[0]!)] : []),
+    ...(goesOn.above ? [tip(0, -5, colours[colours.length - 1])] : []),
+    ...(goesOn.below ? [tip(height, 5, colours[0])] : []),
   ]
 }
 

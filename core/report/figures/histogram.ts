@@ -73,7 +73,7 @@ export function binned(values: readonly number[]): Bins {
   const counts = new Array<number>(Math.max(1, Math.floor(max / width + 1e-9) - start + 1)).fill(0)
   for (const value of values) {
     const at = Math.min(counts.length - 1, Math.max(0, Math.floor(value / width + 1e-9) - start))
-    counts[at]!++
+    counts[at]++
   }
   return { first: fromStep(start, width), width, counts }
 }

@@ -44,7 +44,7 @@ function legendEntries(marks: readonly MarkKind[], input: WaferMapInput): Legend
     entries.push({ sample, label: `edge exclusion ${formatMm(input.edgeExclusion_mm)}` })
   }
   const { edges } = input.scale
-  const isOnScale = (value: number) => value >= edges[0]! && value <= edges[edges.length - 1]!
+  const isOnScale = (value: number) => value >= edges[0] && value <= edges[edges.length - 1]
   const pointer = [3, 0, -1.5, -2.4, -1.5, 2.4]
   if (isOnScale(input.limits.lower) || isOnScale(input.limits.upper)) {
     entries.push({ sample: polygon(pointer, { fill: INK }), label: 'limit' })

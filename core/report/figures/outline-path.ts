@@ -46,7 +46,7 @@ export function drawnExtent(outline: Outline, x_mm: ArrayLike<number>, y_mm: Arr
     return { halfWidth_mm: outline.width_mm / 2, halfHeight_mm: outline.height_mm / 2 }
   }
   let reach = 0
-  for (let i = 0; i < x_mm.length; i++) reach = Math.max(reach, Math.abs(x_mm[i]!) || 0, Math.abs(y_mm[i]!) || 0)
+  for (let i = 0; i < x_mm.length; i++) reach = Math.max(reach, Math.abs(x_mm[i]) || 0, Math.abs(y_mm[i]) || 0)
   const half = reach > 0 ? reach * 1.1 : 1
   return { halfWidth_mm: half, halfHeight_mm: half }
 }

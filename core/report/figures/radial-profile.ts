@@ -24,7 +24,7 @@ const RINGS = 24
 
 export function radialProfile(input: RadialProfileInput): Drawing {
   const { sites, limits } = input
-  const radius = Float64Array.from(sites.value, (_, i) => Math.hypot(sites.x_mm[i]!, sites.y_mm[i]!))
+  const radius = Float64Array.from(sites.value, (_, i) => Math.hypot(sites.x_mm[i], sites.y_mm[i]))
   const values = Array.from(sites.value).filter(Number.isFinite)
   const min = values.reduce((least, value) => Math.min(least, value), Infinity)
   const max = values.reduce((most, value) => Math.max(most, value), -Infinity)
@@ -71,15 +71,15 @@ function ringMeans(frame: ChartFrame, radius: Float64Array, values: ArrayLike<nu
   const sumRadius = new Float64Array(RINGS)
   for (let i = 0; i < radius.length; i++) {
     if (!Number.isFinite(values[i]) || !Number.isFinite(radius[i])) continue
-    const ring = Math.min(RINGS - 1, Math.floor((radius[i]! / (farthest || 1)) * RINGS))
-    count[ring]!++
-    sum[ring]! += values[i]!
-    sumRadius[ring]! += radius[i]!
+    const ring = Math.min(RINGS - 1, Math.floor((radius[i] / (farthest || 1)) * RINGS))
+    count[ring]++
+    sum[ring] += values[i]
+    sumRadius[ring] += radius[i]
   }
   const path: number[] = []
   for (let ring = 0; ring < RINGS; ring++) {
-    const n = count[ring]!
-    if (n > 0) path.push(frame.x(sumRadius[ring]! / n), frame.y(sum[ring]! / n))
+    const n = count[ring]
+    if (n > 0) path.push(frame.x(sumRadius[ring] / n), frame.y(sum[ring] / n))
   }
   return path.length > 2 ? [polyline(path, { stroke: RULE, lineWidth_pt: 1.2 })] : []
 }
@@ -89,11 +89,11 @@ function points(frame: ChartFrame, radius: Float64Array, input: RadialProfileInp
   const every = Math.ceil(radius.length / MOST_POINTS)
   const shapes: Shape[] = []
   for (let i = 0; i < radius.length; i++) {
-    const value = sites.value[i]!
+    const value = sites.value[i]
     if (!Number.isFinite(value) || !Number.isFinite(radius[i])) continue
-    const kind = markOf(sites.verdict[i]!, value, limits)
+    const kind = markOf(sites.verdict[i], value, limits)
     if (kind === 'in-spec' && i % every !== 0) continue
-    const x = frame.x(radius[i]!)
+    const x = frame.x(radius[i])
     const y = frame.y(value)
     shapes.push(mark(kind, x, y, kind === 'in-spec' ? 3 : 2.4))
     if (shapes.length > 2 * MOST_POINTS) break

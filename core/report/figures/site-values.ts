@@ -33,11 +33,11 @@ export function siteValues(
   const wishes = sites.map(({ key, kind }): LabelWish => {
     const isTold = sites.length <= MOST_VALUES || kind !== 'in-spec' || ends.includes(key)
     return {
-      x: plane.x(x_mm[key]!),
-      y: plane.y(y_mm[key]!),
-      text: formatFixed(value[key]!, decimals),
-      empty: !isTold || Number.isNaN(value[key]!),
-      preferAbove: y_mm[key]! < 0,
+      x: plane.x(x_mm[key]),
+      y: plane.y(y_mm[key]),
+      text: formatFixed(value[key], decimals),
+      empty: !isTold || Number.isNaN(value[key]),
+      preferAbove: y_mm[key] < 0,
       markHalf,
       room,
       key,
@@ -65,16 +65,16 @@ function extremeSites(values: ArrayLike<number>): readonly [lowest: number, high
   let lowest = -1
   let highest = -1
   for (let i = 0; i < values.length; i++) {
-    if (Number.isNaN(values[i]!)) continue
-    if (lowest < 0 || values[i]! < values[lowest]!) lowest = i
-    if (highest < 0 || values[i]! > values[highest]!) highest = i
+    if (Number.isNaN(values[i])) continue
+    if (lowest < 0 || values[i] < values[lowest]) lowest = i
+    if (highest < 0 || values[i] > values[highest]) highest = i
   }
   return [lowest, highest]
 }
 
 /** A label that would lie on a thin line gets a patch of its site's colour behind it. */
 function valueLabel(label: PlacedLabel, input: WaferMapInput, plane: Plane): Shape[] {
-  const ground = input.contours ? input.scale.colours[bandOf(input.scale, input.sites.value[label.key]!)]! : FAINT
+  const ground = input.contours ? input.scale.colours[bandOf(input.scale, input.sites.value[label.key])] : FAINT
   const ink = isDark(ground) ? PAPER : INK
   const shape = text(label.x, label.baseline, label.text, { size_pt: VALUE_PT, fill: ink, anchor: 'middle' })
   if (!liesOnLine(label, input, plane)) return [shape]
@@ -99,13 +99,13 @@ function liesOnLine(label: PlacedLabel, { outline, edgeExclusion_mm, diesOut }: 
   return diesOut.centreX_mm.some(
     (x, i) =>
       Math.abs(x - x_mm) < diesOut.pitchX_mm / 2 + reach_mm &&
-      Math.abs(diesOut.centreY_mm[i]! - y_mm) < diesOut.pitchY_mm / 2 + VALUE_PT / scale,
+      Math.abs(diesOut.centreY_mm[i] - y_mm) < diesOut.pitchY_mm / 2 + VALUE_PT / scale,
   )
 }
 
 /** Four significant digits at the largest value, the same decimals for all. */
 export function siteDecimals(values: ArrayLike<number>): number {
   let largest = 0
-  for (let i = 0; i < values.length; i++) if (Math.abs(values[i]!) > largest) largest = Math.abs(values[i]!)
+  for (let i = 0; i < values.length; i++) if (Math.abs(values[i]) > largest) largest = Math.abs(values[i])
   return largest > 0 ? Math.max(0, Math.min(8, 3 - Math.floor(Math.log10(largest)))) : 0
 }

@@ -36,8 +36,8 @@ export function smallMap(input: SmallMapInput): Shape[] {
   for (let i = 0; i < sites.value.length; i += every) {
     if (!Number.isFinite(sites.value[i]) || !Number.isFinite(sites.x_mm[i])) continue
     dots.push(
-      circle(plane.x(sites.x_mm[i]!), plane.y(sites.y_mm[i]!), radius, {
-        fill: colourOf(input.scale, sites.value[i]!),
+      circle(plane.x(sites.x_mm[i]), plane.y(sites.y_mm[i]), radius, {
+        fill: colourOf(input.scale, sites.value[i]),
       }),
     )
   }

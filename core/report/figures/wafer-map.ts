@@ -83,7 +83,7 @@ export function waferMap(input: WaferMapInput): Drawing {
   const centreY = field.top + field.height / 2
   const plane: Plane = { scale_pt_per_mm: scale, x: (x) => centreX + x * scale, y: (y) => centreY - y * scale }
   const marks = Array.from({ length: input.sites.value.length }, (_, i) =>
-    markOf(input.sites.verdict[i]!, input.sites.value[i]!, input.limits),
+    markOf(input.sites.verdict[i], input.sites.value[i], input.limits),
   )
   const bottom = centreY + extent.halfHeight_mm * scale
   return {
@@ -118,7 +118,7 @@ export function bandShapes(contours: readonly MapContour[], scale: BandScale, pl
       kind: 'rings',
       closed: true,
       rings: contour.rings_mm.map((ring) => ringToPoints(ring, plane)),
-      fill: scale.colours[bandOf(scale, contour.threshold)]!,
+      fill: scale.colours[bandOf(scale, contour.threshold)],
     }))
 }
 
@@ -184,8 +184,8 @@ function diesOut(dies: MapDies | null, plane: Plane): Shape[] {
     const width = dies.pitchX_mm * plane.scale_pt_per_mm
     const height = dies.pitchY_mm * plane.scale_pt_per_mm
     const x = plane.x(x_mm) - width / 2
-    const y = plane.y(dies.centreY_mm[i]!) - height / 2
-    return rectangle(x + 0.5, y + 0.5, width - 1, height - 1, {}).rings[0]!
+    const y = plane.y(dies.centreY_mm[i]) - height / 2
+    return rectangle(x + 0.5, y + 0.5, width - 1, height - 1, {}).rings[0]
   })
   return [
     { kind: 'rings', rings, closed: true, stroke: PAPER, lineWidth_pt: 1.3 },
@@ -205,13 +205,13 @@ function siteMarks(input: WaferMapInput, plane: Plane, marks: readonly MarkKind[
   const shapes: Shape[] = []
   const drawn: MarkedSite[] = []
   for (let i = 0; i < marks.length && drawn.length < MOST_MARKS; i++) {
-    const kind = marks[i]!
+    const kind = marks[i]
     if (kind === 'in-spec' && !withDots) continue
     if (!Number.isFinite(sites.x_mm[i]) || !Number.isFinite(sites.y_mm[i])) continue
     drawn.push({ key: i, kind })
     const onDark =
-      input.contours !== null && kind !== 'not-assessed' && isDark(scale.colours[bandOf(scale, sites.value[i]!)]!)
-    shapes.push(mark(kind, plane.x(sites.x_mm[i]!), plane.y(sites.y_mm[i]!), size, { onDark, rim: true }))
+      input.contours !== null && kind !== 'not-assessed' && isDark(scale.colours[bandOf(scale, sites.value[i])])
+    shapes.push(mark(kind, plane.x(sites.x_mm[i]), plane.y(sites.y_mm[i]), size, { onDark, rim: true }))
   }
   return [...shapes, ...siteValues(drawn, size, input, plane)]
 }
@@ -221,8 +221,8 @@ function mapDescription(input: WaferMapInput, marks: readonly MarkKind[]): strin
   let min = Infinity
   let max = -Infinity
   for (let i = 0; i < sites.value.length; i++) {
-    if (sites.value[i]! < min) min = sites.value[i]!
-    if (sites.value[i]! > max) max = sites.value[i]!
+    if (sites.value[i] < min) min = sites.value[i]
+    if (sites.value[i] > max) max = sites.value[i]
   }
   const range =
     min <= max

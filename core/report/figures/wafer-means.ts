@@ -26,8 +26,8 @@ export function waferMeans(input: WaferMeansInput): Drawing {
   const count = input.names.length
   const ends: number[] = []
   for (let i = 0; i < count; i++) {
-    const spread = input.spread[i]! > 0 ? input.spread[i]! : 0
-    if (Number.isFinite(input.mean[i])) ends.push(input.mean[i]! - spread, input.mean[i]! + spread)
+    const spread = input.spread[i] > 0 ? input.spread[i] : 0
+    if (Number.isFinite(input.mean[i])) ends.push(input.mean[i] - spread, input.mean[i] + spread)
   }
   const whole = padded(ends, 0)
   const frame = chartFrame({
@@ -46,7 +46,7 @@ export function waferMeans(input: WaferMeansInput): Drawing {
     if (i % every === 0) {
       shapes.push(line(x, frame.bottom, x, frame.bottom + 2.5, { stroke: QUIET_INK, lineWidth_pt: 0.5 }))
       shapes.push(
-        text(x, frame.bottom + 10, shortName(input.names[i]!), { size_pt: AXIS_PT, fill: QUIET_INK, anchor: 'middle' }),
+        text(x, frame.bottom + 10, shortName(input.names[i]), { size_pt: AXIS_PT, fill: QUIET_INK, anchor: 'middle' }),
       )
     }
   }
@@ -62,9 +62,9 @@ export function waferMeans(input: WaferMeansInput): Drawing {
 function meanMarks(input: WaferMeansInput, x: (i: number) => number, y: (value: number) => number): Shape[] {
   const shapes: Shape[] = []
   for (let i = 0; i < input.names.length; i++) {
-    const mean = input.mean[i]!
+    const mean = input.mean[i]
     if (!Number.isFinite(mean)) continue
-    const spread = input.spread[i]!
+    const spread = input.spread[i]
     if (spread > 0) {
       shapes.push(
         line(x(i + 1), y(mean - spread), x(i + 1), y(mean + spread), { stroke: QUIET_INK, lineWidth_pt: 0.8 }),
@@ -78,7 +78,7 @@ function meanMarks(input: WaferMeansInput, x: (i: number) => number, y: (value: 
 /** A triangle only where the mean itself is beyond its limit; a wafer may be out for another reason. */
 function waferMark(input: WaferMeansInput, i: number): MarkKind {
   const { limits } = input
-  const mean = input.mean[i]!
+  const mean = input.mean[i]
   if (mean > limits.upper) return 'above'
   if (mean < limits.lower) return 'below'
   return input.verdict[i] === 2 ? markOf(2, mean, limits) : 'in-spec'

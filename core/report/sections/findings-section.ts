@@ -70,23 +70,22 @@ function sitesOut(context: ReportContext): Block[] {
   const { analysis, siteLimits } = context
   const { sites, readings, quantity } = analysis
   const out: number[] = []
-  for (let i = 0; i < sites.count; i++) if (VERDICTS[sites.verdict[i]!] === 'out-of-spec') out.push(i)
+  for (let i = 0; i < sites.count; i++) if (VERDICTS[sites.verdict[i]] === 'out-of-spec') out.push(i)
   if (out.length === 0) return []
-  const beyond = (i: number) =>
-    Math.max(sites.value[i]! - siteLimits.upper || 0, siteLimits.lower - sites.value[i]! || 0)
+  const beyond = (i: number) => Math.max(sites.value[i] - siteLimits.upper || 0, siteLimits.lower - sites.value[i] || 0)
   const worst = [...out].sort((a, b) => beyond(b) - beyond(a) || a - b).slice(0, MOST_SITES)
   const positions = worst.map((i) => positionOf(context, i))
   const rows = worst.map((i, at): TableRow => ({
     cells: [
-      readings.wafers[readings.wafer[i]!]!.id,
-      readings.siteNames[readings.site[i]!] ?? '',
-      ...positions[at]!,
+      readings.wafers[readings.wafer[i]]!.id,
+      readings.siteNames[readings.site[i]] ?? '',
+      ...positions[at],
       '',
-      formatWithUncertainty(sites.value[i]!, sites.u[i]!, quantity.unit),
-      formatFixed(100 * sites.conformanceProbability[i]!, 1),
+      formatWithUncertainty(sites.value[i], sites.u[i], quantity.unit),
+      formatFixed(100 * sites.conformanceProbability[i], 1),
       '',
     ],
-    mark: markOf(sites.verdict[i]!, sites.value[i]!, siteLimits),
+    mark: markOf(sites.verdict[i], sites.value[i], siteLimits),
     markColumn: 5,
   }))
   const rest = out.length - worst.length
@@ -116,7 +115,7 @@ function sitesOut(context: ReportContext): Block[] {
 function positionOf(context: ReportContext, site: number): readonly [string, string] {
   const { positions } = context
   const mm = (value: number) => formatMm(value).replace(/ mm$/, '')
-  return positions ? [mm(positions.x_mm[site]!), mm(positions.y_mm[site]!)] : ['–', '–']
+  return positions ? [mm(positions.x_mm[site]), mm(positions.y_mm[site])] : ['–', '–']
 }
 
 function meansFigure(context: ReportContext): Block[] {

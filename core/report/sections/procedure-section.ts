@@ -72,7 +72,7 @@ export function unitOfKey(key: string): string {
   const words = key.split('.').reverse()
   for (const word of words.slice(0, 2)) {
     const found = UNIT_ENDINGS.find(([ending]) => word.endsWith(ending))
-    const inherits = word === words[0] || INHERITING.has(words[0]!)
+    const inherits = word === words[0] || INHERITING.has(words[0])
     if (found && inherits) return found[1]
   }
   return ''

@@ -1,4 +1,5 @@
 /** The report's first page: what was measured, what came of it, and every wafer in a line. */
+import { plural } from '../../conformity/reasons'
 import type { LotAnalysis } from '../../analysis/lot-analysis'
 import type { Block, KeyValue, TableBlock, TableColumn, TableRow } from '../document'
 import { lotStrip } from '../figures/lot-strip'
@@ -32,7 +33,8 @@ export function summarySection(context: ReportContext): Block[] {
 }
 
 /** 2026-03-14 09:30 +01:00: the time as given, without its seconds. */
-export function writtenDate(date: string): string {
+export function writtenDate(date: string | null): string {
+  if (date === null) return 'undated'
   return date
     .replace(/T(\d\d:\d\d)(:\d\d(\.\d+)?)?/, ' $1 ')
     .replace(/ Z$/, ' UTC')
@@ -57,7 +59,10 @@ function measured({ analysis, siteLimits, meanLimits, input }: ReportContext): K
     },
     { key: 'Readings', value: shortList(files, 2) },
     { key: 'Sites allowed out', value: `${allowedSitesOut} a wafer` },
-    { key: 'Extent', value: `${analysis.wafers.length} wafers, ${withValue} of ${sites.count} sites with a value` },
+    {
+      key: 'Extent',
+      value: `${plural(analysis.wafers.length, 'wafer')}, ${withValue} of ${sites.count} sites with a value`,
+    },
     { key: 'Made by', value: input.program },
     ...measuredAt(readings.time_ms),
   ]

@@ -120,5 +120,5 @@ function typicalSite({ analysis }: ReportContext): KeyValue[] {
 
 function medianOf(column: Float64Array): number {
   const sorted = column.filter(Number.isFinite).sort()
-  return sorted.length > 0 ? sorted[Math.floor((sorted.length - 1) / 2)]! : NaN
+  return sorted.length > 0 ? sorted[Math.floor((sorted.length - 1) / 2)] : NaN
 }

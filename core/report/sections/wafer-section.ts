@@ -135,9 +135,9 @@ function diesOutOf(wafer: WaferAnalysis, { analysis }: ReportContext): MapDies |
   const centreX_mm: number[] = []
   const centreY_mm: number[] = []
   for (let i = 0; i < dies.count; i++) {
-    if (dies.wafer[i] !== wafer.index || VERDICTS[dies.verdict[i]!] !== 'out-of-spec') continue
-    centreX_mm.push(dies.x_mm[i]!)
-    centreY_mm.push(dies.y_mm[i]!)
+    if (dies.wafer[i] !== wafer.index || VERDICTS[dies.verdict[i]] !== 'out-of-spec') continue
+    centreX_mm.push(dies.x_mm[i])
+    centreY_mm.push(dies.y_mm[i])
   }
   return { centreX_mm, centreY_mm, pitchX_mm: procedure.dieGrid.pitchXMm, pitchY_mm: procedure.dieGrid.pitchYMm }
 }
