@@ -24,7 +24,7 @@ export function procedureKeys(): readonly ProcedureKey[] {
     const layerKinds = [...(before?.layerKinds ?? []), ...(layerKind === null ? [] : [layerKind])]
     found.set(key, {
       key,
-      meaning: MEANINGS[key] ?? '',
+      meaning: meaningOf(key),
       unit: unitOf(path),
       allowed:
         key === 'layer.kind' ? layerKinds.map((kind) => JSON.stringify(kind)).join(', ') : allowedWords(shape, path),
@@ -52,7 +52,7 @@ function leaves(path: KeyPath, shape: KeyShape, layerKind: string | null): reado
     return kinds.flatMap((kind) => leaves(path, kind, String(kind.properties?.['kind']?.const)))
   }
   if (!shape.properties) return [{ path, shape, layerKind }]
-  return knownKeys(shape).flatMap((key) => leaves([...path, key], shape.properties![key]!, layerKind))
+  return knownKeys(shape).flatMap((key) => leaves([...path, key], shape.properties![key], layerKind))
 }
 
 const LIMIT_MEANINGS = (what: string, on: string): Record<string, string> => ({
@@ -120,4 +120,35 @@ const MEANINGS: Readonly<Record<string, string>> = {
   'readings.delimiter': 'what separates the columns of the file',
   'readings.decimalMark': 'decimal mark of the file',
   'reported.factor': 'constant that a reported sheet resistance was made with; V/I is recovered from it',
+  $schema: 'where an editor finds the description of this format; the program does not read it',
+}
+
+/** Of what holds keys, and of keys that are one of two ways to write a value. */
+const SECTION_MEANINGS: Readonly<Record<string, string>> = {
+  wafer: 'what is probed',
+  probe: 'the four pins and how they are used',
+  'probe.orientation.angleDeg': 'angle of the pin line from +x',
+  layer: 'what conducts, and what the sheet resistance is turned into',
+  'layer.constantMobility': 'the two numbers of the mobility model "constant"',
+  'layer.background': 'the wafer under the layer',
+  temperature: 'temperature of the measurement and of the results',
+  limits: 'what a site, a wafer and the lot must keep to',
+  'limits.sheetResistanceOhmSq': 'limits of a site',
+  'limits.waferMeanOhmSq': "limits of a wafer's mean",
+  'limits.resistivityOhmCm': 'limits of a site',
+  'limits.waferMeanOhmCm': "limits of a wafer's mean",
+  'limits.uniformityPercent': 'limit of the non-uniformity of a wafer',
+  dieGrid: 'the dies of a wafer; without it none are judged',
+  uncertainty: 'standard uncertainties of what goes into the results',
+  readings: 'how the file with the readings is read, where that is not left to the program',
+  'readings.columns.*': 'header of this column in the file',
+  'readings.columns.*.header': 'header of this column in the file',
+  'readings.columns.*.unit': 'unit of this column, where the header does not name it',
+  reported: 'how values that the file reports ready made came about',
+}
+
+/** Of a key or a section; `*` stands for a key that may be any of several. Empty where there is no such key. */
+export function meaningOf(key: string): string {
+  const meanings = Object.hasOwn(MEANINGS, key) ? MEANINGS : SECTION_MEANINGS
+  return Object.hasOwn(meanings, key) ? meanings[key] : ''
 }

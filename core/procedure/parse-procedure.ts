@@ -6,6 +6,8 @@ import { defaultsUsed } from './defaults-used'
 import type { DefaultUsed } from './defaults-used'
 import { dotted, isObject, valueAt } from './key-shape'
 import type { KeyPath } from './key-shape'
+import { migrate, migrations } from './migrate'
+import type { Migration } from './migrate'
 import { scanJson } from './scan-json'
 import { procedureSchema } from './schema'
 import type { Procedure } from './schema'
@@ -17,26 +19,39 @@ export interface ParsedProcedure {
   readonly procedure: Procedure | null
   readonly defaults: readonly DefaultUsed[]
   readonly problems: readonly ProcedureProblem[]
+  /** The older edition of the format that the file is written in; null where it is the current one. */
+  readonly migratedFrom: string | null
 }
 
 /** `file` names the file in problems; a byte order mark before the text is passed over. */
-export function parseProcedure(text: string, file: string): ParsedProcedure {
+export function parseProcedure(
+  text: string,
+  file: string,
+  register: readonly Migration[] = migrations,
+): ParsedProcedure {
   const json = text.startsWith('\uFEFF') ? text.slice(1) : text
   const { fault, doubledKeys } = scanJson(json)
   if (fault) {
     const why = `line ${fault.line}, column ${fault.column}: ${fault.why}`
-    return { procedure: null, defaults: [], problems: [{ kind: 'not-json', file, why }] }
+    return refused([{ kind: 'not-json', file, why }])
   }
-  const written: unknown = JSON.parse(json)
+  const { written, from, problem } = migrate(JSON.parse(json), file, register)
+  // What an unread edition means by its other keys isn't known either.
+  if (problem) return refused([problem])
   const shape = [...schemaProblems(written, file), ...prototypeKeys(written, file)]
   const problems = [
     ...doubledKeys.map((key) => doubledKey(key, file)),
     ...shape.map(({ problem }) => problem),
     ...crossChecks(readableSections(written, shape), file).filter(isNewsBeside(shape)),
   ].filter(isNotMisspelt(shape))
-  if (problems.length > 0) return { procedure: null, defaults: [], problems }
+  if (problems.length > 0) return refused(problems)
   const procedure = procedureSchema.parse(written)
-  return { procedure, defaults: defaultsUsed(written, procedure), problems: [] }
+  delete procedure.$schema
+  return { procedure, defaults: defaultsUsed(written, procedure), problems: [], migratedFrom: from }
+}
+
+function refused(problems: readonly ProcedureProblem[]): ParsedProcedure {
+  return { procedure: null, defaults: [], problems, migratedFrom: null }
 }
 
 function schemaProblems(written: unknown, file: string): readonly ShapeProblem[] {

@@ -155,9 +155,11 @@ export const procedureSchema = z.strictObject({
   readings: readings.prefault({}),
   /** With which constant a reported sheet resistance was made, so that V/I can be recovered and corrected anew. */
   reported: z.strictObject({ factor: positive(100) }).optional(),
+  /** For editors that check a file as it is written; nothing here reads it. */
+  $schema: z.string().max(1000).optional(),
 })
 
 /** As written: every defaulted key may be absent. */
 export type ProcedureInput = z.input<typeof procedureSchema>
 /** As used: every default filled in. */
-export type Procedure = z.output<typeof procedureSchema>
+export type Procedure = Omit<z.output<typeof procedureSchema>, '$schema'>

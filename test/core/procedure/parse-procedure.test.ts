@@ -182,7 +182,8 @@ describe('keys', () => {
 
 describe('values', () => {
   it.each([
-    [{ format: 'persquare-procedure/2' }, 'format', '"persquare-procedure/2"', '"persquare-procedure/1"'],
+    [{ format: 'persquare-procedure/2' }, 'format', '"persquare-procedure/2"', '"persquare-procedure/1": a newer edition needs a newer program'],
+    [{ format: 'procedure' }, 'format', '"procedure"', '"persquare-procedure/1"'],
     [{ title: 7 }, 'title', '7', 'a text of at most 200 characters'],
     [{ wafer: { shape: 'disk' } }, 'wafer.shape', '"disk"', '"disc" or "rectangle"'],
     [{ wafer: { thicknessUm: 0 } }, 'wafer.thicknessUm', '0', 'a number above 0 and up to 20000 µm'],
@@ -195,7 +196,7 @@ describe('values', () => {
     [{ probe: { orientation: { angleDeg: 999 } } }, 'probe.orientation.angleDeg', '999', 'a number from -360 to 360 °'],
     [{ layer: { kind: 'epi' } }, 'layer.kind', '"epi"', '"sheet", "bulk", "doped-layer", "implant" or "film"'],
     [{ layer: 3 }, 'layer', '3', 'an object in braces whose "kind" is "sheet", "bulk", "doped-layer", "implant" or "film"'],
-    [{ layer: { ...boron, background: { dopant: 'arsenic', concentrationCm3: 5 } } }, 'layer.background.concentrationCm3', '5', 'a number from 1e10 to 1e22 cm⁻³'],
+    [{ layer: { ...boron, background: { dopant: 'arsenic', concentrationCm3: 5 } } }, 'layer.background.concentrationCm3', '5', 'a number from 1e10 to 1e20 cm⁻³'],
     [{ layer: { kind: 'bulk', dopant: 'boron', mobility: 'none' } }, 'layer.mobility', '"none"', /"masetti", "arora"/],
     [{ temperature: { referenceC: 300 } }, 'temperature.referenceC', '300', 'a number from 18 to 28 °C'],
     [{ temperature: { coefficientPercentPerC: 50 } }, 'temperature.coefficientPercentPerC', '50', 'a number from -10 to 10 %/°C'],
