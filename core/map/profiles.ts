@@ -15,7 +15,7 @@ export interface AzimuthalProfile {
   readonly site: Uint32Array
 }
 
-interface SiteColumnsOfWafer {
+export interface SiteColumnsOfWafer {
   readonly x_mm: Float64Array
   readonly y_mm: Float64Array
   readonly value: Float64Array
@@ -26,7 +26,7 @@ interface SiteColumnsOfWafer {
 /** Values by distance from the centre, nearest first. */
 export function radialProfile(columns: SiteColumnsOfWafer): RadialProfile {
   const radius = (site: number) => Math.hypot(columns.x_mm[site]!, columns.y_mm[site]!)
-  const site = usable(columns).sort((a, b) => radius(a) - radius(b) || a - b)
+  const site = usableSites(columns).sort((a, b) => radius(a) - radius(b) || a - b)
   return { r_mm: Float64Array.from(site, radius), value: Float64Array.from(site, (i) => columns.value[i]!), site }
 }
 
@@ -34,7 +34,7 @@ export function radialProfile(columns: SiteColumnsOfWafer): RadialProfile {
 export function azimuthalProfile(columns: SiteColumnsOfWafer, innermost_mm: number): AzimuthalProfile {
   const radius = (site: number) => Math.hypot(columns.x_mm[site]!, columns.y_mm[site]!)
   const angle = (site: number) => angle_deg(columns.x_mm[site]!, columns.y_mm[site]!)
-  const site = usable(columns)
+  const site = usableSites(columns)
     .filter((i) => radius(i) > 0 && radius(i) >= innermost_mm)
     .sort((a, b) => angle(a) - angle(b) || a - b)
   return {
@@ -51,7 +51,8 @@ function angle_deg(x_mm: number, y_mm: number): number {
   return angle < 0 ? (angle + 360) % 360 : angle
 }
 
-function usable({ x_mm, y_mm, value, sites }: SiteColumnsOfWafer): Uint32Array {
+/** Rows with a place and a value. */
+export function usableSites({ x_mm, y_mm, value, sites }: SiteColumnsOfWafer): Uint32Array {
   const rows = sites ?? Uint32Array.from(value.keys())
   return rows.filter((i) => !Number.isNaN(x_mm[i]!) && !Number.isNaN(y_mm[i]!) && !Number.isNaN(value[i]!))
 }
