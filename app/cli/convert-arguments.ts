@@ -23,16 +23,24 @@ export function namedOptions<const Kinds extends OptionKinds>(args: readonly str
     return values as Values<Kinds>
   } catch (error) {
     if (error instanceof CoreError) throw error
-    return refuse(args.join(' '), error instanceof Error ? (error.message.split('\n')[0] ?? '') : String(error))
+    return refuseAsNode(error, args)
   }
 }
 
-/** A value that begins with a minus sign would be taken for an option; joined to its name it is not. */
+/** What Node says of an option it can't read, in our words where it leaves its value out. */
+function refuseAsNode(error: unknown, args: readonly string[]): never {
+  const message = error instanceof Error ? (error.message.split('\n')[0] ?? '') : String(error)
+  const name = /'(--?[\w-]+)/.exec(message)?.[1] ?? args.join(' ')
+  const isValueMissing = /argument (missing|is ambiguous)/.test(message)
+  return refuse(name, isValueMissing ? 'it needs a value after it' : message)
+}
+
+/** A value that begins with a minus sign would be taken for an option; joined to its name it is not. Ours have long names alone. */
 function withNegatives(args: readonly string[]): string[] {
   const joined: string[] = []
   for (const arg of args) {
     const before = joined.at(-1)
-    const isValue = /^-[\d.]/.test(arg) && before !== undefined && /^--[^=]+$/.test(before)
+    const isValue = /^-[^-]/.test(arg) && before !== undefined && /^--[^=]+$/.test(before)
     if (isValue) joined[joined.length - 1] = `${before}=${arg}`
     else joined.push(arg)
   }

@@ -1,6 +1,7 @@
 /** The options of `persquare convert`, as the question core answers. */
 import type { ConversionQuery, ConversionStart } from '../../core/conversion/conversion'
 import { kelvinOf, temperatureSeries_K } from '../../core/conversion/over-temperature'
+import { THIN_FOR_EVERY_PROBE_UM } from '../../core/conversion/probed-sheet'
 import type { Dopant } from '../../core/silicon/dopants'
 import { DOPANTS } from '../../core/silicon/dopants'
 import type { MobilityModel } from '../../core/silicon/mobility-model'
@@ -105,7 +106,8 @@ function placeOf(given: Given) {
   if (diameter_mm === undefined && idle !== undefined) {
     refuse(`--${idle}`, 'a place matters only on a wafer of known size; give --diameter-mm')
   }
-  const isNeeded = diameter_mm !== undefined || given['thickness-um'] !== undefined
+  const thickness_um = numberIn(given, 'thickness-um')
+  const isNeeded = diameter_mm !== undefined || (thickness_um !== undefined && thickness_um > THIN_FOR_EVERY_PROBE_UM)
   if (isNeeded && spacing_mm === undefined) {
     refuse('--spacing-mm', 'give the pin spacing: the corrections for edge and thickness are counted in it')
   }

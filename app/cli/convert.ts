@@ -30,9 +30,14 @@ export const CONVERT_USAGE = `usage: persquare convert (one value) [options]
 exit status: 0 converted; 2 not converted`
 
 export async function convertCommand(args: readonly string[]): Promise<number> {
+  process.stdout.write(converted(args))
+  return 0
+}
+
+/** What is printed. @throws CoreError bad-argument, out-of-range, not-applicable */
+export function converted(args: readonly string[]): string {
   const { query, output } = convertOptions(args)
   const conversion = convert(query)
   const isResistor = query.resistor !== undefined
-  process.stdout.write(output === 'json' ? conversionJson(conversion, { isResistor }) : conversionText(conversion))
-  return 0
+  return output === 'json' ? conversionJson(conversion, { isResistor }) : conversionText(conversion)
 }

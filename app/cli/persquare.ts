@@ -1,7 +1,6 @@
 #!/usr/bin/env node
 import { explain } from '../../core/problems/explain'
 import { CoreError } from '../../core/problems/problem'
-import { analyzeCommand } from './analyze'
 import { CONVERT_USAGE, convertCommand } from './convert'
 import { SITES_USAGE, sitesCommand } from './sites'
 import { PROGRAM, VERSION } from './version'
@@ -27,7 +26,8 @@ interface Command {
 }
 
 const commands: Record<string, Command> = {
-  analyze: { run: analyzeCommand, usage: ANALYZE_USAGE },
+  // Loaded when asked for: the readers and the PDF writer behind it take longer to load than a conversion to make.
+  analyze: { run: async (args) => (await import('./analyze')).analyzeCommand(args), usage: ANALYZE_USAGE },
   convert: { run: convertCommand, usage: CONVERT_USAGE },
   sites: { run: sitesCommand, usage: SITES_USAGE },
 }

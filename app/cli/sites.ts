@@ -40,8 +40,13 @@ const OPTIONS = {
 type Given = ReturnType<typeof namedOptions<typeof OPTIONS>>
 
 export async function sitesCommand(args: readonly string[]): Promise<number> {
-  process.stdout.write(planCsv(planOf(namedOptions(args, OPTIONS))))
+  process.stdout.write(sitesCsv(args))
   return 0
+}
+
+/** What is printed. @throws CoreError bad-argument, out-of-range */
+export function sitesCsv(args: readonly string[]): string {
+  return planCsv(planOf(namedOptions(args, OPTIONS)))
 }
 
 function planOf(given: Given): SitePlan {

@@ -2,7 +2,7 @@
 import { criticalEdgeDistance_mm } from '../geometry/edge-and-thickness'
 import { pinPositions } from '../geometry/pin-line'
 import type { Placement } from '../geometry/pin-line'
-import { thicknessFactor } from '../geometry/thickness'
+import { THICKNESS_SOURCE, thicknessFactor } from '../geometry/thickness'
 import { thinSheetFactor } from '../geometry/thin-sheet'
 import { CoreError } from '../problems/problem'
 import { formatMm, formatSignificant } from '../units/format'
@@ -15,6 +15,12 @@ export interface ProbedSheet {
   readonly sheetResistance_ohm_sq: number
   readonly steps: readonly ConversionStep[]
 }
+
+/**
+ * A layer no thicker than this on an insulating back has a thickness factor of 1 within 1e-6 under every probe whose pins are half a
+ * millimetre apart or more, so the spacing needn't be known [um].
+ */
+export const THIN_FOR_EVERY_PROBE_UM = 100
 
 interface Factor {
   readonly value: number
@@ -104,6 +110,8 @@ function geometryFactorOf(place: ProbedPlace): Factor {
 }
 
 function thicknessFactorOf(place: ProbedPlace, thickness_um: number): Factor {
+  const isThin = thickness_um <= THIN_FOR_EVERY_PROBE_UM && place.back === 'insulating'
+  if (place.spacing_mm === undefined && isThin) return thinFactor()
   const spacing_mm = spacingOf(place)
   const { value, source } = thicknessFactor({ thickness_um, spacing_mm, back: place.back })
   const ratio = formatSignificant(thickness_um / 1000 / spacing_mm, 4)
@@ -118,6 +126,12 @@ function thicknessFactorOf(place: ProbedPlace, thickness_um: number): Factor {
       source,
     },
   }
+}
+
+function thinFactor(): Factor {
+  const formula = '1 for a layer so thin, under pins 0.5 mm apart or more'
+  const named = { symbol: 'F', title: 'Thickness factor, insulating back', formula, source: THICKNESS_SOURCE }
+  return { value: 1, step: { ...named, value: 1, unit: '' } }
 }
 
 /** Near an edge the two factors are no plain product. */

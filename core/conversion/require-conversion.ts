@@ -21,15 +21,15 @@ export function requireConversion(query: ConversionQuery): void {
 function requireStart(start: ConversionStart): void {
   switch (start.from) {
     case 'v-over-i':
-      return requireRange('V/I', start.vOverI_ohm, 'ohm', 1e-12, 1e15)
+      return requireRange('V/I', start.vOverI_ohm, 'ohm', 1e-9, 1e21)
     case 'sheet-resistance':
-      return requireRange('sheet resistance', start.sheetResistance_ohm_sq, 'ohm/sq', 1e-12, 1e15)
+      return requireRange('sheet resistance', start.sheetResistance_ohm_sq, 'ohm/sq', 1e-9, 1e21)
     case 'resistivity':
-      return requireRange('resistivity', start.resistivity_ohm_cm, 'ohm cm', 1e-12, 1e15)
+      return requireRange('resistivity', start.resistivity_ohm_cm, 'ohm cm', 1e-9, 1e12)
     case 'concentration':
       return requireRange('concentration', start.concentration_cm3, 'cm^-3', 0, 1e22)
     case 'resistance':
-      return requireRange('resistance', start.resistance_ohm, 'ohm', 1e-12, 1e15)
+      return requireRange('resistance', start.resistance_ohm, 'ohm', 1e-9, 1e21)
   }
 }
 

@@ -1,7 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { CoreError } from '../../../core/problems/problem'
-import { cartesianPlan, concentricPlan, diameterPlan, outerRadius_mm } from '../../../core/wafer/site-patterns'
+import { cartesianPlan, concentricPlan, diameterPlan, outerRadius_mm, roundedSites } from '../../../core/wafer/site-patterns'
 import { CARTESIAN_PLANS, CONCENTRIC_PLANS } from '../../reference/semi-mf1618'
 
 const radii = ({ x_mm, y_mm }: { x_mm: Float64Array; y_mm: Float64Array }) =>
@@ -18,6 +18,12 @@ describe('published values', () => {
 
   it('method B: half the diameter less the edge exclusion', () => {
     expect(outerRadius_mm({ diameter_mm: 200, edgeExclusion_mm: 5 })).toBe(95)
+  })
+
+  it('method A: the outermost spot touches the fixed quality area from inside', () => {
+    const spot_mm = 1.5
+    const radius_mm = outerRadius_mm({ diameter_mm: 200, edgeExclusion_mm: 5, spot_mm })
+    expect(radius_mm + spot_mm / 2).toBe(95)
   })
 })
 
@@ -55,6 +61,20 @@ describe('laws', () => {
     ) // prettier-ignore
   })
 
+  it('rounded to a nanometre both forms name one place; axes are exact, 360 is 0, no zero is negative', () => {
+    const plan = concentricPlan({ circles: 5, outerRadius_mm: 95 })
+    const { x_mm, y_mm, r_mm, theta_deg } = roundedSites(plan)
+    for (let i = 0; i < plan.count; i++) {
+      expect(Math.abs(x_mm[i] - plan.x_mm[i])).toBeLessThan(5.1e-7)
+      expect(Math.abs(y_mm[i] - plan.y_mm[i])).toBeLessThan(5.1e-7)
+      const angle = (theta_deg[i] * Math.PI) / 180
+      expect(Math.hypot(r_mm[i] * Math.cos(angle) - x_mm[i], r_mm[i] * Math.sin(angle) - y_mm[i])).toBeLessThan(3e-6)
+    }
+    expect([...theta_deg.slice(1, 9)]).toEqual([0, 45, 90, 135, 180, 225, 270, 315])
+    for (const column of [x_mm, y_mm, r_mm, theta_deg]) expect(column.some((value) => Object.is(value, -0))).toBe(false)
+    expect(Math.max(...theta_deg)).toBeLessThan(360)
+  })
+
   it('along a diameter: evenly spaced, 2 Ro / (N - 1), end to end', () => {
     const { x_mm, y_mm, count } = diameterPlan({ count: 25, outerRadius_mm: 96 })
     expect(count).toBe(25)
@@ -71,6 +91,9 @@ describe('refusals', () => {
     ['no radius', () => concentricPlan({ circles: 3, outerRadius_mm: 0 })],
     ['an even number of rows', () => cartesianPlan({ rows: 8, outerRadius_mm: 95 })],
     ['one site on a diameter', () => diameterPlan({ count: 1, outerRadius_mm: 95 })],
+    ['a spot of nothing', () => outerRadius_mm({ diameter_mm: 200, edgeExclusion_mm: 5, spot_mm: 0 })],
+    ['a spot as wide as the wafer', () => outerRadius_mm({ diameter_mm: 200, edgeExclusion_mm: 5, spot_mm: 190 })],
+    ['a negative exclusion', () => outerRadius_mm({ diameter_mm: 200, edgeExclusion_mm: -1 })],
     ['an exclusion as wide as the wafer', () => outerRadius_mm({ diameter_mm: 200, edgeExclusion_mm: 100 })],
   ])('%s', (_, call) => expect(call).toThrow(CoreError))
 })
