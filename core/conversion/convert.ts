@@ -2,6 +2,7 @@
 import { CoreError } from '../problems/problem'
 import { concentration_cm3 } from '../silicon/resistivity'
 import { netDopingPieces } from '../silicon/resistivity-curve'
+import type { Material } from '../silicon/resistivity-curve'
 import { calculated, calculatedQuantity } from './calculated'
 import type { Conversion, ConversionQuery, ConversionStep, TemperatureRow } from './conversion'
 import { missingStep, reciprocalStep, resistanceStep, sheetResistanceStep } from './dimension-steps'
@@ -34,7 +35,8 @@ interface Chain extends Electrical {
  * @throws CoreError out-of-range; not-applicable where what is given doesn't fit together
  *
  * Assumes uniform doping through the thickness, every dopant ionised, and the value given at the temperature given: nothing is
- * corrected to a reference temperature. A resistivity that no concentration from 1e12 to 1e21 has ends the way and says so.
+ * corrected to a reference temperature. A resistivity that none, or more than one, of the concentrations
+ * from 1e12 to 1e21 has ends the way and says so.
  * Sources: named step by step.
  */
 export function convert(query: ConversionQuery): Conversion {
@@ -99,16 +101,27 @@ function siliconOf(query: ConversionQuery, rho: number): Silicon {
   if (query.dopant === undefined) return none('no dopant is given, and the mobility depends on it')
   requireSilicon(query)
   const material = materialOf(query)
-  const pieces = netDopingPieces(material)
-  const last = pieces[pieces.length - 1]
-  const min = last.resistivity_ohm_cm(last.max_cm3)
-  const max = pieces[0].resistivity_ohm_cm(pieces[0].min_cm3)
+  const covered = coveredResistivities(material)
+  if (typeof covered === 'string') return none(covered)
+  const { min, max } = covered
   if (!(rho >= min && rho <= max)) {
     const range = `${calculated(min, 'Ω·cm')} to ${calculatedQuantity(max, 'Ω·cm')}`
     return none(`${query.mobility.title} with ${query.dopant} covers ${range}`)
   }
   const state = dopedState(query, concentration_cm3({ ...material, resistivity_ohm_cm: rho }))
   return { state, steps: [foundConcentration(query, rho, state.concentration_cm3), ...carrierSteps(query, state)] }
+}
+
+/** The resistivities that have one concentration [ohm cm], or why there are none. */
+function coveredResistivities(material: Material): { readonly min: number; readonly max: number } | string {
+  try {
+    const pieces = netDopingPieces(material)
+    const last = pieces[pieces.length - 1]
+    return { min: last.resistivity_ohm_cm(last.max_cm3), max: pieces[0].resistivity_ohm_cm(pieces[0].min_cm3) }
+  } catch (error) {
+    if (error instanceof CoreError && error.problem.kind === 'not-applicable') return error.problem.why
+    throw error
+  }
 }
 
 interface Resistance {

@@ -138,6 +138,12 @@ describe('limits', () => {
     expect(found.steps.at(-1)?.formula).toMatch(/Masetti.*boron covers .* to .* Ω·cm/)
   })
 
+  it('gives no concentration where intrinsic carriers let two have one resistivity, but the rest', () => {
+    const found = fromResistivity(5, { dopant: 'boron', mobility: mobilityModel('arora'), temperature_K: 383.15 })
+    expect([found.resistivity_ohm_cm, found.concentration_cm3]).toEqual([5, null])
+    expect(found.steps.at(-1)?.formula).toMatch(/two concentrations/)
+  })
+
   it('names the model beside each concentration, and says that one at 300 K is used as it stands', () => {
     for (const found of [fromResistivity(5, { dopant: 'boron' }), fromConcentration(1e16, { dopant: 'boron' })]) {
       const step = found.steps.find(({ symbol }) => symbol === 'N')

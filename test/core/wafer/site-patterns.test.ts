@@ -1,7 +1,13 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { CoreError } from '../../../core/problems/problem'
-import { cartesianPlan, concentricPlan, diameterPlan, outerRadius_mm, roundedSites } from '../../../core/wafer/site-patterns'
+import {
+  cartesianPlan,
+  concentricPlan,
+  diameterPlan,
+  outerRadius_mm,
+  roundedSites,
+} from '../../../core/wafer/site-patterns'
 import { CARTESIAN_PLANS, CONCENTRIC_PLANS } from '../../reference/semi-mf1618'
 
 const radii = ({ x_mm, y_mm }: { x_mm: Float64Array; y_mm: Float64Array }) =>
