@@ -1,12 +1,8 @@
 import { requireRange } from '../problems/problem'
-import { INTRINSIC_DENSITY_RANGE_K, intrinsicDensity_cm3 } from '../silicon/intrinsic-density'
+import { INTRINSIC_DENSITY_RANGE_K, misiakosTsamakisLaw_cm3 } from '../silicon/intrinsic-density'
 
 /** As far as the mobility models go [K]. */
 export const INTRINSIC_CARRIERS_RANGE_K = { min: INTRINSIC_DENSITY_RANGE_K.min, max: 500 } as const
-
-/** The temperature law of Misiakos and Tsamakis, T^2.54 exp(-6726 K / T). */
-const POWER = 2.54
-const ACTIVATION_K = 6726
 
 /**
  * Intrinsic carrier density of silicon over the whole range of the mobility models: the tool's own to 340 K, and from there carried on
@@ -22,10 +18,7 @@ const ACTIVATION_K = 6726
  */
 export function intrinsicCarriers_cm3({ temperature_K }: { readonly temperature_K: number }): number {
   requireRange('temperature', temperature_K, 'K', INTRINSIC_CARRIERS_RANGE_K.min, INTRINSIC_CARRIERS_RANGE_K.max)
-  if (!isCarriedOn(temperature_K)) return intrinsicDensity_cm3({ temperature_K })
-  const end_K = INTRINSIC_DENSITY_RANGE_K.max
-  const growth = Math.pow(temperature_K / end_K, POWER) * Math.exp(ACTIVATION_K / end_K - ACTIVATION_K / temperature_K)
-  return intrinsicDensity_cm3({ temperature_K: end_K }) * growth
+  return misiakosTsamakisLaw_cm3(temperature_K)
 }
 
 /** Whether the temperature is beyond what the relation was measured over. */

@@ -16,6 +16,11 @@ export const INTRINSIC_DENSITY_SOURCE = 'K. Misiakos, D. Tsamakis, J. Appl. Phys
  */
 export function misiakosTsamakisDensity_cm3({ temperature_K }: { readonly temperature_K: number }): number {
   requireRange('temperature', temperature_K, 'K', INTRINSIC_DENSITY_RANGE_K.min, INTRINSIC_DENSITY_RANGE_K.max)
+  return misiakosTsamakisLaw_cm3(temperature_K)
+}
+
+/** The same without its range: beyond 340 K an extrapolation, and whoever uses it says so. */
+export function misiakosTsamakisLaw_cm3(temperature_K: number): number {
   return 5.29e19 * Math.pow(temperature_K / 300, 2.54) * Math.exp(-6726 / temperature_K)
 }
 
