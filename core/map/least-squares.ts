@@ -1,7 +1,7 @@
 /** Linear least squares by orthogonal columns, for surfaces fitted to sites. */
-import { Matrix, QrDecomposition } from 'ml-matrix'
 import { CoreError } from '../problems/problem'
 import { CompensatedSum } from './compensated-sum'
+import { orthogonalColumns, type OrthogonalColumns } from './householder'
 
 /** A design made ready: one factorisation serves every wafer measured at the same sites. */
 export interface LeastSquares {
@@ -54,7 +54,7 @@ export function prepareLeastSquares(columns: readonly Float64Array[]): LeastSqua
   const lengths = columns.map(length)
   const scales = lengths.map((size) => (size > 0 ? 2 ** -Math.ceil(Math.log2(size)) : 1))
   const scaled = columns.map((column, k) => column.map((entry) => entry * scales[k]))
-  const { q, r } = factors(scaled, rows)
+  const { q, r } = orthogonalColumns(scaled)
   const independence = Float64Array.from(lengths, (size, k) => (size > 0 ? Math.abs(r[k][k]) / (size * scales[k]) : 0))
   const dependent = independence.findIndex((share) => !(share > NOTHING_OF_ITS_OWN))
   return {
@@ -71,25 +71,9 @@ export function prepareLeastSquares(columns: readonly Float64Array[]): LeastSqua
   }
 }
 
-interface Factors {
+interface Factors extends OrthogonalColumns {
   readonly scaled: readonly Float64Array[]
-  /** Orthonormal columns. */
-  readonly q: readonly Float64Array[]
-  /** Upper triangular, r[row][column]. */
-  readonly r: readonly Float64Array[]
   readonly scales: readonly number[]
-}
-
-function factors(scaled: readonly Float64Array[], rows: number): Pick<Factors, 'q' | 'r'> {
-  const design = Matrix.zeros(rows, scaled.length)
-  scaled.forEach((column, k) => {
-    for (let i = 0; i < rows; i++) design.set(i, k, column[i])
-  })
-  const decomposition = new QrDecomposition(design)
-  const orthogonal = decomposition.orthogonalMatrix
-  const triangular = decomposition.upperTriangularMatrix
-  const q = scaled.map((_, k) => Float64Array.from({ length: rows }, (_, i) => orthogonal.get(i, k)))
-  return { q, r: scaled.map((_, k) => Float64Array.from(triangular.getRow(k))) }
 }
 
 function fit(design: Factors, values: Float64Array): LeastSquaresFit {

@@ -18,6 +18,10 @@ export function columnOf({ x_mm, y_mm }: Targets, valueAt: (x: number, y: number
 export const bumpy = (x: number, y: number) =>
   92 + 0.02 * x - 0.01 * y + 3e-4 * (x * x + y * y) + Math.sin(x / 17 + y / 23)
 
+export function changed(column: Float64Array, entry: number, value: number): Float64Array {
+  return column.map((other, i) => (i === entry ? value : other))
+}
+
 export function largestDifference(a: ArrayLike<number>, b: ArrayLike<number>): number {
   expectSameLength(a, b)
   return Array.from(a, (value, i) => Math.abs(value - b[i]!)).reduce((x, y) => Math.max(x, y), 0)

@@ -15,7 +15,7 @@ import { CoreError, type Problem } from '../../../core/problems/problem'
 import { concentricPlan } from '../../../core/wafer/site-patterns'
 import { exactLeastSquares } from './exact-least-squares'
 import { noisy } from './noise'
-import { bumpy, columnOf, largestDifference, spiral } from './patterns' // prettier-ignore
+import { bumpy, changed, columnOf, largestDifference, spiral } from './patterns' // prettier-ignore
 
 const plan = concentricPlan({ circles: 3, outerRadius_mm: 95, startAngle_deg: 90 })
 const finer = concentricPlan({ circles: 5, outerRadius_mm: 95 })
@@ -265,7 +265,7 @@ describe('refusals', () => {
   })
 
   it.each([
-    ['a place that is no number', { x_mm: plan.x_mm.with(3, NaN), y_mm: plan.y_mm }],
+    ['a place that is no number', { x_mm: changed(plan.x_mm, 3, NaN), y_mm: plan.y_mm }],
     ['more x than y', { x_mm: plan.x_mm, y_mm: plan.y_mm.slice(1) }],
   ])('%s', (_, sites) => expect(() => prepareTrendSurface(sites, options)).toThrow(CoreError))
 
