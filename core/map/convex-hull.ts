@@ -26,16 +26,25 @@ export function hullOf(delaunay: Delaunay<unknown>, x_mm: Float64Array, y_mm: Fl
 
 /** 1 for each place inside or on the hull, else 0. */
 export function insideHull(hull: ConvexHull, x_mm: Float64Array, y_mm: Float64Array): Uint8Array {
-  const corners = hull.x_mm.length
   const rim_mm = RIM_SHARE * reach_mm(hull)
   const turn = Math.sign(signedArea(hull))
   const inside = new Uint8Array(x_mm.length)
+  if (turn === 0) {
+    for (let t = 0; t < x_mm.length; t++) inside[t] = isOnSegment(hull, x_mm[t], y_mm[t], rim_mm) ? 1 : 0
+    return inside
+  }
+  const edges = inwardEdges(hull, turn)
+  const corners = hull.x_mm.length
+  // Of a wafer's many places few lie outside; those mostly fail at the edge at which the one before did.
+  let first = 0
   for (let t = 0; t < x_mm.length; t++) {
-    let isInside = turn === 0 ? isOnSegment(hull, x_mm[t]!, y_mm[t]!, rim_mm) : true
-    for (let i = 0; i < corners && isInside && turn !== 0; i++) {
-      isInside = turn * leftOfEdge_mm(hull, i, x_mm[t]!, y_mm[t]!) >= -rim_mm
+    let passed = 0
+    for (let edge = first; passed < corners; passed++, edge = (edge + 1) % corners) {
+      if (edges.x[edge] * x_mm[t] + edges.y[edge] * y_mm[t] - edges.offset_mm[edge] >= -rim_mm) continue
+      first = edge
+      break
     }
-    inside[t] = isInside ? 1 : 0
+    inside[t] = passed === corners ? 1 : 0
   }
   return inside
 }
@@ -49,12 +58,25 @@ export function interleaved(x_mm: Float64Array, y_mm: Float64Array): Float64Arra
   return points
 }
 
-/** Distance to the left of the edge that begins at that corner. */
-function leftOfEdge_mm(hull: ConvexHull, corner: number, x_mm: number, y_mm: number): number {
-  const next = (corner + 1) % hull.x_mm.length
-  const [ax, ay] = [hull.x_mm[corner]!, hull.y_mm[corner]!]
-  const [ex, ey] = [hull.x_mm[next]! - ax, hull.y_mm[next]! - ay]
-  return (ex * (y_mm - ay) - ey * (x_mm - ax)) / Math.hypot(ex, ey)
+/** Unit normals into the hull and how far along them each edge lies from the origin. */
+interface Edges {
+  readonly x: Float64Array
+  readonly y: Float64Array
+  readonly offset_mm: Float64Array
+}
+
+function inwardEdges({ x_mm, y_mm }: ConvexHull, turn: number): Edges {
+  const corners = x_mm.length
+  const edges = { x: new Float64Array(corners), y: new Float64Array(corners), offset_mm: new Float64Array(corners) }
+  for (let i = 0; i < corners; i++) {
+    const next = (i + 1) % corners
+    const [ex, ey] = [x_mm[next] - x_mm[i], y_mm[next] - y_mm[i]]
+    const scale = turn / Math.hypot(ex, ey)
+    edges.x[i] = -ey * scale
+    edges.y[i] = ex * scale
+    edges.offset_mm[i] = edges.x[i] * x_mm[i] + edges.y[i] * y_mm[i]
+  }
+  return edges
 }
 
 function reach_mm({ x_mm, y_mm }: ConvexHull): number {

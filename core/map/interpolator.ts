@@ -19,6 +19,12 @@ export const METHOD_TITLES: Readonly<Record<InterpolationMethod, string>> = {
   mean: 'mean of the sites: too few, or all on one line',
 }
 
+export interface Extrapolation {
+  readonly count: number
+  /** Of the targets counted; of the area where they are evenly spread. 0 for no targets. */
+  readonly share: number
+}
+
 /** Linear in the values, so that one serves every wafer measured at the same sites. */
 export interface Interpolator {
   readonly method: InterpolationMethod
@@ -26,6 +32,8 @@ export interface Interpolator {
   readonly targetCount: number
   /** 1 for each target within the convex hull of the sites; the others are extrapolated, and not to be judged. */
   readonly inside: Uint8Array
+  /** How many of the targets are extrapolated; `extrapolationOf` counts only some of them, e.g. those on the wafer. */
+  readonly extrapolated: Extrapolation
   /** Values at the targets, from one value a site. */
   evaluate(values: Float64Array, out?: Float64Array): Float64Array
   /** Standard uncertainties at the targets from those at the sites, independent of each other. */
@@ -54,6 +62,7 @@ export function prepareInterpolator(x_mm: Float64Array, y_mm: Float64Array, targ
     siteCount: x_mm.length,
     targetCount,
     inside,
+    extrapolated: extrapolationOf(inside),
     evaluate: (values, out = new Float64Array(targetCount)) =>
       surface.evaluate(meansAtDistinctSites(distinct, values), out),
     propagate: (u, out = new Float64Array(targetCount)) => surface.propagate(uncertaintyOfMeans(distinct, u), out),
@@ -62,6 +71,22 @@ export function prepareInterpolator(x_mm: Float64Array, y_mm: Float64Array, targ
       return residuals && Float64Array.from(distinct.distinctOf, (site) => residuals[site]!)
     },
   }
+}
+
+/**
+ * How many targets lie beyond the hull of the sites.
+ *
+ * @param inside   as an interpolator gives it
+ * @param counted  1 for each target that counts, e.g. `onWafer` of a raster; absent: all
+ */
+export function extrapolationOf(inside: Uint8Array, counted?: Uint8Array): Extrapolation {
+  let [count, all] = [0, 0]
+  for (let t = 0; t < inside.length; t++) {
+    if (counted && counted[t] !== 1) continue
+    all++
+    if (inside[t] === 0) count++
+  }
+  return { count, share: all > 0 ? count / all : 0 }
 }
 
 /** As `prepareInterpolator` at always the same targets, remembering the patterns it has met: a lot mostly has one. */

@@ -1,5 +1,11 @@
 import { describe, expect, it } from 'vitest'
-import { MAX_SPLINE_SITES, interpolatorsFor, prepareInterpolator } from '../../../core/map/interpolator'
+import {
+  extrapolationOf,
+  MAX_SPLINE_SITES,
+  interpolatorsFor,
+  prepareInterpolator,
+} from '../../../core/map/interpolator'
+import { rasterGrid } from '../../../core/map/grid'
 import { CoreError } from '../../../core/problems/problem'
 import { concentricPlan } from '../../../core/wafer/site-patterns'
 import { bumpy, columnOf, largestDifference, spiral } from './patterns'
@@ -94,6 +100,40 @@ describe('linear between the sites', () => {
   })
 
   it('has no leave-one-out', () => expect(interpolator.leaveOneOut(columnOf(dense, bumpy))).toBeNull())
+})
+
+describe('what is extrapolated', () => {
+  const grid = rasterGrid({ shape: 'disc', diameter_mm: 200, fiducial: 'notch' }, 201)
+  const square = { x_mm: Float64Array.of(-50, 50, 50, -50), y_mm: Float64Array.of(-50, -50, 50, 50) }
+
+  it('is counted, and its share of the wafer is that of the area', () => {
+    const { inside, extrapolated } = prepareInterpolator(square.x_mm, square.y_mm, grid.targets)
+    expect(extrapolated.count).toBe(inside.filter((flag) => flag === 0).length)
+    expect(extrapolated.share).toBe(extrapolated.count / inside.length)
+    const onWafer = extrapolationOf(inside, grid.onWafer)
+    expect(onWafer.count).toBeLessThan(extrapolated.count)
+    // Rim points count whole: about 400 of 31 416.
+    expect(Math.abs(onWafer.share - (1 - 1e4 / (Math.PI * 1e4)))).toBeLessThan(0.01)
+  })
+
+  it('is nothing within the sites, everything for a mean, nothing of nothing', () => {
+    expect(prepareInterpolator(plan.x_mm, plan.y_mm, plan).extrapolated).toEqual({ count: 0, share: 0 })
+    expect(prepareInterpolator(plan.x_mm.slice(0, 1), plan.y_mm.slice(0, 1), targets).extrapolated.share).toBe(1)
+    expect(extrapolationOf(new Uint8Array(0))).toEqual({ count: 0, share: 0 })
+  })
+})
+
+describe('a hundred thousand sites', () => {
+  it('make a raster of 200 across', () => {
+    const many = spiral(100_000, 97)
+    const grid = rasterGrid({ shape: 'disc', diameter_mm: 200, fiducial: 'notch' }, 200)
+    const interpolator = prepareInterpolator(many.x_mm, many.y_mm, grid.targets)
+    const surface = interpolator.evaluate(columnOf(many, plane))
+    const error = surface.map((value, t) =>
+      interpolator.inside[t] ? Math.abs(value - plane(grid.targets.x_mm[t], grid.targets.y_mm[t])) : 0,
+    )
+    expect(error.reduce((a, b) => Math.max(a, b))).toBeLessThan(1e-9)
+  })
 })
 
 describe('sites in one place', () => {
