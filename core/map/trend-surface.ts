@@ -6,7 +6,7 @@ import { shapesOf, type Bowl, type Saddle, type Tilt } from './trend-shapes'
 import {
   TREND_GROUPS, TREND_ORDERS, trendGroupOf, trendTerms, type TrendGroupId, type TrendOrder,
 } from './trend-terms' // prettier-ignore
-import { osaIndex, zernike, zernikeColumn, zernikeName, type ZernikeIndex } from './zernike'
+import { osaIndex, zernikeColumn, zernikeName, type ZernikeIndex } from './zernike'
 
 export interface TrendTerm extends ZernikeIndex {
   /** OSA/ANSI single index. */
@@ -110,8 +110,8 @@ export function prepareTrendSurface(
     const terms = trendTerms(TREND_ORDERS[level])
     const design = prepareLeastSquares(terms.map((index) => zernikeColumn(index, x, y)))
     const hidden = design.ownLengths.findIndex((length) => length < TELLING_SIZE * Math.sqrt(design.rows))
-    if (hidden < 0)
-      return pattern(design, terms, { order: TREND_ORDERS[level], requestedOrder: order, loweredBecause, radius_mm })
+    const choice = { order: TREND_ORDERS[level], requestedOrder: order, loweredBecause, radius_mm }
+    if (hidden < 0) return pattern(design, terms, choice)
     loweredBecause ??= `at these sites "${zernikeName(terms[hidden])}" can't be told from simpler shapes`
   }
   throw new CoreError({
@@ -196,9 +196,13 @@ function variances(
 }
 
 function evaluate(terms: readonly TrendTerm[], radius_mm: number, { x_mm, y_mm }: Targets): Float64Array {
-  return x_mm.map((x, t) =>
-    terms.reduce((sum, term) => sum + term.coefficient * zernike(term, x / radius_mm, y_mm[t] / radius_mm), 0),
-  )
+  const [x, y] = [x_mm.map((place) => place / radius_mm), y_mm.map((place) => place / radius_mm)]
+  const [surface, shape] = [new Float64Array(x.length), new Float64Array(x.length)]
+  for (const term of terms) {
+    zernikeColumn(term, x, y, shape)
+    for (let t = 0; t < surface.length; t++) surface[t] += term.coefficient * shape[t]
+  }
+  return surface
 }
 
 function requirePlaces(x_mm: Float64Array, y_mm: Float64Array, radius_mm: number): void {
