@@ -39,7 +39,7 @@ export async function analyzeLot(options: AnalyzeOptions): Promise<number> {
     return EXIT.notAnalysed
   }
   if (options.out !== null) {
-    await writeWhole(options.out, await outputFiles(analysis, options))
+    await writeWhole(options.out, await outputFiles(analysis, { readings, procedure }, options))
   }
   print(analysis, options)
   return analysis.lot.verdict === 'in-spec' ? EXIT.inSpec : EXIT.notInSpec

@@ -18,6 +18,13 @@ const ANALYZE_USAGE = `usage: persquare analyze FILE... --procedure FILE [--out 
 
 exit status: 0 analysed and in spec; 1 analysed, something is out of spec, undecided or not assessed; 2 not analysed`
 
+const VERIFY_USAGE = `usage: persquare verify REPORT.pdf [--json]
+
+  REPORT.pdf           a report written by analyze; it carries its inputs, and is made again from them
+  --json               print one object instead of sentences
+
+exit status: 0 the report is what comes out of its inputs; 1 something in it differs; 2 it is no report that can be read`
+
 interface Command {
   /** Exit status: 0 done, and in spec where something was judged; 1 judged and not in spec throughout; 2 not done. */
   readonly run: (args: readonly string[]) => Promise<number>
@@ -28,6 +35,7 @@ interface Command {
 const commands: Record<string, Command> = {
   // Loaded when asked for: the readers and the PDF writer behind it take longer to load than a conversion to make.
   analyze: { run: async (args) => (await import('./analyze')).analyzeCommand(args), usage: ANALYZE_USAGE },
+  verify: { run: async (args) => (await import('./verify')).verifyCommand(args), usage: VERIFY_USAGE },
   convert: { run: convertCommand, usage: CONVERT_USAGE },
   sites: { run: sitesCommand, usage: SITES_USAGE },
 }

@@ -24,7 +24,7 @@ export async function renderReportPdf(report: ReportDocument, options: RenderOpt
   drawBlocks(report.blocks, paper)
   drawFooters(report, paper)
   paper.close()
-  for (const attachment of options.attachments ?? []) attach(attachment, report.date, paper.doc)
+  options.attachments?.forEach((attachment, place) => attach(attachment, place, report.date, paper.doc))
   paper.doc.end()
   return bytes
 }
@@ -41,7 +41,7 @@ function drawBlocks(blocks: readonly Block[], paper: Paper): void {
 function heightToStart(blocks: readonly Block[], from: number, paper: Paper): number {
   let height = 0
   for (let i = from; i < blocks.length; i++) {
-    const block = blocks[i]!
+    const block = blocks[i]
     if (block.kind === 'page-break') break
     height += startHeight(block, paper, paper.width)
     if (block.kind !== 'heading') break
@@ -66,9 +66,16 @@ function drawFooters({ footer, paper: size }: ReportDocument, paper: Paper): voi
   }
 }
 
-function attach({ name, bytes, mime, description }: ReportAttachment, date: string, doc: PDFKit.PDFDocument): void {
+/**
+ * The list of files is kept in the order of its keys. Keys that are numbers stand in one order everywhere; pdfkit would
+ * take the names, and sort them as the machine's language does.
+ */
+function attach(attachment: ReportAttachment, place: number, date: string, doc: PDFKit.PDFDocument): void {
+  const { name, bytes, mime, description } = attachment
   const made = new Date(date)
-  doc.file(Buffer.from(bytes), { name, type: mime, description, creationDate: made, modifiedDate: made })
+  const options = { name, type: mime, description, creationDate: made, modifiedDate: made, hidden: true }
+  const entry = doc.file(Buffer.from(bytes), options) as unknown as PDFKit.PDFKitReference
+  doc.addNamedEmbeddedFile(String(place).padStart(4, '0'), entry)
 }
 
 function collected(doc: PDFKit.PDFDocument): Promise<Uint8Array> {
