@@ -16,8 +16,9 @@ import { isUsable } from '../wafer/die-grid'
 import type { Outline } from '../wafer/outline'
 import { correct } from './corrections'
 import { analyzeDies } from './dies'
+import { exclusionNotes, flagExcluded, type Exclusion } from './exclusions'
 import { flagProblems, readingProblems } from './findings'
-import { SITE_FLAGS } from './flags'
+import { NOT_JUDGED, SITE_FLAGS } from './flags'
 import { layerResults } from './layer-results'
 import type { DieColumns, LotAnalysis } from './lot-analysis'
 import { measuringSetUp } from './measuring-set-up'
@@ -38,6 +39,8 @@ export interface AnalysisInput {
   /** What reading the files brought up. */
   readonly problems: readonly Problem[]
   readonly notes: readonly string[]
+  /** Sites that a person took out. */
+  readonly excluded?: readonly Exclusion[]
 }
 
 /**
@@ -46,7 +49,7 @@ export interface AnalysisInput {
  * @throws CoreError where the procedure can't be applied to these readings (a layer setting out of range, a thickness
  * that is missing); whatever is wrong with single sites is in the result
  */
-export function analyze({ readings, procedure, defaults, problems, notes }: AnalysisInput): LotAnalysis {
+export function analyze({ readings, procedure, defaults, problems, notes, excluded = [] }: AnalysisInput): LotAnalysis {
   const flags = new Uint32Array(readings.count)
   const positions = sitePositions(readings, procedure)
   const setUp = measuringSetUp(procedure)
@@ -61,6 +64,7 @@ export function analyze({ readings, procedure, defaults, problems, notes }: Anal
   const limits = limitsOn(quantity, procedure)
   const sites = siteColumns({ corrections, layer: inverted, relative, quantity, flags })
   flagUncounted(sites.value, positions, outline, procedure, flags)
+  const unmatched = flagExcluded(readings, excluded, flags)
   fillConformanceProbability(
     { value: sites.value, u: sites.u, limits: limits.site ?? {} },
     sites.conformanceProbability,
@@ -115,12 +119,18 @@ export function analyze({ readings, procedure, defaults, problems, notes }: Anal
         members.map(({ counting }) => counting),
       ),
     },
+    excluded,
     problems: [
       ...problems,
+      ...unmatched,
       ...readingProblems({ readings, procedure, positions, outline, sites, quantity }),
       ...flagProblems(readings, flags),
     ],
-    notes: [...notes, ...analysisNotes({ readings, procedure, positions, setUp, corrections, quantity, dies })],
+    notes: [
+      ...notes,
+      ...exclusionNotes(excluded),
+      ...analysisNotes({ readings, procedure, positions, setUp, corrections, quantity, dies }),
+    ],
   }
 }
 
@@ -151,7 +161,7 @@ function flagUncounted(
 function withholdVerdicts(verdict: Uint8Array, flags: Uint32Array): void {
   const notAssessed = verdictCode('not-assessed')
   for (let i = 0; i < verdict.length; i++) {
-    if (flags[i] & SITE_FLAGS.inEdgeExclusion.bit) verdict[i] = notAssessed
+    if (flags[i] & NOT_JUDGED) verdict[i] = notAssessed
   }
 }
 

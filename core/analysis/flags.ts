@@ -82,8 +82,17 @@ export const SITE_FLAGS = {
     counts: true,
     sentence: 'has no temperature of its own and was not corrected for it',
   },
+  excludedByPerson: {
+    id: 'excluded-by-person',
+    bit: 1 << 13,
+    counts: false,
+    sentence: 'was excluded by a person and is shown but not judged',
+  },
   noReading: { id: 'no-reading', bit: 1 << 11, counts: false, sentence: 'has no usable reading' },
 } as const satisfies Record<string, SiteFlag>
+
+/** Bits of the flags whose sites have a value but are none of the verdict's business. */
+export const NOT_JUDGED = SITE_FLAGS.inEdgeExclusion.bit | SITE_FLAGS.excludedByPerson.bit
 
 /** `in-edge-exclusion|reported`, or nothing. */
 export function flagNames(flags: number): string {

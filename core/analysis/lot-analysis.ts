@@ -7,6 +7,7 @@ import type { Readings } from '../ingest/readings'
 import type { Outline } from '../wafer/outline'
 import type { Problem } from '../problems/problem'
 import type { Procedure } from '../procedure/schema'
+import type { Exclusion } from './exclusions'
 import type { Statistics } from '../statistics/summarize'
 import type { VarianceComponents } from '../statistics/components-of-variance'
 
@@ -24,6 +25,8 @@ export interface LotAnalysis {
   readonly dies: DieColumns | null
   readonly wafers: readonly WaferAnalysis[]
   readonly lot: LotSummary
+  /** Sites that a person took out, as asked for. */
+  readonly excluded: readonly Exclusion[]
   /** Rejected rows and everything else that was wrong, in reading order. */
   readonly problems: readonly Problem[]
   /** What was assumed or left undone, in sentences ("no temperature correction: ..."). */

@@ -14,7 +14,7 @@ export interface ResultContext {
 
 /** Plain data; numbers that don't exist are null, since JSON has no NaN. Keys stand in a fixed order. */
 export function resultObject(analysis: LotAnalysis, { program, version }: ResultContext): object {
-  const { readings, procedure, defaults, problems, notes, quantity, lot, wafers } = analysis
+  const { readings, procedure, defaults, excluded, problems, notes, quantity, lot, wafers } = analysis
   return {
     format: RESULT_FORMAT,
     program: { name: program, version },
@@ -23,6 +23,7 @@ export function resultObject(analysis: LotAnalysis, { program, version }: Result
     })), // prettier-ignore
     procedure,
     defaultsUsed: defaults,
+    excluded: excluded.map(({ wafer, site, reason }) => ({ wafer, site, reason })),
     problems: problems.map((problem) => ({ ...problem, sentence: explain(problem), place: placeOf(problem) })),
     notes,
     quantity: { id: quantity.id, title: quantity.title, unit: quantity.asciiUnit },

@@ -5,11 +5,14 @@ import { CoreError, type Problem } from '../problems/problem'
 import { parseProcedure } from '../procedure/parse-procedure'
 import { PROCEDURE_FORMAT } from '../procedure/schema'
 import { analyze } from './analyze'
+import type { Exclusion } from './exclusions'
 import type { LotAnalysis } from './lot-analysis'
 
 export interface RunInput {
   readonly readings: readonly InputFile[]
   readonly procedure: { readonly name: string; readonly bytes: Uint8Array }
+  /** Sites that a person took out. */
+  readonly excluded?: readonly Exclusion[]
 }
 
 /** `analysis` is null exactly when something stood in the way; `problems` then says what. */
@@ -19,7 +22,7 @@ export interface RunResult {
 }
 
 /** Never throws for what a user can bring in; a throw is a bug. */
-export function run({ readings: files, procedure: { name, bytes } }: RunInput): RunResult {
+export function run({ readings: files, procedure: { name, bytes }, excluded = [] }: RunInput): RunResult {
   const decoded = decodeText(bytes)
   if ('looksLike' in decoded) {
     return { analysis: null, problems: [{ kind: 'not-text', file: name, looksLike: decoded.looksLike }] }
@@ -35,6 +38,7 @@ export function run({ readings: files, procedure: { name, bytes } }: RunInput): 
       defaults: parsed.defaults,
       problems: read.problems,
       notes: [...migrationNotes(parsed.migratedFrom, name), ...read.notes],
+      excluded,
     })
     return { analysis, problems: analysis.problems }
   } catch (error) {

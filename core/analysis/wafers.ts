@@ -4,7 +4,7 @@ import { judgeWafer, type WaferJudgement, type WaferLimits } from '../conformity
 import { countVerdicts } from '../conformity/verdict'
 import type { Readings } from '../ingest/readings'
 import { summarize } from '../statistics/summarize'
-import { SITE_FLAGS } from './flags'
+import { NOT_JUDGED, SITE_FLAGS } from './flags'
 import type { DieColumns, Quantity, SiteColumns, WaferAnalysis } from './lot-analysis'
 import type { SitePositions } from './site-positions'
 
@@ -15,7 +15,7 @@ export interface WaferMembers {
   readonly index: number
   /** All its sites, in reading order. */
   readonly sites: Uint32Array
-  /** Those that were to be judged: all but the ones in the edge exclusion. */
+  /** Those that were to be judged: all but the ones in the edge exclusion and those a person took out. */
   readonly judged: Uint32Array
   /** Those with a value that counts. */
   readonly counting: Uint32Array
@@ -35,7 +35,7 @@ export function waferMembers({ wafers, wafer, count }: Readings, flags: Uint32Ar
     .map((index) => ({
       index,
       sites: sites[index],
-      judged: sites[index].filter((i) => (flags[i] & SITE_FLAGS.inEdgeExclusion.bit) === 0),
+      judged: sites[index].filter((i) => (flags[i] & NOT_JUDGED) === 0),
       counting: sites[index].filter((i) => (flags[i] & NOT_COUNTING) === 0),
     }))
 }

@@ -98,6 +98,8 @@ const sentences: Sentences = {
     `Current and voltage look swapped: as read the median is ${Number(asRead.toPrecision(4))}${asUnit(unit)}, swapped it would be ${Number(swapped.toPrecision(4))}${asUnit(unit)}. Check the column names.`,
   'flagged-sites': ({ count: sites, wafers, sentence }) =>
     `${count(sites, 'site')} on ${wafers.length === 1 ? 'wafer' : 'wafers'} ${quotedList(wafers)}: each ${ended(sentence)}`,
+  'no-such-site': ({ wafer, site }) =>
+    `Site ${quote(site)} of wafer ${quote(wafer)} was to be excluded, but these readings have no such site. Take the exclusion back, or check the wafer's and site's names.`,
   'nothing-assessed': ({ why }) => `Nothing could be judged: ${ended(why)}`,
 
   'cannot-write': ({ path, why }) => `${quote(path)} can't be written: ${ended(why)}`,

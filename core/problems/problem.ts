@@ -159,6 +159,8 @@ export type AnalysisProblem =
       readonly wafers: readonly string[]
       readonly sentence: string
     }
+  /** An exclusion that names no site of these readings. */
+  | { readonly kind: 'no-such-site'; readonly wafer: string; readonly site: string }
   | { readonly kind: 'nothing-assessed'; readonly why: string }
 
 export type OutputProblem =

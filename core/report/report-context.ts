@@ -1,4 +1,5 @@
 /** What several sections of the report draw on, worked out once: limits, order, marks, and each wafer's own columns. */
+import { SITE_FLAGS } from '../analysis/flags'
 import type { FormulaSource } from '../analysis/formula-sources'
 import type { LotAnalysis, WaferAnalysis } from '../analysis/lot-analysis'
 import { limitsOn } from '../analysis/quantity'
@@ -47,7 +48,7 @@ export interface ReportContext {
 export function reportContext(input: LotReportInput, sources: SourceList): ReportContext {
   const { analysis } = input
   const positions = sitePositions(analysis.readings, analysis.procedure)
-  const { value, verdict } = analysis.sites
+  const { value, verdict, flags } = analysis.sites
   const none = new Float64Array(positions ? 0 : analysis.sites.count).fill(NaN)
   const x = positions?.x_mm ?? none
   const y = positions?.y_mm ?? none
@@ -66,6 +67,7 @@ export function reportContext(input: LotReportInput, sources: SourceList): Repor
       y_mm: Float64Array.from(sites, (i) => y[i]),
       value: Float64Array.from(sites, (i) => value[i]),
       verdict: Uint8Array.from(sites, (i) => verdict[i]),
+      excluded: Uint8Array.from(sites, (i) => (flags[i] & SITE_FLAGS.excludedByPerson.bit ? 1 : 0)),
     }),
     hasPositions: positions !== null,
     positions,

@@ -61,9 +61,10 @@ function rangeOf(values: Float64Array): { min: number; max: number } {
   return { min, max }
 }
 
-function withValue({ x_mm, y_mm, value }: MapSites) {
+function withValue({ x_mm, y_mm, value, excluded }: MapSites) {
   const rows: number[] = []
   for (let i = 0; i < value.length; i++) {
+    if (excluded?.[i] === 1) continue
     if (Number.isFinite(value[i]) && Number.isFinite(x_mm[i]) && Number.isFinite(y_mm[i])) rows.push(i)
   }
   return {

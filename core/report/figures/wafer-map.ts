@@ -18,6 +18,8 @@ export interface MapSites {
   readonly value: ArrayLike<number>
   /** Codes in the order of VERDICTS. */
   readonly verdict: ArrayLike<number>
+  /** 1 where a person took the site out: it is shown, but shapes no surface. */
+  readonly excluded?: ArrayLike<number>
 }
 
 /** The region where the interpolated value is at least `threshold`, in mm. */

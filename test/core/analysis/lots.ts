@@ -1,6 +1,7 @@
 /** Lots for the tests: the bundled samples, and small ones written on the spot. */
 import { createHash } from 'node:crypto'
 import { readFileSync } from 'node:fs'
+import type { Exclusion } from '../../../core/analysis/exclusions'
 import type { LotAnalysis } from '../../../core/analysis/lot-analysis'
 import { run, type RunResult } from '../../../core/analysis/run'
 import type { ProcedureInput } from '../../../core/procedure/schema'
@@ -25,12 +26,14 @@ export function runText(
   csv: string,
   procedure: string | Uint8Array | Partial<ProcedureInput>,
   name = 'lot.csv',
+  excluded: readonly Exclusion[] = [],
 ): RunResult {
   const bytes = new TextEncoder().encode(csv)
   const sha256 = createHash('sha256').update(bytes).digest('hex')
   return run({
     readings: [{ name, bytes, sha256 }],
     procedure: { name: 'procedure.json', bytes: procedureBytes(procedure) },
+    excluded,
   })
 }
 

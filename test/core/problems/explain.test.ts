@@ -36,6 +36,7 @@ const examples: { readonly [Kind in ProblemKind]: Extract<Problem, { kind: Kind 
   'no-sheet-resistance': { kind: 'no-sheet-resistance', ...site, why: 'the current is zero' },
   'swapped-columns': { kind: 'swapped-columns', file, asRead: 0.0493, swapped: 20.3, unit: 'Ω' },
   'flagged-sites': { kind: 'flagged-sites', flag: 'reported', count: 2, wafers: ['1', '7'], sentence: 'is taken as the file reports it' },
+  'no-such-site': { kind: 'no-such-site', wafer: '7', site: '99' },
   'nothing-assessed': { kind: 'nothing-assessed', why: 'the procedure has no limits' },
   'cannot-write': { kind: 'cannot-write', path: 'out/sites.csv', why: 'the folder is read-only' },
   'bad-argument': { kind: 'bad-argument', argument: '--colour', why: 'there is no such option' },
