@@ -7,7 +7,7 @@ import type { Problem } from '../../core/problems/problem'
 import { systemReason } from '../../core/problems/system-reason'
 import { CHANNELS } from '../contract/channels'
 import type { HostCall } from '../contract/channels'
-import { FILE_CHOICES } from '../contract/host'
+import { FILE_CHOICES } from '../contract/file-kinds'
 import type { FileChoice, Host, OpenedFile, Reply } from '../contract/host'
 import { isPageUrl } from './page-protocol'
 

@@ -1,5 +1,5 @@
 import type { Problem } from '../../core/problems/problem'
-import { FILE_CHOICES } from '../contract/host'
+import { FILE_CHOICES } from '../contract/file-kinds'
 import type { FileChoice, Host, OpenedFile, Reply } from '../contract/host'
 import { NAMED_FILES_PATH } from '../contract/named-files'
 import type { NamedFile } from '../contract/named-files'
