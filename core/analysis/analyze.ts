@@ -3,33 +3,35 @@ import { fillConformanceProbability } from '../conformity/conformance-probabilit
 import { judgeLot } from '../conformity/judge-lot'
 import { fillVerdicts } from '../conformity/judge-sites'
 import type { WaferLimits } from '../conformity/judge-wafer'
+import type { Limits } from '../conformity/limits'
 import { lotSentence } from '../conformity/lot-sentence'
 import { verdictCode } from '../conformity/verdict'
 import type { Readings } from '../ingest/readings'
-import type { Problem } from '../problems/problem'
+import { CoreError, type Problem } from '../problems/problem'
 import { neededForReadings } from '../procedure/needed-for-readings'
 import type { Procedure } from '../procedure/schema'
-import { CoreError } from '../problems/problem'
 import { componentsOfVariance } from '../statistics/components-of-variance'
 import { summarize } from '../statistics/summarize'
 import { isUsable } from '../wafer/die-grid'
 import type { Outline } from '../wafer/outline'
-import { correct } from './corrections'
+import { correct, type Corrections } from './corrections'
 import { analyzeDies } from './dies'
 import { exclusionNotes, flagExcluded, type Exclusion } from './exclusions'
 import { flagProblems, readingProblems } from './findings'
 import { NOT_JUDGED, SITE_FLAGS } from './flags'
 import { layerResults } from './layer-results'
-import type { DieColumns, LotAnalysis } from './lot-analysis'
-import { measuringSetUp } from './measuring-set-up'
+import type { DieColumns, LotAnalysis, Quantity, SiteColumns } from './lot-analysis'
+import { measuringSetUp, type MeasuringSetUp } from './measuring-set-up'
 import { analysisNotes } from './notes'
+import { flagOutliers } from './outlying-sites'
 import { prepareLayer } from './prepare-layer'
+import type { Stage, Watch } from './progress'
 import { judgedQuantity, limitsOn } from './quantity'
 import { siteColumns } from './site-columns'
 import { sitePositions, type SitePositions } from './site-positions'
 import { contributions, propagate } from './uncertainty'
 import { ratios } from './v-over-i'
-import { analyzeWafer, waferMembers } from './wafers'
+import { analyzeWafer, waferMembers, type WaferMembers } from './wafers'
 
 export interface AnalysisInput {
   readonly readings: Readings
@@ -41,6 +43,7 @@ export interface AnalysisInput {
   readonly notes: readonly string[]
   /** Sites that a person took out. */
   readonly excluded?: readonly Exclusion[]
+  readonly watch?: Watch
 }
 
 /**
@@ -49,56 +52,25 @@ export interface AnalysisInput {
  * @throws CoreError where the procedure can't be applied to these readings (a layer setting out of range, a thickness
  * that is missing); whatever is wrong with single sites is in the result
  */
-export function analyze({ readings, procedure, defaults, problems, notes, excluded = [] }: AnalysisInput): LotAnalysis {
-  const flags = new Uint32Array(readings.count)
-  const positions = sitePositions(readings, procedure)
-  const setUp = measuringSetUp(procedure)
-  const { outline } = setUp
-  const vOverI = ratios(readings, flags)
-  requireWhatReadingsNeed(readings, procedure)
-  const layer = prepareLayer(procedure)
-  const corrections = correct(readings, procedure, setUp, positions, vOverI, flags)
-  const inverted = layerResults(procedure, layer, corrections, flags)
-  const relative = propagate(contributions(procedure, corrections, flags), inverted, readings.count)
-  const quantity = judgedQuantity(procedure, readings)
+export function analyze(input: AnalysisInput): LotAnalysis {
+  const { readings, procedure, defaults, problems, notes, excluded = [], watch } = input
+  const enter = (stage: Stage): void => watch?.({ stage, share: 0, rows: readings.count })
+  enter('correcting')
+  const measured = measure(readings, procedure)
+  const { sites, positions, outline, quantity } = measured
+  const unmatched = flagExcluded(readings, excluded, sites.flags)
   const limits = limitsOn(quantity, procedure)
-  const sites = siteColumns({ corrections, layer: inverted, relative, quantity, flags })
-  flagUncounted(sites.value, positions, outline, procedure, flags)
-  const unmatched = flagExcluded(readings, excluded, flags)
-  fillConformanceProbability(
-    { value: sites.value, u: sites.u, limits: limits.site ?? {} },
-    sites.conformanceProbability,
-  )
-  fillVerdicts(sites.value, limits.site, sites.verdict)
-  withholdVerdicts(sites.verdict, flags)
-
-  const members = waferMembers(readings, flags)
+  const { members, outliers } = membersAndOutliers(readings, procedure, sites)
+  judgeSites(sites, limits.site)
+  enter('mapping')
   const dies = analyzeDies(procedure, outline, positions, inReadingOrder(members), sites, limits.site)
-  const waferLimits: WaferLimits = {
-    site: limits.site,
-    mean: limits.waferMean,
-    uniformity: procedure.limits.uniformityPercent,
-    allowedSitesOut: procedure.limits.allowedSitesOut,
-  }
-  const judged = members.map((wafer) =>
-    analyzeWafer({
-      members: wafer,
-      readings,
-      positions,
-      sites,
-      dies: dies && { columns: dies, rows: rowsOfWafer(dies, wafer.index, members.length) },
-      limits: waferLimits,
-      quantity,
-    }),
-  )
-  const wafers = judged.map(({ wafer }) => wafer)
-  const judgements = judged.map(({ judgement }) => judgement)
-  const waferMeans = Float64Array.from(
-    wafers.filter(({ statistics }) => statistics.count > 0),
-    ({ statistics }) => statistics.mean,
-  )
-  const statistics = summarize(waferMeans)
-  const { verdict, reasons } = judgeLot(judgements, waferLimits)
+  enter('judging')
+  const { wafers, lot } = judgeWafersAndLot({ readings, procedure, measured, limits, members, outliers, dies })
+  const found = [
+    ...unmatched,
+    ...readingProblems({ readings, procedure, positions, outline, sites, quantity }),
+    ...flagProblems(readings, sites.flags),
+  ]
   return {
     procedure,
     defaults,
@@ -108,30 +80,96 @@ export function analyze({ readings, procedure, defaults, problems, notes, exclud
     sites,
     dies,
     wafers,
-    lot: {
-      name: readings.lot,
-      verdict,
-      sentence: lotSentence({ lot: readings.lot, verdict, wafers: judgements, statistics, unit: quantity.unit }),
-      reasons,
-      statistics,
-      varianceComponents: componentsOfVariance(
-        sites.value,
-        members.map(({ counting }) => counting),
-      ),
-    },
+    lot,
     excluded,
-    problems: [
-      ...problems,
-      ...unmatched,
-      ...readingProblems({ readings, procedure, positions, outline, sites, quantity }),
-      ...flagProblems(readings, flags),
-    ],
-    notes: [
-      ...notes,
-      ...exclusionNotes(excluded),
-      ...analysisNotes({ readings, procedure, positions, setUp, corrections, quantity, dies }),
-    ],
+    problems: [...problems, ...found],
+    notes: [...notes, ...exclusionNotes(excluded), ...analysisNotes({ readings, procedure, ...measured, dies })],
   }
+}
+
+interface Measured {
+  readonly positions: SitePositions | null
+  readonly setUp: MeasuringSetUp
+  readonly outline: Outline
+  readonly corrections: Corrections
+  readonly quantity: Quantity
+  readonly sites: SiteColumns
+}
+
+/** Every site's result with its uncertainty and flags; verdicts and probabilities are still to be filled. */
+function measure(readings: Readings, procedure: Procedure): Measured {
+  requireWhatReadingsNeed(readings, procedure)
+  const flags = new Uint32Array(readings.count)
+  const positions = sitePositions(readings, procedure)
+  const setUp = measuringSetUp(procedure)
+  const vOverI = ratios(readings, flags)
+  const layer = prepareLayer(procedure)
+  const corrections = correct(readings, procedure, setUp, positions, vOverI, flags)
+  const inverted = layerResults(procedure, layer, corrections, flags)
+  const relative = propagate(contributions(procedure, corrections, flags), inverted, readings.count)
+  const quantity = judgedQuantity(procedure, readings)
+  const sites = siteColumns({ corrections, layer: inverted, relative, quantity, flags })
+  flagUncounted(sites.value, positions, setUp.outline, procedure, flags)
+  return { positions, setUp, outline: setUp.outline, corrections, quantity, sites }
+}
+
+/** Outliers are sought among what counts; where the procedure leaves them out, what counts is then fewer. */
+function membersAndOutliers(
+  readings: Readings,
+  procedure: Procedure,
+  { value, flags }: SiteColumns,
+): { members: WaferMembers[]; outliers: Uint32Array[] } {
+  const members = waferMembers(readings, flags)
+  const outliers = members.map((wafer) => flagOutliers(value, wafer, procedure.statistics, flags))
+  const areLeftOut = procedure.statistics.outliers.leaveOut && outliers.some(({ length }) => length > 0)
+  return { members: areLeftOut ? waferMembers(readings, flags) : members, outliers }
+}
+
+function judgeSites(sites: SiteColumns, limits: Limits | undefined): void {
+  const { value, u, conformanceProbability, verdict, flags } = sites
+  fillConformanceProbability({ value, u, limits: limits ?? {} }, conformanceProbability)
+  fillVerdicts(value, limits, verdict)
+  const notAssessed = verdictCode('not-assessed')
+  for (let i = 0; i < verdict.length; i++) if (flags[i] & NOT_JUDGED) verdict[i] = notAssessed
+}
+
+function judgeWafersAndLot({
+  readings,
+  procedure,
+  measured: { sites, positions, quantity },
+  limits,
+  members,
+  outliers,
+  dies,
+}: {
+  readonly readings: Readings
+  readonly procedure: Procedure
+  readonly measured: Measured
+  readonly limits: ReturnType<typeof limitsOn>
+  readonly members: readonly WaferMembers[]
+  readonly outliers: readonly Uint32Array[]
+  readonly dies: DieColumns | null
+}): Pick<LotAnalysis, 'wafers' | 'lot'> {
+  const { uniformityPercent: uniformity, allowedSitesOut } = procedure.limits
+  const waferLimits: WaferLimits = { site: limits.site, mean: limits.waferMean, uniformity, allowedSitesOut }
+  const diesOf = (index: number) => dies && { columns: dies, rows: rowsOfWafer(dies, index, members.length) }
+  const common = { readings, positions, sites, limits: waferLimits, quantity }
+  const judged = members.map((wafer, k) =>
+    analyzeWafer({ ...common, members: wafer, outliers: outliers[k], dies: diesOf(wafer.index) }),
+  )
+  const wafers = judged.map(({ wafer }) => wafer)
+  const judgements = judged.map(({ judgement }) => judgement)
+  const measuredWafers = wafers.filter(({ statistics }) => statistics.count > 0)
+  const statistics = summarize(Float64Array.from(measuredWafers, ({ statistics: { mean } }) => mean))
+  const { verdict, reasons } = judgeLot(judgements, waferLimits)
+  const { lot: name } = readings
+  const sentence = lotSentence({ lot: name, verdict, wafers: judgements, statistics, unit: quantity.unit })
+  const varianceComponents = componentsOfVariance(
+    sites.value,
+    members.map(({ counting }) => counting),
+    procedure.statistics.confidence,
+  )
+  return { wafers, lot: { name, verdict, sentence, reasons, statistics, varianceComponents } }
 }
 
 function requireWhatReadingsNeed(readings: Readings, procedure: Procedure): void {
@@ -155,13 +193,6 @@ function flagUncounted(
     if (Number.isNaN(value[i])) flags[i] |= SITE_FLAGS.noReading.bit
     else if (positions && !isUsable(usable, positions.x_mm[i], positions.y_mm[i]))
       flags[i] |= SITE_FLAGS.inEdgeExclusion.bit
-  }
-}
-
-function withholdVerdicts(verdict: Uint8Array, flags: Uint32Array): void {
-  const notAssessed = verdictCode('not-assessed')
-  for (let i = 0; i < verdict.length; i++) {
-    if (flags[i] & NOT_JUDGED) verdict[i] = notAssessed
   }
 }
 

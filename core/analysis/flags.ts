@@ -88,11 +88,24 @@ export const SITE_FLAGS = {
     counts: false,
     sentence: 'was excluded by a person and is shown but not judged',
   },
+  outlier: {
+    id: 'outlier',
+    bit: 1 << 14,
+    counts: true,
+    sentence: 'is an outlier among the sites of its wafer (generalized ESD test) and counts all the same',
+  },
+  outlierLeftOut: {
+    id: 'outlier-left-out',
+    bit: 1 << 15,
+    counts: false,
+    sentence: 'is an outlier among the sites of its wafer and was left out, as the procedure says',
+  },
   noReading: { id: 'no-reading', bit: 1 << 11, counts: false, sentence: 'has no usable reading' },
 } as const satisfies Record<string, SiteFlag>
 
 /** Bits of the flags whose sites have a value but are none of the verdict's business. */
-export const NOT_JUDGED = SITE_FLAGS.inEdgeExclusion.bit | SITE_FLAGS.excludedByPerson.bit
+export const NOT_JUDGED =
+  SITE_FLAGS.inEdgeExclusion.bit | SITE_FLAGS.excludedByPerson.bit | SITE_FLAGS.outlierLeftOut.bit
 
 /** `in-edge-exclusion|reported`, or nothing. */
 export function flagNames(flags: number): string {

@@ -83,6 +83,10 @@ export interface WaferAnalysis {
   readonly sites: Uint32Array
   /** Of the judged quantity over the sites that count: a value, and outside the edge exclusion. */
   readonly statistics: Statistics
+  /** Sites found to be outliers, farthest first; whether they count, the procedure says. */
+  readonly outliers: Uint32Array
+  /** The statistics without the outliers that count, or with those that were left out; null where there are none. */
+  readonly statisticsOtherwise: Statistics | null
   /** Standard uncertainty of the wafer mean: shared part whole, independent parts averaged. */
   readonly uMean: number
   /** Means over the same sites of what the layer gives; NaN where it gives none. */

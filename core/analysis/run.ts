@@ -7,12 +7,15 @@ import { PROCEDURE_FORMAT } from '../procedure/schema'
 import { analyze } from './analyze'
 import type { Exclusion } from './exclusions'
 import type { LotAnalysis } from './lot-analysis'
+import type { Watch } from './progress'
 
 export interface RunInput {
   readonly readings: readonly InputFile[]
   readonly procedure: { readonly name: string; readonly bytes: Uint8Array }
   /** Sites that a person took out. */
   readonly excluded?: readonly Exclusion[]
+  /** Is told of the progress while it runs. */
+  readonly watch?: Watch
 }
 
 /** `analysis` is null exactly when something stood in the way; `problems` then says what. */
@@ -22,14 +25,16 @@ export interface RunResult {
 }
 
 /** Never throws for what a user can bring in; a throw is a bug. */
-export function run({ readings: files, procedure: { name, bytes }, excluded = [] }: RunInput): RunResult {
+export function run({ readings: files, procedure: { name, bytes }, excluded = [], watch }: RunInput): RunResult {
   const decoded = decodeText(bytes)
   if ('looksLike' in decoded) {
     return { analysis: null, problems: [{ kind: 'not-text', file: name, looksLike: decoded.looksLike }] }
   }
   const parsed = parseProcedure(decoded.text, name)
   if (!parsed.procedure) return { analysis: null, problems: parsed.problems }
-  const read = readReadings(files, parsed.procedure.readings)
+  const read = readReadings(files, parsed.procedure.readings, (share, rows) =>
+    watch?.({ stage: 'reading', share, rows }),
+  )
   if (!read.readings) return { analysis: null, problems: read.problems }
   try {
     const analysis = analyze({
@@ -39,6 +44,7 @@ export function run({ readings: files, procedure: { name, bytes }, excluded = []
       problems: read.problems,
       notes: [...migrationNotes(parsed.migratedFrom, name), ...read.notes],
       excluded,
+      ...(watch && { watch }),
     })
     return { analysis, problems: analysis.problems }
   } catch (error) {

@@ -3,13 +3,18 @@ import { siteFindings } from '../conformity/judge-sites'
 import { judgeWafer, type WaferJudgement, type WaferLimits } from '../conformity/judge-wafer'
 import { countVerdicts } from '../conformity/verdict'
 import type { Readings } from '../ingest/readings'
-import { summarize } from '../statistics/summarize'
+import { summarize, type Statistics } from '../statistics/summarize'
 import { NOT_JUDGED, SITE_FLAGS } from './flags'
 import type { DieColumns, Quantity, SiteColumns, WaferAnalysis } from './lot-analysis'
 import type { SitePositions } from './site-positions'
 
 /** Bits of the flags whose sites are shown but don't count. */
 const NOT_COUNTING = Object.values(SITE_FLAGS).reduce((bits, flag) => (flag.counts ? bits : bits | flag.bit), 0)
+
+/** Those of the sites that have a value which counts. */
+export function countingSites(sites: Uint32Array, flags: Uint32Array): Uint32Array {
+  return sites.filter((i) => (flags[i] & NOT_COUNTING) === 0)
+}
 
 export interface WaferMembers {
   readonly index: number
@@ -36,7 +41,7 @@ export function waferMembers({ wafers, wafer, count }: Readings, flags: Uint32Ar
       index,
       sites: sites[index],
       judged: sites[index].filter((i) => (flags[i] & NOT_JUDGED) === 0),
-      counting: sites[index].filter((i) => (flags[i] & NOT_COUNTING) === 0),
+      counting: countingSites(sites[index], flags),
     }))
 }
 
@@ -47,6 +52,7 @@ export interface WaferToAnalyze {
   readonly sites: SiteColumns
   /** This wafer's dies, as rows of the die columns. */
   readonly dies: { readonly columns: DieColumns; readonly rows: Uint32Array } | null
+  readonly outliers: Uint32Array
   readonly limits: WaferLimits
   readonly quantity: Quantity
 }
@@ -65,6 +71,8 @@ export function analyzeWafer(wafer: WaferToAnalyze): { wafer: WaferAnalysis; jud
       slot,
       sites: members.sites,
       statistics,
+      outliers: wafer.outliers,
+      statisticsOtherwise: statisticsOtherwise(wafer),
       uMean: uncertaintyOfMean(sites, members.counting),
       means: {
         resistivity_ohm_cm: meanOf(sites.resistivity_ohm_cm),
@@ -85,6 +93,15 @@ export function analyzeWafer(wafer: WaferToAnalyze): { wafer: WaferAnalysis; jud
     const places = { x_mm: positions?.x_mm ?? null, y_mm: positions?.y_mm ?? null }
     return siteFindings({ value, verdict, ...places, sites: members.judged, limits: limits.site })
   }
+}
+
+/** With the outliers where they were left out, without them where they count; null where there are none. */
+function statisticsOtherwise({ outliers, members, sites }: WaferToAnalyze): Statistics | null {
+  if (outliers.length === 0) return null
+  const isOutlier = new Set(outliers)
+  const without = members.counting.filter((i) => !isOutlier.has(i))
+  const counted = without.length < members.counting.length
+  return summarize(sites.value, counted ? without : Uint32Array.from([...without, ...outliers]))
 }
 
 /** What all sites share stays whole in their mean; what each has to itself averages out. */

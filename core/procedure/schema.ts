@@ -47,15 +47,22 @@ const silicon = {
 }
 const background = z.strictObject({ dopant: z.enum(DOPANTS), concentrationCm3: z.number().min(1e10).max(1e20) })
 
+/** A file beside the procedure: no folder, no way out of the folder. */
+export const BARE_FILE_NAME = /^(?!.*\.\.)[^\p{Cc}/\\:]+$/u
+
 const layer = z.discriminatedUnion('kind', [
   z.strictObject({ kind: z.literal('sheet') }),
   z.strictObject({ kind: z.literal('bulk'), ...silicon }),
   z.strictObject({
     kind: z.literal('doped-layer'),
     ...silicon,
-    profile: z.enum(['uniform', 'gaussian', 'erfc', 'exponential']),
-    /** Junction depth: where the profile has come down to the background. */
-    depthUm: positive(1000),
+    profile: z.enum(['uniform', 'gaussian', 'erfc', 'exponential', 'tabulated']),
+    /** Junction depth: where the profile has come down to the background. A named profile takes it or the next. */
+    depthUm: positive(1000).optional(),
+    /** sqrt(D t) of a gaussian or erfc profile, the decay length of an exponential one; the depth follows. */
+    diffusionLengthUm: positive(1000).optional(),
+    /** Only with profile "tabulated": depths and concentrations as CSV. */
+    profileFile: z.string().min(1).max(200).regex(BARE_FILE_NAME).optional(),
     background,
   }),
   z.strictObject({
@@ -90,6 +97,19 @@ const procedureLimits = z.strictObject({
     .optional(),
   /** How many sites of a wafer may lie outside the site limits before the wafer does. */
   allowedSitesOut: z.number().int().min(0).max(1e6).default(0),
+})
+
+const statistics = z.strictObject({
+  /** Of every interval. */
+  confidence: z.number().min(0.5).max(0.9999).default(0.95),
+  outliers: z
+    .strictObject({
+      /** Chance of finding any on a wafer that has none. */
+      alpha: z.number().min(1e-6).max(0.5).default(0.05),
+      /** Outliers are flagged always; left out of statistics and verdicts only if this says so. */
+      leaveOut: z.boolean().default(false),
+    })
+    .prefault({}),
 })
 
 const dieGrid = z.strictObject({
@@ -150,6 +170,7 @@ export const procedureSchema = z.strictObject({
   layer: layer.default({ kind: 'sheet' }),
   temperature: temperature.prefault({}),
   limits: procedureLimits.prefault({}),
+  statistics: statistics.prefault({}),
   dieGrid: dieGrid.optional(),
   uncertainty: uncertainty.prefault({}),
   readings: readings.prefault({}),
