@@ -3,7 +3,7 @@ export const MANIFEST_NAME = 'persquare-report.json'
 export const RESULT_NAME = 'result.json'
 
 const MAX_STEM = 80
-const MAX_EXTENSION = 12
+const EXTENSION = /^\.[A-Za-z0-9]{1,12}$/
 /** Names that a system keeps for its devices. */
 const DEVICE = /^(?:con|prn|aux|nul|com\d|lpt\d)$/i
 
@@ -25,13 +25,15 @@ interface NameParts {
 
 /** Letters, digits and few marks; no point or dash in front, and no name of a device. */
 function safeParts(original: string): NameParts {
-  const safe = original.replace(/[^A-Za-z0-9 ._-]/g, '_')
+  const safe = trimmed(original.replace(/[^A-Za-z0-9 ._-]/g, '_'))
   const point = safe.lastIndexOf('.')
-  const hasExtension = point > 0 && safe.length - point <= MAX_EXTENSION
-  const stem = trimmed(hasExtension ? safe.slice(0, point) : safe).slice(0, MAX_STEM)
-  const extension = hasExtension ? trimmed(safe.slice(point + 1)) : ''
+  const hasExtension = point > 0 && EXTENSION.test(safe.slice(point))
+  const stem = trimmed((hasExtension ? safe.slice(0, point) : safe).slice(0, MAX_STEM))
   const isReserved = stem === '' || DEVICE.test(stem.split('.', 1)[0])
-  return { stem: isReserved ? `input${stem === '' ? '' : '-'}${stem}` : stem, extension: extension && `.${extension}` }
+  return {
+    stem: isReserved ? `input${stem === '' ? '' : '-'}${stem}` : stem,
+    extension: hasExtension ? safe.slice(point) : '',
+  }
 }
 
 const MARKS = new Set(' ._-')

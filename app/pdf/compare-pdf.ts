@@ -3,7 +3,7 @@ import { isDeepStrictEqual } from 'node:util'
 import { inflateSync } from 'node:zlib'
 import { attachmentPlaces } from './read-attachments'
 import { objectOf, streamOf, type PdfFile, type PdfObject } from './pdf-file'
-import { PdfFault, array, dictionary, reference } from './pdf-syntax'
+import { PdfFault, array, dictionary, isReference, reference } from './pdf-syntax'
 
 /**
  * In the order of the pages, then the rest; empty where there is none.
@@ -103,6 +103,8 @@ function placesOf(numbers: readonly number[], file: PdfFile): ReadonlySet<string
   return new Set(found.map(({ place }) => place))
 }
 
+const PROPERTIES = 'its title, dates and program'
+
 /** Of a file of our own making, which is as we know it. */
 function placesByObject(file: PdfFile): ReadonlyMap<number, string> {
   const places = new Map<number, string>()
@@ -116,9 +118,11 @@ function placesByObject(file: PdfFile): ReadonlyMap<number, string> {
     places.set(stream, `the attached ${name}`)
     places.set(entry, `the attached ${name}`)
   }
-  places.set(file.info, 'its title, dates and program')
-  if (file.root.has('Metadata')) places.set(reference(file.root.get('Metadata')), 'its title, dates and program')
-  return places
+  const properties = dictionary(objectOf(file, file.info).value)
+  for (const value of [...properties.values(), file.root.get('Metadata')]) {
+    if (isReference(value)) places.set(value.object, PROPERTIES)
+  }
+  return places.set(file.info, PROPERTIES)
 }
 
 function firstDifference(before: Uint8Array, after: Uint8Array): number {

@@ -177,10 +177,13 @@ export function array(value: PdfValue | undefined): readonly PdfValue[] {
   return value as readonly PdfValue[]
 }
 
+export function isReference(value: PdfValue | undefined): value is PdfReference {
+  return typeof value === 'object' && value !== null && 'object' in value
+}
+
 /** The number of the object referred to. @throws PdfFault if the value is no reference */
 export function reference(value: PdfValue | undefined): number {
-  if (typeof value !== 'object' || value === null || !('object' in value))
-    throw new PdfFault('its structure is damaged')
+  if (!isReference(value)) throw new PdfFault('its structure is damaged')
   return value.object
 }
 

@@ -25,13 +25,14 @@ export interface ReportMaking {
   readonly version: string
   readonly date: string | null
   readonly paper: 'A4' | 'Letter'
+  /** What it says of its compressor: by default the mark of our own; another's, where another's report is made again. */
+  readonly compression?: string
 }
 
 export interface ReportContents extends ReportMaking {
   readonly inputs: ReportInputs
   /** Text of result.json. */
   readonly result: string
-  /** By `compressionMark`, of where it was made. */
   readonly compression: string
 }
 
@@ -43,7 +44,7 @@ interface ManifestFile {
 export function reportAttachments(
   inputs: ReportInputs,
   result: string,
-  { program, version, date, paper }: ReportMaking,
+  { program, version, date, paper, compression = compressionMark() }: ReportMaking,
 ): readonly ReportAttachment[] {
   const [procedureName, ...readingNames] = attachmentNames(
     [inputs.procedure, ...inputs.readings].map(({ name }) => name),
@@ -52,7 +53,7 @@ export function reportAttachments(
     format: REPORT_FORMAT,
     program: { name: program, version },
     options: { date, paper },
-    compression: compressionMark(),
+    compression,
     readings: inputs.readings.map(({ name }, k): ManifestFile => ({ attachment: readingNames[k], name })),
     procedure: { attachment: procedureName, name: inputs.procedure.name } satisfies ManifestFile,
     result: RESULT_NAME,
@@ -95,7 +96,7 @@ export function reportContents(attachments: readonly ReadAttachment[]): ReportCo
 const MAX_MANIFEST_BYTES = 2 ** 20
 
 interface Manifest {
-  readonly making: ReportMaking
+  readonly making: Omit<ReportMaking, 'compression'>
   readonly compression: string
   readonly readings: readonly ManifestFile[]
   readonly procedure: ManifestFile
