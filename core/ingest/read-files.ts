@@ -36,12 +36,20 @@ interface ReadFile {
   readonly end: number
 }
 
-export function readReadings(inputs: readonly InputFile[], options: ReadOptions = {}): ReadResult {
+/** Is told after every block which share of the bytes is read, and how many rows so far. */
+export type ReadWatch = (share: number, rows: number) => void
+
+export function readReadings(inputs: readonly InputFile[], options: ReadOptions = {}, watch?: ReadWatch): ReadResult {
   const draft = new LotDraft()
+  const total = inputs.reduce((sum, { bytes }) => sum + bytes.length, 0)
+  let before = 0
   const files: ReadFile[] = []
   const fileProblems: FileProblem[] = []
   for (const input of inputs) {
-    const file = readFile(draft, files.length, input, options)
+    const file = readFile(draft, files.length, input, options, (share) =>
+      watch?.((before + share * input.bytes.length) / total, draft.columns.count),
+    )
+    before += input.bytes.length
     if ('kind' in file) fileProblems.push(file)
     else files.push(file)
   }
@@ -56,7 +64,13 @@ export function readReadings(inputs: readonly InputFile[], options: ReadOptions 
   }
 }
 
-function readFile(draft: LotDraft, index: number, input: InputFile, options: ReadOptions): ReadFile | FileProblem {
+function readFile(
+  draft: LotDraft,
+  index: number,
+  input: InputFile,
+  options: ReadOptions,
+  watch: (share: number) => void,
+): ReadFile | FileProblem {
   const file = input.name
   if (input.bytes.length === 0) return { kind: 'empty-file', file }
   if (index > 0xffff) return { kind: 'cannot-read', file, why: 'there are more than 65536 files' }
@@ -70,7 +84,7 @@ function readFile(draft: LotDraft, index: number, input: InputFile, options: Rea
   if ('kind' in header) return header
   const reader = new RowReader(draft, file, index, header.delimiter, options)
   const begin = draft.columns.count
-  const problem = readBlocks(reader, text, ends, header, options)
+  const problem = readBlocks(reader, text, ends, header, options, watch)
   if (problem) {
     draft.columns.truncate(begin)
     return problem
@@ -87,6 +101,7 @@ function readBlocks(
   ends: readonly number[],
   header: { readonly delimiter: string; readonly row: number },
   options: ReadOptions,
+  watch: (share: number) => void,
 ): FileProblem | null {
   let line = 1
   let begin = 0
@@ -104,6 +119,7 @@ function readBlocks(
     if (reader.failure) return reader.failure
     line += rows.lines
     begin = end
+    watch(end / text.length)
   }
   reader.finish()
   return null

@@ -5,6 +5,7 @@ import type { LotAnalysis, WaferAnalysis } from '../analysis/lot-analysis'
 import { limitsOn } from '../analysis/quantity'
 import { sitePositions, type SitePositions } from '../analysis/site-positions'
 import type { Working } from '../analysis/working'
+import type { Decision } from './decision'
 import { bandScale, type BandScale } from './figures/band-scale'
 import { NO_LIMITS, type MarkKind, type SiteLimits } from './figures/marks'
 import type { MapSites } from './figures/wafer-map'
@@ -23,6 +24,8 @@ export interface LotReportInput {
   readonly paper: PaperSize
   /** Of every formula the analysis used, from the registers. */
   readonly sources: readonly FormulaSource[]
+  /** Of the responsible person; null or absent where none is made yet. */
+  readonly decision?: Decision | null
 }
 
 export interface ReportContext {

@@ -2,6 +2,7 @@
 import { plural } from '../../conformity/reasons'
 import type { LotAnalysis } from '../../analysis/lot-analysis'
 import type { Block, KeyValue, TableBlock, TableColumn, TableRow } from '../document'
+import { DECISIONS } from '../decision'
 import { lotStrip } from '../figures/lot-strip'
 import { formatLimit } from '../figures/map-legend'
 import type { SiteLimits } from '../figures/marks'
@@ -25,11 +26,24 @@ export function summarySection(context: ReportContext): Block[] {
       mark: lotMarkOf(context),
       sentence: analysis.lot.sentence,
     },
+    ...decisionOf(context),
     { kind: 'key-values', columns: 2, entries: measured(context) },
     ...strip(context),
     { kind: 'heading', level: 2, text: 'Wafers' },
     wafersTable(context),
   ]
+}
+
+/** Beside the rules' verdict, which stays as it is. */
+function decisionOf({ input: { decision } }: ReportContext): Block[] {
+  if (!decision) return []
+  const by = [decision.name.trim() || 'unnamed', writtenDate(decision.date)].join(', ')
+  const comment = decision.comment.trim()
+  const entries: KeyValue[] = [
+    { key: 'Decision', value: DECISIONS[decision.decision], note: by },
+    ...(comment === '' ? [] : [{ key: 'Comment', value: comment.replace(/\s+/g, ' ') }]),
+  ]
+  return [{ kind: 'key-values', columns: 1, entries }]
 }
 
 /** 2026-03-14 09:30 +01:00: the time as given, without its seconds. */

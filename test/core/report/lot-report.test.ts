@@ -1,12 +1,13 @@
 import { describe, expect, it } from 'vitest'
 import type { LotAnalysis } from '../../../core/analysis/lot-analysis'
+import type { Decision } from '../../../core/report/decision'
 import type { Block, KeyValuesBlock, TableBlock } from '../../../core/report/document'
 import { lotReport } from '../../../core/report/lot-report'
 import { sourceList } from '../../../core/report/source-list'
 import { unitOfKey } from '../../../core/report/sections/procedure-section'
 import { syntheticLot, syntheticSources, syntheticWorking } from '../../fixtures/report/synthetic-lot'
 
-function blocksOf(analysis: LotAnalysis): readonly Block[] {
+function blocksOf(analysis: LotAnalysis, decision: Decision | null = null): readonly Block[] {
   return lotReport({
     analysis,
     working: syntheticWorking,
@@ -14,6 +15,7 @@ function blocksOf(analysis: LotAnalysis): readonly Block[] {
     program: 'Persquare 0.1.0',
     paper: 'A4',
     sources: syntheticSources,
+    decision,
   }).blocks
 }
 
@@ -26,6 +28,23 @@ describe('the lot report', () => {
   it('begins with the verdict by word, shape and sentence', () => {
     const verdict = blocks.find((block) => block.kind === 'verdict')
     expect(verdict).toMatchObject({ word: 'Out of spec', mark: 'above', sentence: lot.lot.sentence })
+  })
+
+  it('sets a person’s decision beside the verdict, which stays as it is', () => {
+    const decision: Decision = { decision: 'hold', name: 'A. Tern', comment: 'Probe\nagain.', date: '2026-03-14T10:05:00+01:00' } // prettier-ignore
+    const decided = blocksOf(lot, decision)
+    const at = decided.findIndex((block) => block.kind === 'verdict')
+    expect(decided[at]).toEqual(blocks[at])
+    expect(decided[at + 1]).toEqual({
+      kind: 'key-values',
+      columns: 1,
+      entries: [
+        { key: 'Decision', value: 'Hold', note: 'A. Tern, 2026-03-14 10:05 +01:00' },
+        { key: 'Comment', value: 'Probe again.' },
+      ],
+    })
+    expect([...decided.slice(0, at + 1), ...decided.slice(at + 2)]).toEqual(blocks)
+    expect(JSON.stringify(blocksOf(lot, { ...decision, name: ' ', comment: ' ' })[at + 1])).toContain('unnamed, 2026')
   })
 
   it('lists every wafer in slot order, also where the file has another', () => {
