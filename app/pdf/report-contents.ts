@@ -1,7 +1,9 @@
 /** What a report carries to be made again: its inputs, its result, and a list of them that says how it was made. */
 import { createHash } from 'node:crypto'
 import { deflateSync } from 'node:zlib'
+import type { Exclusion } from '../../core/analysis/exclusions'
 import { parseTime } from '../../core/ingest/parse-time'
+import { DECISIONS, type Decision } from '../../core/report/decision'
 import { attachmentNames, MANIFEST_NAME, RESULT_NAME } from './attachment-names'
 import { PdfFault } from './pdf-syntax'
 import type { ReadAttachment } from './read-attachments'
@@ -25,15 +27,27 @@ export interface ReportMaking {
   readonly version: string
   readonly date: string | null
   readonly paper: 'A4' | 'Letter'
+  /** Of the responsible person, where one is made. */
+  readonly decision?: Decision | null
   /** What it says of its compressor: by default the mark of our own; another's, where another's report is made again. */
   readonly compression?: string
 }
 
 export interface ReportContents extends ReportMaking {
   readonly inputs: ReportInputs
+  /** Sites that a person took out. */
+  readonly excluded: readonly Exclusion[]
   /** Text of result.json. */
   readonly result: string
   readonly compression: string
+}
+
+/** What the analysis was made of and by, beside the files: `excluded` is the analysis's own. */
+export interface ReportSubject {
+  readonly inputs: ReportInputs
+  readonly excluded: readonly Exclusion[]
+  /** Text of result.json. */
+  readonly result: string
 }
 
 interface ManifestFile {
@@ -42,9 +56,8 @@ interface ManifestFile {
 }
 
 export function reportAttachments(
-  inputs: ReportInputs,
-  result: string,
-  { program, version, date, paper, compression = compressionMark() }: ReportMaking,
+  { inputs, excluded, result }: ReportSubject,
+  { program, version, date, paper, decision = null, compression = compressionMark() }: ReportMaking,
 ): readonly ReportAttachment[] {
   const [procedureName, ...readingNames] = attachmentNames(
     [inputs.procedure, ...inputs.readings].map(({ name }) => name),
@@ -53,6 +66,8 @@ export function reportAttachments(
     format: REPORT_FORMAT,
     program: { name: program, version },
     options: { date, paper },
+    excluded: excluded.map(({ wafer, site, reason }) => ({ wafer, site, reason })),
+    decision: decision && { ...decision },
     compression,
     readings: inputs.readings.map(({ name }, k): ManifestFile => ({ attachment: readingNames[k], name })),
     procedure: { attachment: procedureName, name: inputs.procedure.name } satisfies ManifestFile,
@@ -83,20 +98,21 @@ export function reportContents(attachments: readonly ReadAttachment[]): ReportCo
     used.add(name)
     return bytes
   }
-  const { readings, procedure, making, compression } = manifest
+  const { readings, procedure, making, excluded, compression } = manifest
   const inputs = {
     readings: readings.map(({ attachment, name }) => ({ name, bytes: bytesOf(attachment) })),
     procedure: { name: procedure.name, bytes: bytesOf(procedure.attachment) },
   }
   const result = textOf(bytesOf(RESULT_NAME))
   if (used.size !== byName.size) throw new PdfFault('a file was added to it')
-  return { ...making, inputs, result, compression }
+  return { ...making, inputs, excluded, result, compression }
 }
 
-const MAX_MANIFEST_BYTES = 2 ** 20
+const MAX_MANIFEST_BYTES = 16 * 2 ** 20
 
 interface Manifest {
   readonly making: Omit<ReportMaking, 'compression'>
+  readonly excluded: readonly Exclusion[]
   readonly compression: string
   readonly readings: readonly ManifestFile[]
   readonly procedure: ManifestFile
@@ -112,13 +128,29 @@ function parsedManifest(bytes: Uint8Array | undefined): Manifest {
   const program = fields(written['program'])
   const { date, paper } = fields(written['options'])
   if (paper !== 'A4' && paper !== 'Letter') throw manifestFault()
-  if (!Array.isArray(written['readings']) || written['readings'].length === 0) throw manifestFault()
+  const readings = list(written['readings']).map(manifestFile)
+  if (readings.length === 0) throw manifestFault()
+  const decision = decisionOf(written['decision'])
   return {
-    making: { program: word(program['name']), version: word(program['version']), date: dateOf(date), paper },
+    making: { program: word(program['name']), version: word(program['version']), date: dateOf(date), paper, decision },
+    excluded: list(written['excluded']).map(exclusionOf),
     compression: word(written['compression']),
-    readings: written['readings'].map(manifestFile),
+    readings,
     procedure: manifestFile(written['procedure']),
   }
+}
+
+function exclusionOf(written: unknown): Exclusion {
+  const { wafer, site, reason } = fields(written)
+  return { wafer: text(wafer), site: text(site), reason: text(reason) }
+}
+
+function decisionOf(written: unknown): Decision | null {
+  if (written === null) return null
+  const { decision, name, comment, date } = fields(written)
+  const made = Object.keys(DECISIONS).find((id) => id === decision)
+  if (made === undefined) throw manifestFault()
+  return { decision: made as Decision['decision'], name: text(name), comment: text(comment), date: text(date) }
 }
 
 function manifestFile(written: unknown): ManifestFile {
@@ -128,15 +160,26 @@ function manifestFile(written: unknown): ManifestFile {
 
 function dateOf(date: unknown): string | null {
   if (date === null) return null
-  const text = word(date)
-  if (typeof parseTime(text) === 'string') throw manifestFault()
-  return text
+  const written = word(date)
+  if (typeof parseTime(written) === 'string') throw manifestFault()
+  return written
 }
 
-const MAX_WORD = 1000
+const MAX_TEXT = 10_000
+
+function text(value: unknown): string {
+  if (typeof value !== 'string' || value.length > MAX_TEXT) throw manifestFault()
+  return value
+}
 
 function word(value: unknown): string {
-  if (typeof value !== 'string' || value === '' || value.length > MAX_WORD) throw manifestFault()
+  const found = text(value)
+  if (found === '') throw manifestFault()
+  return found
+}
+
+function list(value: unknown): readonly unknown[] {
+  if (!Array.isArray(value)) throw manifestFault()
   return value
 }
 
@@ -145,9 +188,9 @@ function fields(value: unknown): Readonly<Record<string, unknown>> {
   return value as Record<string, unknown>
 }
 
-function jsonOf(text: string): unknown {
+function jsonOf(written: string): unknown {
   try {
-    return JSON.parse(text)
+    return JSON.parse(written)
   } catch {
     throw manifestFault()
   }

@@ -9,7 +9,7 @@ import { lotReport } from '../../core/report/lot-report'
 import { openPdf } from './pdf-file'
 import { PdfFault } from './pdf-syntax'
 import { ATTACHMENT_LIMITS, readAttachments } from './read-attachments'
-import { reportAttachments, type ReportInputs, type ReportMaking } from './report-contents'
+import { reportAttachments, reportContents, type ReportInputs, type ReportMaking } from './report-contents'
 import { renderReportPdf, type ReportAttachment } from './write-report'
 
 /** `date` overrides the time of the latest reading, which is the report's date otherwise. */
@@ -25,9 +25,10 @@ export interface ReportPdfOptions extends ReportMaking {
  * @throws CoreError cannot-write if the inputs are too many or too large to travel in a report that can be read again
  */
 export async function reportPdf(analysis: LotAnalysis, options: ReportPdfOptions): Promise<Uint8Array> {
-  const { program, version, date, paper, inputs } = options
+  const { program, version, date, paper, decision = null, inputs } = options
   requireFew(inputs)
-  const attachments = reportAttachments(inputs, resultJson(analysis, { program, version }), options)
+  const result = resultJson(analysis, { program, version })
+  const attachments = reportAttachments({ inputs, excluded: analysis.excluded, result }, options)
   const site = reportSite(analysis)
   const report = lotReport({
     analysis,
@@ -36,6 +37,7 @@ export async function reportPdf(analysis: LotAnalysis, options: ReportPdfOptions
     program: `${program} ${version}`,
     paper,
     sources: formulaSources(analysis),
+    decision,
   })
   const pdf = await renderReportPdf(report, { attachments })
   requireReadable(pdf, attachments)
@@ -55,6 +57,7 @@ function requireReadable(pdf: Uint8Array, attachments: readonly ReportAttachment
     const isWhole = attachments.every(
       ({ name, bytes }, k) => found[k].name === name && Buffer.compare(found[k].bytes, bytes) === 0,
     )
+    reportContents(found)
     if (!isWhole) throw new Error('the report does not hold what was attached to it')
   } catch (error) {
     if (error instanceof PdfFault) throw unwritable(`its inputs can't travel in it: ${error.message}`)

@@ -46,7 +46,7 @@ export interface PageComparison {
 export async function verifyReport(bytes: Uint8Array, verifier: Verifier): Promise<Verification> {
   const { file, contents } = read(bytes, verifier.file)
   const { readings, procedure } = contents.inputs
-  const { analysis, problems } = run({ readings: readings.map(withDigest), procedure })
+  const { analysis, problems } = run({ readings: readings.map(withDigest), procedure, excluded: contents.excluded })
   const known = {
     madeBy: { program: contents.program, version: contents.version },
     inputs: [...readings, procedure].map(({ name }) => name),

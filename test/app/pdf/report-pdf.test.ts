@@ -24,6 +24,8 @@ describe('what a report carries', () => {
       format: 'persquare-report/1',
       program: { name: 'Persquare', version: '9.8.7' },
       options: { date: '2026-03-16', paper: 'A4' },
+      excluded: [],
+      decision: null,
       compression: compressionMark(),
       readings: [{ attachment: 'TB-0417.csv', name: 'TB-0417.csv' }],
       procedure: { attachment: 'procedure.json', name: 'procedure.json' },

@@ -3,6 +3,7 @@ import { createHash } from 'node:crypto'
 import { deflateSync } from 'node:zlib'
 import { reportPdf, type ReportPdfOptions } from '../../../app/pdf/report-pdf'
 import { renderReportPdf, type ReportAttachment } from '../../../app/pdf/write-report'
+import type { Exclusion } from '../../../core/analysis/exclusions'
 import { run } from '../../../core/analysis/run'
 import type { Block } from '../../../core/report/document'
 
@@ -30,10 +31,13 @@ export function optionsOf(
   return { ...OWN, date: null, paper: 'A4', inputs: { readings: readings.map(named), procedure: named(procedure) } }
 }
 
-export function makeReport(options: ReportPdfOptions = optionsOf()): Promise<Uint8Array> {
+export function makeReport(
+  options: ReportPdfOptions = optionsOf(),
+  excluded: readonly Exclusion[] = [],
+): Promise<Uint8Array> {
   const { readings, procedure } = options.inputs
   const withDigest = readings.map((file) => ({ ...file, sha256: createHash('sha256').update(file.bytes).digest('hex') }))
-  const { analysis, problems } = run({ readings: withDigest, procedure })
+  const { analysis, problems } = run({ readings: withDigest, procedure, excluded })
   if (!analysis) throw new Error(`not analysed: ${JSON.stringify(problems)}`)
   return reportPdf(analysis, options)
 } // prettier-ignore

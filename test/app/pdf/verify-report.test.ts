@@ -20,7 +20,7 @@ vi.mock('../../../app/pdf/report-pdf', async (original) => {
       const { inputs, ...rest } = options
       const digest = createHash('sha256').update(JSON.stringify(rest))
       for (const { name, bytes } of [...inputs.readings, inputs.procedure]) digest.update(name).update(bytes)
-      const key = digest.digest('hex')
+      const key = digest.update(JSON.stringify(analysis.excluded)).digest('hex')
       if (!made.has(key)) made.set(key, reportPdf(analysis, options))
       return made.get(key)!
     },
@@ -44,8 +44,8 @@ const attachmentsOf = (report: Uint8Array): readonly ReportAttachment[] =>
   readAttachments(openPdf(report)).map((file) => ({ ...file, mime: 'text/plain', description: 'x' }))
 
 /** Another PDF of our kind around the same files, one of them written anew. */
-async function withFile(name: string, rewrite: (text: string) => string): Promise<Uint8Array> {
-  const files = attachmentsOf(await makeReport())
+async function withFile(name: string, rewrite: (text: string) => string, report?: Uint8Array): Promise<Uint8Array> {
+  const files = attachmentsOf(report ?? (await makeReport()))
   const text = (bytes: Uint8Array) => new TextDecoder().decode(bytes)
   return renderPages(
     'Any words',
@@ -114,6 +114,33 @@ describe('a report as it was made', () => {
     const { isSame, inputs } = await verify(await makeReport(options))
     expect(isSame).toBe(true)
     expect(inputs).toEqual(['result.json', 'result.json', '../Prüfung\n.json'])
+  })
+})
+
+describe('a report with a person’s part in it', () => {
+  const excluded = [{ wafer: '1', site: '2', reason: 'scratch' }]
+  const decision = { decision: 'hold', name: 'A. Person', comment: '', date: '2026-03-16T12:00:00+01:00' } as const
+  const made = (): Promise<Uint8Array> => makeReport({ ...optionsOf(), decision }, excluded)
+  const manifest = (report: Uint8Array) =>
+    JSON.parse(new TextDecoder().decode(attachmentsOf(report).at(-1)!.bytes)) as Record<string, unknown>
+
+  it('carries the sites that were taken out and the decision, and is made again with both', async () => {
+    expect(manifest(await made())).toMatchObject({ excluded, decision })
+    expect(await verify(await made())).toMatchObject({ isSame: true, pages: { how: 'bytes', places: [] } })
+  })
+
+  it('is another without the one or the other', async () => {
+    const without = await withFile('persquare-report.json', (text) => text.replace(/"excluded": \[[^\]]*\]/, '"excluded": []'), await made()) // prettier-ignore
+    expect((await verify(without)).result!.differences.map(({ path }) => path)).toContain('excluded[0]')
+    const released = await withFile(
+      'persquare-report.json',
+      (text) => text.replace('"hold"', '"release"'),
+      await made(),
+    )
+    const { result, pages } = await verify(released)
+    expect(result!.count).toBe(0)
+    expect(pages.places).toContain('page 1')
+    expect(await statusOf(await withFile('persquare-report.json', (text) => text.replace('"hold"', '"sell"'), await made()))).toBe(2) // prettier-ignore
   })
 })
 
