@@ -1,70 +1,79 @@
 import { defineStore } from 'pinia'
-import { computed, ref, shallowRef } from 'vue'
-import { CoreError } from '../../../core/problems/problem'
-import type { Problem } from '../../../core/problems/problem'
-import type { OpenedFile, Reply } from '../../contract/host'
-import { analyzeFiles } from '../analysis'
+import { computed, ref, shallowRef, watch } from 'vue'
+import type { Progress } from '../../../core/analysis/progress'
 import type { RunResult } from '../../../core/analysis/run'
+import type { Problem } from '../../../core/problems/problem'
+import { isProcedureName } from '../../contract/file-kinds'
+import type { OpenedFile, Reply } from '../../contract/host'
+import { analyzeInWorker, lotAnalyzer } from '../analysis'
+import { lotPictures } from '../figures/lot-pictures'
+import { useChoicesStore } from './choices'
 
 export type LotState = 'empty' | 'needs-procedure' | 'needs-readings' | 'reading' | 'analysed' | 'failed'
 
-/** The one lot that the window holds: its files, and what core made of them. */
+/** The one lot that the window holds: what core made of the files that were chosen. */
 export const useLotStore = defineStore('lot', () => {
-  const readings = shallowRef<readonly OpenedFile[]>([])
-  const procedure = shallowRef<OpenedFile | null>(null)
+  const choices = useChoicesStore()
   const outcome = shallowRef<RunResult | null>(null)
   const refusal = shallowRef<Problem | null>(null)
+  const progress = shallowRef<Progress | null>(null)
   const busy = ref(false)
+  const wasCancelled = ref(false)
   let latest = 0
 
   const analysis = computed(() => outcome.value?.analysis ?? null)
+  const pictures = computed(() => (analysis.value ? lotPictures(analysis.value) : null))
   const problems = computed(() => [...(refusal.value ? [refusal.value] : []), ...(outcome.value?.problems ?? [])])
   const state = computed<LotState>(() => {
-    if (busy.value) return 'reading'
     if (analysis.value) return 'analysed'
+    if (busy.value) return 'reading'
     if (problems.value.length > 0) return 'failed'
-    if (readings.value.length > 0) return 'needs-procedure'
-    return procedure.value ? 'needs-readings' : 'empty'
+    if (choices.now.readings.length > 0) return choices.now.procedure ? 'failed' : 'needs-procedure'
+    return choices.now.procedure ? 'needs-readings' : 'empty'
   })
 
   /** Takes what was chosen or dropped: JSON is the procedure, everything else readings in place of the last. */
-  async function take(reply: Reply<readonly OpenedFile[]>): Promise<void> {
+  function take(reply: Reply<readonly OpenedFile[]>): void {
     refusal.value = reply.ok ? null : reply.problem
     if (!reply.ok || reply.value.length === 0) return
-    const procedures = reply.value.filter(isProcedure)
-    const others = reply.value.filter((file) => !isProcedure(file))
-    if (procedures.length > 0) procedure.value = procedures[procedures.length - 1]
-    if (others.length > 0) readings.value = others
-    await analyse()
+    const procedure = reply.value.filter(({ name }) => isProcedureName(name)).at(-1)
+    const readings = reply.value.filter(({ name }) => !isProcedureName(name))
+    const label = readings.length > 0 ? 'opening the readings' : 'choosing the procedure'
+    choices.change(label, { ...(procedure && { procedure }), ...(readings.length > 0 && { readings, excluded: [] }) })
   }
 
   async function analyse(): Promise<void> {
     const turn = ++latest
-    outcome.value = null
-    if (readings.value.length === 0 || !procedure.value) return
+    const { readings, procedure, excluded } = choices.now
+    if (readings.length === 0 || !procedure) {
+      lotAnalyzer.close()
+      outcome.value = null
+      busy.value = false
+      return
+    }
     busy.value = true
-    const found = await settled(analyzeFiles(readings.value, procedure.value))
-    // Files that were dropped meanwhile have the word.
+    progress.value = null
+    wasCancelled.value = false
+    const running = analyzeInWorker(readings, procedure, { excluded })
+    running.progress((told) => (progress.value = told))
+    const found = await running.result
+    // What was chosen meanwhile has the word.
     if (turn !== latest) return
-    outcome.value = found
     busy.value = false
+    if (found) outcome.value = found
+    else wasCancelled.value = true
   }
+  function cancel(): void {
+    lotAnalyzer.close()
+  }
+  /** Says what the host could not do. */
+  function refuse(problem: Problem): void {
+    refusal.value = problem
+  }
+  watch(
+    () => [choices.now.readings, choices.now.procedure, choices.now.excluded] as const,
+    () => void analyse(),
+  )
 
-  return { readings, procedure, analysis, problems, state, take }
+  return { analysis, pictures, problems, refusal, state, busy, progress, wasCancelled, take, cancel, analyse, refuse }
 })
-
-function isProcedure({ name }: OpenedFile): boolean {
-  return name.toLowerCase().endsWith('.json')
-}
-
-async function settled(running: Promise<RunResult>): Promise<RunResult> {
-  try {
-    return await running
-  } catch (error) {
-    const problem: Problem =
-      error instanceof CoreError
-        ? error.problem
-        : { kind: 'not-applicable', what: 'the analysis', why: `internal error: ${String(error)}` }
-    return { analysis: null, problems: [problem] }
-  }
-}
