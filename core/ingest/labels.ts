@@ -15,7 +15,13 @@ export class SiteNames {
 
   ofCell(cell: string): number {
     const number = plainNumber(cell)
-    return number >= 0 ? this.ofNumber(number) : this.ofText(readTextCell(cell))
+    return number >= 0 ? this.ofNumber(number) : this.ofName(readTextCell(cell))
+  }
+
+  /** " 5" is site 5, whatever blanks the file sets about it. */
+  private ofName(text: string): number {
+    const number = plainNumber(text)
+    return number >= 0 ? this.ofNumber(number) : this.ofText(text)
   }
 
   ofNumber(number: number): number {
@@ -99,19 +105,20 @@ function slotNumber(text: string): number {
 
 const STATISTICS_WORDS = new Set(
   (
-    'mean avg average median std stdev std.dev stddev sd sigma 3sigma min minimum max maximum range total sum count uniformity ' +
-    'unif nonuniformity non-uniformity summary end variance cv'
+    'mean avg average median std stdev stdv std.dev std-dev st.dev stddev sd sigma 1sigma 3sigma 6sigma min minimum max maximum ' +
+    'range total sum count uniformity unif nonuniformity non-uniformity summary end variance cv'
   ).split(' '),
 )
 
-/** "Mean", "Std Dev" and the like at the beginning of a row: statistics under the readings, not a site. */
+/** "Mean", "Std. Dev." and the like at the beginning of a row: statistics under the readings, not a site. */
 export function isStatisticsWord(cell: string): boolean {
   if (cell.length > 60) return false
-  const words = cell
+  const [first] = cell
     .trim()
     .toLowerCase()
-    .split(/[\s:=(%]+/)
-  return STATISTICS_WORDS.has(words[0])
+    .replace(/^(\d)[ -](?=sigma)/, '$1')
+    .split(/[\s:=(%_[]+/)
+  return STATISTICS_WORDS.has(first.replace(/\.+$/, ''))
 }
 
 /** `TB-0417_W04.csv`: the lot (or a name for it) is the stem, the wafer its part after W, wafer or slot. */

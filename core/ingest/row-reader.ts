@@ -184,7 +184,7 @@ export class RowReader {
 
   /** Asked of every row, so the usual answers are quick: a number, or the same word as in the row before. */
   private isStatistics(cell: string): boolean {
-    if (!(cell.charCodeAt(0) > 57) || cell === this.lastWord) return false
+    if (isLikeNumber(cell) || cell === this.lastWord) return false
     if (isStatisticsWord(cell)) return true
     this.lastWord = cell
     return false
@@ -203,7 +203,7 @@ export class RowReader {
       id = this.section.wafer || slot || this.fileWafer
     } else if (at.wafer < 0) id = slot
     else if (id === '') id = slot
-    if (id === '') return -1
+    if (id === '' || isStatisticsWord(waferCell)) return -1
     this.lastWaferCell = waferCell
     this.lastSlotCell = slotCell
     return (this.lastWafer = this.draft.wafers.of(id, slot))
@@ -276,7 +276,7 @@ export class RowReader {
 
   private rejectReading(cells: readonly string[], line: number, filled: number): void {
     const { width, numbers, headers, at } = this.layout!
-    if (isStatisticsWord(cells[0]) || (at.site >= 0 && isStatisticsWord(cells[at.site] ?? ''))) {
+    if ([0, at.site, at.wafer].some((place) => isStatisticsWord(cells[place] ?? ''))) {
       return this.reject(line, cells, 'looks like statistics or an end mark, not like a reading')
     }
     if (cells.length < width || filled > width) {
@@ -334,6 +334,13 @@ export class RowReader {
   private note(sentence: string): void {
     this.draft.notes.add(`${this.file}: ${sentence}`)
   }
+}
+
+/** Begins and ends as a number does; nothing surer is needed to pass over the many. */
+function isLikeNumber(cell: string): boolean {
+  let at = 0
+  while (cell.charCodeAt(at) === 32) at++
+  return !(cell.charCodeAt(at) > 57) && !(cell.charCodeAt(cell.length - 1) > 57)
 }
 
 function withUnit(header: string, cell: string): string {

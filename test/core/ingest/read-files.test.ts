@@ -229,6 +229,11 @@ describe('doubled sites', () => {
     expect(readClean('die_x,die_y,site,Rs\n0,0,1,90\n0,1,1,91\n0,0,2,92\n').count).toBe(3)
   })
 
+  it('whatever blanks stand about its number', () => {
+    const { problems } = readText('site,Rs\n5,90\n 5 ,91\n')
+    expect(problems).toMatchObject([{ kind: 'doubled-site', line: 3, firstLine: 2 }])
+  })
+
   it('a place on the border of two hash cells is found', () => {
     const { problems } = readText('site,x,y,Rs\n1,0.0005,0.0015,90\n2,0.0004999,0.0014999,91\n')
     expect(problems).toMatchObject([{ kind: 'doubled-site', line: 3, firstLine: 2 }])

@@ -143,11 +143,20 @@ describe('rows', () => {
     ['2,0.001,0.02,7', 'bad-row', '4 fields'],
     ['2,"0.001,0.02', 'bad-row', 'quotation'],
     ['Std Dev,0.001,0.02', 'bad-row', 'statistics'],
+    [' Mean ,0.001,0.02', 'bad-row', 'statistics'],
+    ['3 sigma,0.001,0.02', 'bad-row', 'statistics'],
+    ['Std. Dev.,0.001,0.02', 'bad-row', 'statistics'],
     ['end of data', 'bad-row', 'end mark'],
   ])('row %j: %s', (row, kind, why) => {
     const { readings, problems } = readText(`site,I,V\n1,0.001,0.02\n${row}\n3,0.001,0.02\n`)
     expect([...readings!.line]).toEqual([2, 4])
     expect(problems).toMatchObject([{ kind, line: 3, why: expect.stringContaining(why) }])
+  })
+
+  it('statistics that stand under the wafer, behind another column', () => {
+    const { readings, problems } = readText('time,wafer,site,Rs\n,W-07,1,90\n,W-07,2,91\n,Mean,,90.5\n')
+    expect(readings!.wafers.map(({ id }) => id)).toEqual(['W-07'])
+    expect(problems).toMatchObject([{ kind: 'bad-row', line: 4 }])
   })
 
   it('ready-made values must be above zero; an empty optional cell is NaN', () => {
