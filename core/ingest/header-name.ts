@@ -34,19 +34,15 @@ export function readHeader(header: string): readonly HeaderReading[] {
   const text = spellOut(plainText(header))
   const brackets = [...text.matchAll(BRACKETS)].map((match) => match.slice(1).find((part) => part !== undefined) ?? '')
   const outside = text.replace(BRACKETS, ' ')
-  const unitAt = brackets.findIndex((content) => findUnit(content) !== null)
   const readings: HeaderReading[] = []
-  if (unitAt >= 0) {
-    const rest = brackets.filter((_, at) => at !== unitAt).join(' ')
-    readings.push({
-      words: wordsOf(`${outside} ${rest}`),
-      unit: findUnit(brackets[unitAt]),
-      isBracketUnit: true,
-      bracket: null,
-    })
-  } else {
-    readings.push(...suffixReadings(tokensOf(`${brackets.join(' ')} ${outside}`)))
+  // "V/I (A) (ohm)": which of two units is the unit and which a name, the words will tell. The last is the likelier.
+  for (let at = brackets.length - 1; at >= 0; at--) {
+    const unit = findUnit(brackets[at])
+    if (unit === null) continue
+    const rest = brackets.filter((_, other) => other !== at).join(' ')
+    readings.push({ words: wordsOf(`${outside} ${rest}`), unit, isBracketUnit: true, bracket: null })
   }
+  if (readings.length === 0) readings.push(...suffixReadings(tokensOf(`${brackets.join(' ')} ${outside}`)))
   readings.push({ words: wordsOf(`${outside} ${brackets.join(' ')}`), unit: null, isBracketUnit: false, bracket: null })
   if (brackets.length > 0)
     readings.push({ words: wordsOf(outside), unit: null, isBracketUnit: false, bracket: brackets.join(' ') })

@@ -25,6 +25,8 @@ describe('matchHeader', () => {
     ['config B reverse voltage', 'voltage_rev_b_V', undefined],
     ['V/I', 'v_over_i_ohm', undefined],
     ['V/I B (mohm)', 'v_over_i_b_ohm', 'mohm'],
+    ['V/I (A) (ohm)', 'v_over_i_ohm', 'ohm'],
+    ['V/I (ohm) (B)', 'v_over_i_b_ohm', 'ohm'],
     ['R (V/A)', 'v_over_i_ohm', 'V/A'],
     ['R (ohm)', 'v_over_i_ohm', 'ohm'],
     ['R [ohm/sq]', 'sheet_resistance_ohm_sq', 'ohm/sq'],
