@@ -6,6 +6,8 @@ import { REVERSE_BIT } from './read-role'
 
 /** Meters answer 9.9E37 for an overload (SCPI 1999, volume 1, 7.2.1; from memory); no quantity we read comes near this. */
 export const LARGEST = 1e30
+/** Nor does any come near this from the other side: what is smaller is no reading, and V/I of it would leave all bounds. */
+export const SMALLEST = 1e-30
 
 export class ReadingCheck {
   private readonly x: Float64Array | null
@@ -44,19 +46,18 @@ export class ReadingCheck {
       const i = current[row]
       const v = voltage[row]
       if (i === i || v === v) {
-        if (!(isReverse ? i * v !== 0 && i === i && v === v : (i > 0 && v > 0) || (i < 0 && v < 0))) return false
+        if (!(isReverse ? isReading(i) && isReading(v) : areReadingsOfOneSign(i, v))) return false
         found = true
       }
     }
     if (role !== 0 && !found && !this.hasPlaceFor(row, isReverse)) return false
     for (const column of this.ready) {
       const value = column[row]
-      if (value <= 0) return false
+      if (value < SMALLEST) return false
       if (value === value) found = true
     }
     for (const [i, v] of this.pairs) {
-      const hasVoltage = v[row] === v[row]
-      if (hasVoltage && !(i[row] !== 0 && i[row] === i[row] && v[row] !== 0)) return false
+      if (v[row] === v[row] && !(isReading(i[row]) && isReading(v[row]))) return false
     }
     return found
   }
@@ -85,6 +86,7 @@ export class ReadingCheck {
         if (Number.isNaN(value(name))) return cell(name, 'is empty')
         if (value(name) === 0)
           return cell(name, name === i ? 'is zero: no current, no reading' : 'is zero: V/I would be zero')
+        if (!isReading(value(name))) return cell(name, TOO_SMALL)
       }
       if (isFirst && (role & REVERSE_BIT) === 0 && value(i) * value(v) < 0) {
         const why = `voltage and current have opposite signs (${value(v)} V, ${value(i)} A): V/I would be negative`
@@ -95,9 +97,23 @@ export class ReadingCheck {
       const why = 'a reverse or configuration B row needs its voltage and current'
       return { column: 'voltage_V', why, isCell: false }
     }
-    for (const name of READY) if (value(name) <= 0) return cell(name, 'is not above zero')
+    for (const name of READY) {
+      if (value(name) <= 0) return cell(name, 'is not above zero')
+      if (value(name) < SMALLEST) return cell(name, TOO_SMALL)
+    }
     return { column: READY.find((name) => has(this.layout, name)) ?? 'voltage_V', why: 'is empty', isCell: true }
   }
+}
+
+const TOO_SMALL = 'is too near to zero to be a reading'
+
+/** Not zero, not empty. */
+function isReading(value: number): boolean {
+  return value >= SMALLEST || value <= -SMALLEST
+}
+
+function areReadingsOfOneSign(i: number, v: number): boolean {
+  return (i >= SMALLEST && v >= SMALLEST) || (i <= -SMALLEST && v <= -SMALLEST)
 }
 
 const READY = ['vOverI_ohm', 'vOverIB_ohm', 'sheetResistance_ohm_sq', 'resistivity_ohm_cm'] as const

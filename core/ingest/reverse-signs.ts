@@ -138,8 +138,10 @@ function refuseOpposites(
     const v = rows.v[row]
     if ((i > 0 && v > 0) || (i < 0 && v < 0)) return
     dropped[row] = DROPPED.rejected
-    const found = `${v} V, ${i} A`
-    problems.row(columns.line[row], side.voltage, found, `${side.title} voltage and current give no positive V/I`)
+    const hasCurrent = i === i
+    const found = hasCurrent ? `${v} V, ${i} A` : `${v} V`
+    const why = hasCurrent ? 'voltage and current give no positive V/I' : 'voltage has no current'
+    problems.row(columns.line[row], side.voltage, found, `${side.title} ${why}`)
   })
 }
 
