@@ -97,8 +97,10 @@ function interpolate(
   const estimate = interpolator.evaluate(values)
   const shared = interpolator.evaluate(pick(sites.uShared, counting))
   const independent = interpolator.propagate(pick(sites.uIndependent, counting))
-  const left = interpolator.leaveOneOut(values)
-  const interpolation = left ? Math.sqrt(left.reduce((sum, residual) => sum + residual * residual, 0) / left.length) : 0
+  // NaN for a site without which the others lie on one line.
+  const left = (interpolator.leaveOneOut(values) ?? new Float64Array(0)).filter((residual) => !Number.isNaN(residual))
+  const squares = left.reduce((sum, residual) => sum + residual * residual, 0)
+  const interpolation = Math.sqrt(squares / Math.max(1, left.length))
   for (let die = 0; die < estimate.length; die++) {
     if (!interpolator.inside[die]) continue
     columns.value[start + die] = estimate[die]
