@@ -8,7 +8,13 @@ export default defineConfig({
   main: {
     build: {
       outDir: 'out/main',
-      rolldownOptions: { input: { index: resolve(here, 'app/main/index.ts') } },
+      rolldownOptions: {
+        // The maker of reports is a process of its own, started by the path of its file.
+        input: {
+          index: resolve(here, 'app/main/index.ts'),
+          'report-maker': resolve(here, 'app/main/report-maker.ts'),
+        },
+      },
     },
   },
   preload: {

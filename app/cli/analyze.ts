@@ -10,7 +10,7 @@ import { lotTable } from './lot-table'
 import { ARTIFACTS, outputFiles, type Artifact } from './output-files'
 import { readInput } from './read-inputs'
 import { PROGRAM, VERSION } from './version'
-import { writeWhole } from './write-whole'
+import { writeWhole } from '../host/write-whole'
 
 export interface AnalyzeOptions {
   readonly files: readonly string[]

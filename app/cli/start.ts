@@ -10,8 +10,11 @@ import { explain } from '../../core/problems/explain'
 import { CoreError } from '../../core/problems/problem'
 import { systemReason } from '../../core/problems/system-reason'
 import { startLoopbackHost } from '../browser/loopback-host'
+import { demoPaths } from '../host/demo-lot'
+import { stateFolder } from '../host/state-folder'
 import { electronRuntime } from './electron-runtime'
 import { openInBrowser } from './open-in-browser'
+import { PROGRAM, VERSION } from './version'
 
 const usage = `usage: npm start -- [FILE...] [--browser] [--port N] [--no-open]
 
@@ -100,7 +103,14 @@ function runElectron(runtime: string, files: readonly string[]): Promise<number>
 async function serve({ files, port, open }: Choices): Promise<number> {
   const root = join(ROOT, 'out', 'renderer')
   try {
-    const host = await startLoopbackHost({ port, root, files })
+    const host = await startLoopbackHost({
+      port,
+      root,
+      files,
+      demo: demoPaths(ROOT),
+      stateFolder: stateFolder(),
+      program: { program: PROGRAM, version: VERSION },
+    })
     console.log(`Persquare is at ${host.url} (stop with Ctrl+C)`)
     if (open) openInBrowser(host.url)
     await interrupted()

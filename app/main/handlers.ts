@@ -1,33 +1,35 @@
 /** What the window may ask for. Checks who asks and what came, once for all calls, and turns every throw into a reply. */
-import { readFile, writeFile } from 'node:fs/promises'
-import { basename } from 'node:path'
+import { dirname, basename } from 'node:path'
 import { dialog, ipcMain } from 'electron'
-import type { IpcMainInvokeEvent } from 'electron'
-import type { Problem } from '../../core/problems/problem'
-import { systemReason } from '../../core/problems/system-reason'
-import { CHANNELS } from '../contract/channels'
-import type { HostCall } from '../contract/channels'
-import { FILE_CHOICES } from '../contract/file-kinds'
-import type { FileChoice, Host, OpenedFile, Reply } from '../contract/host'
+import type { IpcMainInvokeEvent, OpenDialogOptions } from 'electron'
+import { CoreError } from '../../core/problems/problem'
+import { CHANNELS, type HostCall } from '../contract/channels'
+import { FILE_CHOICES, SAVE_KINDS, type SaveKind } from '../contract/file-kinds'
+import type { FileChoice, OpenedFile, ReportRequest } from '../contract/host'
+import { ARGUMENTS, type HostArguments, type ValueOf } from '../contract/messages'
+import { openFiles, readingsIn } from '../host/open-files'
+import { refusal, replying } from '../host/replies'
+import type { StateStore } from '../host/state-store'
+import { writeWhole } from '../host/write-whole'
 import { isPageUrl } from './page-protocol'
+import type { RecentFiles } from './recent-files'
+import type { WaitingFiles } from './waiting-files'
 
-type Handlers = { readonly [Name in HostCall]: (...args: Parameters<Host[Name]>) => ReturnType<Host[Name]> }
-type Arguments = { readonly [Name in HostCall]: (args: readonly unknown[]) => args is Parameters<Host[Name]> }
-
-/** Whether what came over a channel is what the contract says. */
-const accepts: Arguments = {
-  chooseFiles: (args): args is [FileChoice] => args.length === 1 && Object.hasOwn(FILE_CHOICES, String(args[0])),
-  startFiles: (args): args is [] => args.length === 0,
-  saveFile: (args): args is [string, Uint8Array] =>
-    args.length === 2 && typeof args[0] === 'string' && args[1] instanceof Uint8Array,
+type Handlers = {
+  readonly [Name in HostCall]: (...args: HostArguments<Name>) => Promise<ValueOf<Name>> | ValueOf<Name>
 }
 
-export function registerHandlers(startPaths: readonly string[]): void {
-  const handlers: Handlers = {
-    chooseFiles,
-    startFiles: () => openAll(startPaths),
-    saveFile,
-  }
+export interface Services {
+  readonly waiting: WaitingFiles
+  readonly demo: readonly string[]
+  readonly recent: RecentFiles
+  readonly state: StateStore
+  readonly makeReport: (request: ReportRequest) => Promise<Uint8Array>
+  readonly openInViewer: (pdf: Uint8Array) => Promise<void>
+}
+
+export function registerHandlers(services: Services): void {
+  const handlers = handlersFor(services)
   for (const name of Object.keys(handlers) as HostCall[]) {
     ipcMain.handle(CHANNELS[name], (event, ...args: unknown[]) => answer(handlers, name, event, args))
   }
@@ -38,60 +40,82 @@ async function answer<Name extends HostCall>(
   name: Name,
   event: Pick<IpcMainInvokeEvent, 'senderFrame'>,
   args: readonly unknown[],
-): Promise<Reply<unknown>> {
+) {
   const frame = event.senderFrame
-  if (!frame || frame.parent !== null || !isPageUrl(frame.url))
-    return refused(name, 'it was not asked for by the window')
-  if (!accepts[name](args)) return refused(name, 'it was asked for in a way that it does not know')
-  try {
-    return await handlers[name](...args)
-  } catch (error) {
-    return refused(name, systemReason(error))
+  const refused = (why: string) => ({ ok: false, problem: refusal(name, why) }) as const
+  if (!frame || frame.parent !== null || !isPageUrl(frame.url)) return refused('it was not asked for by the window')
+  const parsed = ARGUMENTS[name].safeParse(args)
+  if (!parsed.success) return refused('it was asked for in a way that it does not know')
+  return replying(name, () => handlers[name](...(parsed.data as HostArguments<Name>)))
+}
+
+function handlersFor({ waiting, demo, recent, state, makeReport, openInViewer }: Services): Handlers {
+  const opened = async (paths: readonly string[]): Promise<readonly OpenedFile[]> => {
+    const files = await openFiles(paths)
+    await recent.remember(paths)
+    return files
+  }
+  return {
+    chooseFiles: async (choice) => opened(await chosenPaths(choice)),
+    startFiles: () => waiting.take(opened),
+    demoFiles: () => openFiles(demo),
+    rememberDropped: async (paths) => ((await recent.remember(paths)) ? 'remembered' : 'ignored'),
+    recentFiles: () => recent.list(),
+    reopen: async (token) => opened(await recent.pathsOf(token)),
+    forgetRecent: async () => {
+      await recent.forget()
+      return 'forgotten' as const
+    },
+    saveFile,
+    makeReport,
+    printReport: async (pdf) => {
+      await openInViewer(pdf)
+      return 'opened' as const
+    },
+    loadState: () => state.load(),
+    saveState: async (text, kept) => {
+      await state.save(text, kept)
+      return 'saved' as const
+    },
+    keepFile: (bytes) => state.files.keep(bytes),
+    keptFile: (token) => state.files.read(token),
   }
 }
 
-function refused(name: string, why: string): Reply<never> {
-  return { ok: false, problem: { kind: 'bad-argument', argument: name, why } }
-}
-
-async function chooseFiles(choice: FileChoice): Promise<Reply<readonly OpenedFile[]>> {
+async function chosenPaths(choice: FileChoice): Promise<readonly string[]> {
   const { title, extensions } = FILE_CHOICES[choice]
+  const properties: Record<FileChoice, NonNullable<OpenDialogOptions['properties']>> = {
+    readings: ['openFile', 'multiSelections'],
+    procedure: ['openFile'],
+    folder: ['openDirectory'],
+  }
+  const filters = [
+    { name: title, extensions: [...extensions] },
+    { name: 'All files', extensions: ['*'] },
+  ]
   const { filePaths } = await dialog.showOpenDialog({
     title,
-    properties: choice === 'readings' ? ['openFile', 'multiSelections'] : ['openFile'],
-    filters: [
-      { name: title, extensions: [...extensions] },
-      { name: 'All files', extensions: ['*'] },
-    ],
+    properties: properties[choice],
+    ...(choice !== 'folder' && { filters }),
   })
-  return openAll(filePaths)
+  if (choice !== 'folder') return filePaths
+  return (await Promise.all(filePaths.map(readingsIn))).flat()
 }
 
-async function openAll(paths: readonly string[]): Promise<Reply<readonly OpenedFile[]>> {
-  const files: OpenedFile[] = []
-  for (const path of paths) {
-    const name = basename(path)
-    try {
-      files.push({ name, bytes: new Uint8Array(await readFile(path)) })
-    } catch (error) {
-      return failed({ kind: 'cannot-read', file: name, why: systemReason(error) })
-    }
-  }
-  return { ok: true, value: files }
-}
-
-async function saveFile(suggestedName: string, bytes: Uint8Array): Promise<Reply<'saved' | 'cancelled'>> {
-  // The name alone: the page has no say in the folder.
-  const { filePath } = await dialog.showSaveDialog({ defaultPath: basename(suggestedName) })
-  if (!filePath) return { ok: true, value: 'cancelled' }
+async function saveFile(suggestedName: string, bytes: Uint8Array, kind: SaveKind): Promise<'saved' | 'cancelled'> {
+  const { title, extension } = SAVE_KINDS[kind]
+  const { filePath } = await dialog.showSaveDialog({
+    // The name alone: the page has no say in the folder.
+    defaultPath: basename(suggestedName),
+    filters: [{ name: title, extensions: [extension] }],
+  })
+  if (!filePath) return 'cancelled'
   try {
-    await writeFile(filePath, bytes)
-    return { ok: true, value: 'saved' }
+    await writeWhole(dirname(filePath), new Map([[basename(filePath), bytes]]))
   } catch (error) {
-    return failed({ kind: 'cannot-write', path: filePath, why: systemReason(error) })
+    if (!(error instanceof CoreError) || error.problem.kind !== 'cannot-write') throw error
+    // No path reaches the window; the name is what the person typed a moment ago.
+    throw new CoreError({ ...error.problem, path: basename(filePath) })
   }
-}
-
-function failed(problem: Problem): Reply<never> {
-  return { ok: false, problem }
+  return 'saved'
 }

@@ -1,13 +1,127 @@
-/** From files to the analysis of a lot: the one place where the window calls core's pipeline. Loaded when first needed. */
+/**
+ * From files to the analysis of a lot, in a worker: the window never waits. The one place where the window has core's
+ * pipeline run.
+ */
+import type { Exclusion } from '../../core/analysis/exclusions'
+import type { Progress } from '../../core/analysis/progress'
 import type { RunResult } from '../../core/analysis/run'
 import type { OpenedFile } from '../contract/host'
+import type { FileUse, Job, Report } from './analysis-messages'
 
-export async function analyzeFiles(readings: readonly OpenedFile[], procedure: OpenedFile): Promise<RunResult> {
-  const { run } = await import('../../core/analysis/run')
-  return run({ readings: await Promise.all(readings.map(withDigest)), procedure })
+export interface AnalysisOptions {
+  readonly excluded?: readonly Exclusion[]
 }
 
-async function withDigest({ name, bytes }: OpenedFile): Promise<{ name: string; bytes: Uint8Array; sha256: string }> {
-  const digest = new Uint8Array(await crypto.subtle.digest('SHA-256', new Uint8Array(bytes)))
-  return { name, bytes, sha256: Array.from(digest, (byte) => byte.toString(16).padStart(2, '0')).join('') }
+export interface RunningAnalysis {
+  /** null when it was cancelled or a newer one took its place. Never rejects. */
+  readonly result: Promise<RunResult | null>
+  /** Calls back from now on; may be called never, for a small lot. */
+  progress(listener: (progress: Progress) => void): void
+  cancel(): void
+}
+
+export interface Analyzer {
+  /** The newest call wins: an older one that is still running is cancelled. */
+  analyze(readings: readonly OpenedFile[], procedure: OpenedFile, options?: AnalysisOptions): RunningAnalysis
+  /** Starts the worker ahead of the first file. */
+  warm(): void
+  /** Ends the worker; the next call starts another. */
+  close(): void
+}
+
+/** What an analyzer needs of a worker. */
+export type WorkerLike = Pick<Worker, 'postMessage' | 'terminate' | 'onmessage' | 'onerror'>
+
+export function newAnalysisWorker(): WorkerLike {
+  return new Worker(new URL('./analysis.worker.ts', import.meta.url), { type: 'module' })
+}
+
+/** An analyzer with a worker of its own, so that one analysis (of another model, say) can run beside another. */
+export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker): Analyzer {
+  let worker: WorkerLike | null = null
+  let sent = new Map<Uint8Array, number>()
+  let running: { end(result: RunResult | null): void } | null = null
+  let count = 0
+
+  function close(): void {
+    worker?.terminate()
+    worker = null
+    sent = new Map()
+    running?.end(null)
+    running = null
+  }
+
+  function job(readings: readonly OpenedFile[], procedure: OpenedFile, excluded: readonly Exclusion[]): Job {
+    const used = new Set([...readings, procedure].map(({ bytes }) => bytes))
+    const dropped = [...sent].filter(([bytes]) => !used.has(bytes))
+    for (const [bytes] of dropped) sent.delete(bytes)
+    const fresh = [...used].filter((bytes) => !sent.has(bytes))
+    for (const bytes of fresh) sent.set(bytes, ++count)
+    const use = ({ name, bytes }: OpenedFile): FileUse => ({ id: sent.get(bytes) ?? 0, name })
+    return {
+      added: fresh.map((bytes) => ({ id: sent.get(bytes) ?? 0, bytes })),
+      dropped: dropped.map(([, id]) => id),
+      readings: readings.map(use),
+      procedure: use(procedure),
+      // Plain copies: what a store holds may be wrapped, and a wrapped object can't be sent.
+      excluded: excluded.map(({ wafer, site, reason }) => ({ wafer, site, reason })),
+    }
+  }
+
+  function analyze(
+    readings: readonly OpenedFile[],
+    procedure: OpenedFile,
+    { excluded = [] }: AnalysisOptions = {},
+  ): RunningAnalysis {
+    // A worker in the midst of a run hears nothing: it is ended, and another started.
+    if (running) close()
+    const own = (worker ??= newWorker())
+    const listeners: ((progress: Progress) => void)[] = []
+    let end: (result: RunResult | null) => void = () => undefined
+    const result = new Promise<RunResult | null>((resolve) => (end = resolve))
+    const mine = { end }
+    running = mine
+    const finish = (found: RunResult): void => {
+      if (running === mine) running = null
+      end(found)
+    }
+    own.onmessage = ({ data }: MessageEvent<Report>) => {
+      if (data.kind === 'progress') for (const listener of listeners) listener(data.progress)
+      else finish(data.kind === 'done' ? data.result : failure(data.why))
+    }
+    own.onerror = (event) => {
+      finish(failure(event.message))
+      // It may be out of memory or never have started: the next run gets a fresh one.
+      if (worker === own) close()
+    }
+    own.postMessage(job(readings, procedure, excluded))
+    return {
+      result,
+      progress: (listener) => void listeners.push(listener),
+      cancel: () => {
+        if (running === mine) close()
+      },
+    }
+  }
+
+  return { analyze, close, warm: () => void (worker ??= newWorker()) }
+}
+
+function failure(why: string): RunResult {
+  const said = why === '' ? 'the worker ended without a word' : why
+  return {
+    analysis: null,
+    problems: [{ kind: 'not-applicable', what: 'the analysis', why: `internal error: ${said}` }],
+  }
+}
+
+/** Of the lot that the window holds. */
+export const lotAnalyzer = createAnalyzer()
+
+export function analyzeInWorker(
+  readings: readonly OpenedFile[],
+  procedure: OpenedFile,
+  options?: AnalysisOptions,
+): RunningAnalysis {
+  return lotAnalyzer.analyze(readings, procedure, options)
 }

@@ -1,67 +1,130 @@
+/** The host where the page stands in a plain browser: its file dialog, its downloads, and what the loopback host serves. */
 import type { Problem } from '../../core/problems/problem'
-import { FILE_CHOICES } from '../contract/file-kinds'
-import type { FileChoice, Host, OpenedFile, Reply } from '../contract/host'
-import { NAMED_FILES_PATH } from '../contract/named-files'
-import type { NamedFile } from '../contract/named-files'
+import { FILE_CHOICES, isReadingsName, SAVE_KINDS, type SaveKind } from '../contract/file-kinds'
+import { packParts } from '../contract/frame'
+import type { FileChoice, Host, OpenedFile, Reply, ReportRequest, SavedState } from '../contract/host'
+import { LOOPBACK_PATHS, OWN_HEADER, type NamedFile } from '../contract/loopback'
+import { readFiles } from './dropped-files'
 
-/** The host where the page stands in a plain browser: its file dialog, its downloads, and the loopback host's files. */
+const never = (): (() => void) => () => undefined
+
 export const browserHost: Host = {
   kind: 'browser',
+  can: { reopen: false, print: false, menus: false, asksWhere: false },
   chooseFiles,
   startFiles,
+  demoFiles: () => filesAt(LOOPBACK_PATHS.demo),
+  rememberDropped: () => Promise.resolve({ ok: true, value: 'ignored' }),
+  recentFiles: () => Promise.resolve({ ok: true, value: [] }),
+  reopen: () => refused('reopen', 'a browser does not open files again by itself'),
+  forgetRecent: () => Promise.resolve({ ok: true, value: 'forgotten' }),
   saveFile,
+  makeReport,
+  printReport: () => refused('printReport', 'a browser prints the report when it is saved and opened'),
+  loadState: () => ask<SavedState | null>(LOOPBACK_PATHS.state, (response) => response.json()),
+  saveState: (text, kept) => {
+    const body = packParts([utf8(text), utf8(JSON.stringify(kept))])
+    return ask(LOOPBACK_PATHS.state, () => 'saved' as const, body)
+  },
+  keepFile: (bytes) => ask<string>(LOOPBACK_PATHS.kept, (response) => response.json(), bytes),
+  keptFile: (token) => ask(`${LOOPBACK_PATHS.kept}/${encodeURIComponent(token)}`, bytesOf),
+  onCommand: never,
+  onFilesWaiting: never,
 }
 
+/** Each file is handed out once: what was open is restored from the state when the page is loaded again. */
 async function startFiles(): Promise<Reply<readonly OpenedFile[]>> {
+  const files = await filesAt(LOOPBACK_PATHS.files)
+  if (files.ok && files.value.length === 0) return files
+  const taken = await ask(LOOPBACK_PATHS.taken, () => null, new Uint8Array())
+  return taken.ok ? files : taken
+}
+
+async function filesAt(path: string): Promise<Reply<readonly OpenedFile[]>> {
+  const list = await ask<readonly NamedFile[]>(path, (response) => response.json())
+  if (!list.ok) return list
+  const files: OpenedFile[] = []
+  for (const [index, { name }] of list.value.entries()) {
+    const bytes = await ask(`${path}/${index}`, bytesOf)
+    if (!bytes.ok) return bytes
+    files.push({ name, bytes: bytes.value })
+  }
+  return { ok: true, value: files }
+}
+
+function makeReport({ readings, procedure, ...terms }: ReportRequest): Promise<Reply<Uint8Array>> {
+  const head = { ...terms, readings: readings.map(({ name }) => name), procedure: procedure.name }
+  const files = [procedure, ...readings].map(({ bytes }) => bytes)
+  return ask(LOOPBACK_PATHS.report, bytesOf, packParts([utf8(JSON.stringify(head)), ...files]))
+}
+
+/** Asks the loopback host; with a body it is told something. */
+async function ask<Value>(
+  path: string,
+  read: (response: Response) => Promise<Value> | Value,
+  body?: Uint8Array,
+): Promise<Reply<Value>> {
   try {
-    const list = (await (await fetch(NAMED_FILES_PATH)).json()) as readonly NamedFile[]
-    const files: OpenedFile[] = []
-    for (const [index, { name }] of list.entries()) {
-      const response = await fetch(`${NAMED_FILES_PATH}/${index}`)
-      if (!response.ok) return { ok: false, problem: await problemIn(response, name) }
-      files.push({ name, bytes: new Uint8Array(await response.arrayBuffer()) })
-    }
-    return { ok: true, value: files }
+    const response = await fetch(path, body ? post(body) : {})
+    if (response.ok) return { ok: true, value: await read(response) }
+    return { ok: false, problem: await problemIn(response, path) }
   } catch {
-    return { ok: false, problem: { kind: 'cannot-read', file: 'the named files', why: 'the program was closed' } }
+    return {
+      ok: false,
+      problem: { kind: 'not-applicable', what: path, why: 'the program that serves this page was closed' },
+    }
   }
 }
 
-async function problemIn(response: Response, name: string): Promise<Problem> {
+function post(body: Uint8Array): RequestInit {
+  const bytes = body.buffer instanceof ArrayBuffer ? (body as Uint8Array<ArrayBuffer>) : new Uint8Array(body)
+  const headers = { [OWN_HEADER]: '1', 'content-type': 'application/octet-stream' }
+  return { method: 'POST', headers, body: bytes }
+}
+
+async function problemIn(response: Response, path: string): Promise<Problem> {
   if (response.status === 409) return (await response.json()) as Problem
-  return { kind: 'cannot-read', file: name, why: `the program answered with status ${response.status}` }
+  const why = response.status === 413 ? 'it is too large' : `the program answered with status ${response.status}`
+  return { kind: 'bad-argument', argument: path, why }
+}
+
+async function bytesOf(response: Response): Promise<Uint8Array> {
+  return new Uint8Array(await response.arrayBuffer())
+}
+
+function utf8(text: string): Uint8Array {
+  return new TextEncoder().encode(text)
+}
+
+function refused(argument: string, why: string): Promise<Reply<never>> {
+  return Promise.resolve({ ok: false, problem: { kind: 'not-applicable', what: argument, why } })
 }
 
 function chooseFiles(choice: FileChoice): Promise<Reply<readonly OpenedFile[]>> {
   const input = document.createElement('input')
   input.type = 'file'
   input.multiple = choice === 'readings'
-  input.accept = FILE_CHOICES[choice].extensions.map((extension) => `.${extension}`).join(',')
+  input.webkitdirectory = choice === 'folder'
+  if (choice !== 'folder') input.accept = FILE_CHOICES[choice].extensions.map((extension) => `.${extension}`).join(',')
   return new Promise((resolve) => {
     input.addEventListener('cancel', () => resolve({ ok: true, value: [] }))
-    input.addEventListener('change', () => resolve(readFiles([...(input.files ?? [])])))
+    input.addEventListener('change', () => resolve(readChosen(choice, [...(input.files ?? [])])))
     input.click()
   })
 }
 
-/** The bytes of files that the person chose or dropped. */
-export async function readFiles(files: readonly File[]): Promise<Reply<readonly OpenedFile[]>> {
-  const opened: OpenedFile[] = []
-  for (const file of files) {
-    try {
-      opened.push({ name: file.name, bytes: new Uint8Array(await file.arrayBuffer()) })
-    } catch {
-      return {
-        ok: false,
-        problem: { kind: 'cannot-read', file: file.name, why: 'it can no longer be read; is it a folder?' },
-      }
-    }
-  }
-  return { ok: true, value: opened }
+function readChosen(choice: FileChoice, files: readonly File[]): Promise<Reply<readonly OpenedFile[]>> {
+  if (choice !== 'folder') return readFiles(files)
+  // `folder/file.csv` lies in the folder itself, `folder/more/file.csv` below it.
+  const readings = files.filter((file) => isReadingsName(file.name) && file.webkitRelativePath.split('/').length <= 2)
+  const folder = files[0]?.webkitRelativePath.split('/')[0] ?? 'the folder'
+  if (readings.length > 0) return readFiles(readings)
+  const problem = { kind: 'cannot-read', file: folder, why: 'there is no CSV file in this folder' } as const
+  return Promise.resolve({ ok: false, problem })
 }
 
-function saveFile(suggestedName: string, bytes: Uint8Array): Promise<Reply<'saved' | 'cancelled'>> {
-  const address = URL.createObjectURL(new Blob([new Uint8Array(bytes)]))
+function saveFile(suggestedName: string, bytes: Uint8Array, kind: SaveKind): Promise<Reply<'saved' | 'cancelled'>> {
+  const address = URL.createObjectURL(new Blob([new Uint8Array(bytes)], { type: SAVE_KINDS[kind].contentType }))
   const link = document.createElement('a')
   link.href = address
   link.download = suggestedName
@@ -70,3 +133,5 @@ function saveFile(suggestedName: string, bytes: Uint8Array): Promise<Reply<'save
   setTimeout(() => URL.revokeObjectURL(address), 60_000)
   return Promise.resolve({ ok: true, value: 'saved' })
 }
+
+export { readFiles } from './dropped-files'

@@ -1,0 +1,56 @@
+/** Runs core's pipeline beside the window, one job at a time. */
+import type { LotAnalysis } from '../../core/analysis/lot-analysis'
+import { run, type RunInput } from '../../core/analysis/run'
+import type { FileUse, Job, Report } from './analysis-messages'
+
+interface KeptFile {
+  readonly bytes: Uint8Array
+  readonly sha256: string
+}
+
+/** The worker's own side of the channel, as far as it is used; the page's `self` has another type. */
+const port = self as unknown as {
+  postMessage(report: Report, transfer?: readonly ArrayBufferLike[]): void
+  onmessage: ((event: MessageEvent<Job>) => void) | null
+}
+
+const kept = new Map<number, KeptFile>()
+
+port.onmessage = ({ data }) => {
+  answer(data).catch((error: unknown) => port.postMessage({ kind: 'failed', why: String(error) }))
+}
+
+async function answer({ added, dropped, readings, procedure, excluded }: Job): Promise<void> {
+  for (const id of dropped) kept.delete(id)
+  for (const { id, bytes } of added) kept.set(id, { bytes, sha256: await sha256(bytes) })
+  const input: RunInput = {
+    readings: readings.map(named),
+    procedure: named(procedure),
+    excluded,
+    watch: (progress) => port.postMessage({ kind: 'progress', progress }),
+  }
+  const result = run(input)
+  port.postMessage({ kind: 'done', result }, result.analysis ? buffersOf(result.analysis) : [])
+}
+
+function named({ id, name }: FileUse): KeptFile & { readonly name: string } {
+  const file = kept.get(id)
+  if (!file) throw new Error(`the worker was never given "${name}"`)
+  return { name, ...file }
+}
+
+async function sha256(bytes: Uint8Array): Promise<string> {
+  const digest = new Uint8Array(await crypto.subtle.digest('SHA-256', new Uint8Array(bytes)))
+  return Array.from(digest, (byte) => byte.toString(16).padStart(2, '0')).join('')
+}
+
+/** The memory of every column: it is handed over, not copied. */
+function buffersOf({ readings, sites, dies, wafers }: LotAnalysis): ArrayBufferLike[] {
+  const buffers = new Set<ArrayBufferLike>()
+  for (const part of [readings, sites, dies ?? {}, ...wafers]) {
+    for (const value of Object.values(part) as unknown[]) {
+      if (ArrayBuffer.isView(value)) buffers.add(value.buffer)
+    }
+  }
+  return [...buffers]
+}
