@@ -48,6 +48,7 @@ function prepareBulk(settings: BulkSettings): PreparedLayer {
       into.dose_cm2.fill(NaN)
       into.doseSensitivity.fill(NaN)
       into.thickness_um.fill(NaN)
+      into.resistivitySensitivity.fill(1)
     },
     forward: (concentration_cm3) => resistivity_ohm_cm({ ...settings, concentration_cm3 }) / thickness_cm,
     explain: (sheet) => explainBulk(settings, concentrations, sheet),

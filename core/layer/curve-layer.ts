@@ -36,15 +36,15 @@ export function curveInverse(curve: LayerCurve): CurveInverse {
   }
 }
 
-function isInside(sheet: number, { min, max }: CurveInverse['range_ohm_sq']): boolean {
+export function isInside(sheet: number, { min, max }: CurveInverse['range_ohm_sq']): boolean {
   return sheet >= min * (1 - SLACK) && sheet <= max * (1 + SLACK)
 }
 
-function solveSites(sheets: Float64Array, pointAt: (sheet: number) => LayerPoint, into: LayerColumns): void {
+export function solveSites(sheets: Float64Array, pointAt: (sheet: number) => LayerPoint, into: LayerColumns): void {
   for (let i = 0; i < sheets.length; i++) setPoint(into, i, pointAt(sheets[i]))
 }
 
-function setPoint(into: LayerColumns, i: number, point: LayerPoint): void {
+export function setPoint(into: LayerColumns, i: number, point: LayerPoint): void {
   into.concentration_cm3[i] = point.concentration
   into.dose_cm2[i] = point.dose
   into.concentrationSensitivity[i] = point.concentrationSensitivity

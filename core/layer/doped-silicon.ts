@@ -5,12 +5,23 @@ import type { Dopant } from '../silicon/dopants'
 import type { MobilityModel } from '../silicon/mobility-model'
 import { isResistivityCurve } from '../silicon/mobility/mf723'
 import { ELEMENTARY_CHARGE_C } from '../units/constants'
-import type { Background } from './layer-kind'
+import type { Background, DepthTable, ProfileId } from './layer-kind'
 
 export interface DopedSilicon {
   readonly dopant: Dopant
   readonly mobility: MobilityModel
   readonly temperature_K: number
+}
+
+/** A named profile takes one of depth and diffusion length, a tabulated one its table and neither of them. */
+export interface DopedLayerSettings extends DopedSilicon {
+  readonly profile: ProfileId | 'tabulated'
+  /** Junction depth: where the profile has come down to the background [um]. */
+  readonly depth_um?: number | undefined
+  /** sqrt(D t) of a gaussian or erfc profile, the decay length of an exponential one [um]; the depth follows from it. */
+  readonly diffusionLength_um?: number | undefined
+  readonly table?: DepthTable | undefined
+  readonly background: Background
 }
 
 /** Densities a layer is looked for in [cm^-3]; a mobility model's own range may be narrower, and the caller flags that. */

@@ -58,6 +58,7 @@ function filmOfResistivity(resistivity_ohm_cm: number): PreparedLayer {
         into.thickness_um[i] = thickness_um
         into.resistivity_ohm_cm[i] = Number.isNaN(thickness_um) ? NaN : resistivity_ohm_cm
       }
+      into.resistivitySensitivity.fill(0)
     },
     forward(thickness_um) {
       requireRange('film thickness', thickness_um, 'um', Number.MIN_VALUE, Number.MAX_VALUE)
@@ -87,6 +88,7 @@ function filmOfThickness(thickness_um: number): PreparedLayer {
         into.resistivity_ohm_cm[i] = sheets[i] > 0 ? sheets[i] * thickness_um * UM_IN_CM : NaN
         into.thickness_um[i] = sheets[i] > 0 ? thickness_um : NaN
       }
+      into.resistivitySensitivity.fill(1)
     },
     forward() {
       throw new CoreError({

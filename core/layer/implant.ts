@@ -54,6 +54,7 @@ function prepareImplant(settings: ImplantSettings): PreparedLayer {
     invert(sheets, into) {
       inverse.fill(sheets, into)
       into.resistivity_ohm_cm.fill(NaN)
+      into.resistivitySensitivity.fill(NaN)
       into.thickness_um.fill(NaN)
     },
     forward(peak_cm3) {
@@ -119,7 +120,22 @@ function explainImplant(settings: ImplantSettings, inverse: CurveInverse, sheet:
       formula: 'slope of the same integral',
       source: RANGE_SOURCE,
     },
+    {
+      symbol: 'd ln R_s / d ln Q',
+      title: 'Sensitivity of sheet resistance to dose',
+      value: 1 / point.doseSensitivity,
+      unit: '',
+      formula: doseInWords(1 / point.doseSensitivity),
+      source: RANGE_SOURCE,
+    },
   ]
+}
+
+/** "1 % of dose moves sheet resistance by −0.931 %" */
+function doseInWords(response: number): string {
+  return Number.isNaN(response)
+    ? 'none: the sheet resistance lies outside the layer'
+    : `1 % of dose moves sheet resistance by ${formatSignificant(response, 3)} %`
 }
 
 function peakStep(settings: ImplantSettings, inverse: CurveInverse, sheet: number, point: LayerPoint): LayerStep {

@@ -2,6 +2,8 @@ import { requireRange } from '../problems/problem'
 import type { ProfileId } from './layer-kind'
 import { layerProfile } from './profiles/registry'
 
+export const JUNCTION_SOURCE = 'J. Crank, The Mathematics of Diffusion, 2nd ed. (1975) 2.2 and 3.3'
+
 export interface JunctionQuestion {
   readonly profile: ProfileId
   readonly surface_cm3: number

@@ -10,6 +10,8 @@ export interface LayerCurve {
   readonly to: number
   /** Where the curve goes on but bends or jumps, in any order; those outside from..to are ignored. */
   readonly bends: readonly number[]
+  /** Of differences that slopes are taken from; smaller than the default 0.01 where the curve has many slight bends. */
+  readonly slopeStep?: number
   lnConcentration(t: number): number
   lnDose(t: number): number
   /** Falls all the way. */
@@ -67,7 +69,7 @@ export function pieceAt(pieces: readonly CurvePiece[], lnSheet: number): CurvePi
 export function solveCurve(curve: LayerCurve, pieces: readonly CurvePiece[], lnSheet: number): LayerPoint {
   const piece = pieceAt(pieces, lnSheet)
   const t = rootIn(curve, piece, lnSheet)
-  const slopeOf = (f: (t: number) => number) => slopeWithin(f, t, piece)
+  const slopeOf = (f: (t: number) => number) => slopeWithin(f, t, piece, curve.slopeStep ?? SLOPE_STEP)
   const sheetSlope = slopeOf(curve.lnSheetResistance)
   return {
     concentration: Math.exp(curve.lnConcentration(t)),
@@ -85,8 +87,8 @@ function rootIn(curve: LayerCurve, piece: CurvePiece, lnSheet: number): number {
 }
 
 /** Fourth-order difference, finer towards the ends of the piece, where a model's jump leaves a square root, and one-sided at them. */
-function slopeWithin(f: (t: number) => number, t: number, { from, to }: CurvePiece): number {
-  const step = Math.min(SLOPE_STEP, Math.max(FINEST_SLOPE_STEP, Math.min(t - from, to - t) / 20))
+function slopeWithin(f: (t: number) => number, t: number, { from, to }: CurvePiece, widest: number): number {
+  const step = Math.min(widest, Math.max(FINEST_SLOPE_STEP, Math.min(t - from, to - t) / 20))
   if (t - 2 * step >= from && t + 2 * step <= to) return derivative({ f, x: t, step })
   const h = t - 2 * step < from ? step : -step
   return (-25 * f(t) + 48 * f(t + h) - 36 * f(t + 2 * h) + 16 * f(t + 3 * h) - 3 * f(t + 4 * h)) / (12 * h)

@@ -34,6 +34,8 @@ export interface LayerColumns {
   readonly concentration_cm3: Float64Array
   readonly dose_cm2: Float64Array
   readonly thickness_um: Float64Array
+  /** d ln(resistivity) / d ln(sheet resistance): 1 where the depth is given, less where it grows with the doping. */
+  readonly resistivitySensitivity: Float64Array
   /** d ln(concentration) / d ln(sheet resistance), dimensionless, usually about -1. */
   readonly concentrationSensitivity: Float64Array
   /** d ln(dose) / d ln(sheet resistance). */
@@ -50,6 +52,13 @@ export interface LayerStep {
 }
 
 export type ProfileId = 'uniform' | 'gaussian' | 'erfc' | 'exponential'
+
+/** A profile measured or simulated elsewhere, point by point from the surface down. */
+export interface DepthTable {
+  /** Rising. */
+  readonly depth_um: Float64Array
+  readonly concentration_cm3: Float64Array
+}
 
 /** A uniform doping of the opposite type under a layer; it ends the layer where the profile has come down to it. */
 export interface Background {

@@ -3,6 +3,8 @@ import { conductivityOf, joins_cm3 } from './doped-silicon'
 import type { DopedSilicon } from './doped-silicon'
 import type { LayerProfile } from './profiles/profile'
 
+export const IRVIN = 'J. C. Irvin, Bell Syst. Tech. J. 41 (1962) 387'
+
 export interface LayerDoping {
   readonly silicon: DopedSilicon
   readonly profile: LayerProfile

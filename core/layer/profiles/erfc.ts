@@ -17,5 +17,11 @@ export const erfc = {
     // 1 - exp(-u²) by expm1, so that a shallow profile does not lose its digits.
     return ratio - Math.expm1(-u * u) / (u * Math.sqrt(Math.PI))
   },
+  depthFormula: 'x_j = 2 √(D t) · erfc⁻¹(N_B/N_s)',
+  lengthSymbol: '√(D t)',
   depthInLengths: (ratio) => 2 * erfcInverse(ratio),
+  depthResponse(ratio) {
+    const u = erfcInverse(ratio)
+    return (ratio * Math.sqrt(Math.PI) * Math.exp(u * u)) / (2 * u)
+  },
 } as const satisfies LayerProfile

@@ -12,5 +12,8 @@ export const exponential = {
   },
   depthOf: (level, ratio) => Math.log(level) / Math.log(ratio),
   mean: (ratio) => (ratio - 1) / Math.log(ratio),
+  depthFormula: 'x_j = L · ln(N_s/N_B)',
+  lengthSymbol: 'L',
   depthInLengths: (ratio) => -Math.log(ratio),
+  depthResponse: (ratio) => -1 / Math.log(ratio),
 } as const satisfies LayerProfile

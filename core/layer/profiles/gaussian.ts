@@ -16,5 +16,8 @@ export const gaussian = {
     const root = Math.sqrt(-Math.log(ratio))
     return ((1 - erfc(root)) * Math.sqrt(Math.PI)) / (2 * root)
   },
+  depthFormula: 'x_j = 2 √(D t) · √ln(N_s/N_B)',
+  lengthSymbol: '√(D t)',
   depthInLengths: (ratio) => 2 * Math.sqrt(-Math.log(ratio)),
+  depthResponse: (ratio) => -1 / (2 * Math.log(ratio)),
 } as const satisfies LayerProfile

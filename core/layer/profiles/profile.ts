@@ -16,6 +16,12 @@ export interface LayerProfile {
   depthOf(level: number, ratio: number): number
   /** Mean of N / N_s over 0..1, in closed form: what the dose is made of. */
   mean(ratio: number): number
+  /** How the junction depth follows from that length, as set in print; empty where no length makes the profile. */
+  readonly depthFormula: string
+  /** The length that diffusion sets, as set in print. */
+  readonly lengthSymbol: string
   /** Junction depth over the length that diffusion sets: the square root of D t, or the decay length. */
   depthInLengths(ratio: number): number
+  /** d ln(junction depth) / d ln(N_s) at a given length and background. */
+  depthResponse(ratio: number): number
 }

@@ -10,11 +10,16 @@ export const uniform = {
   shape: () => () => 1,
   depthOf: () => 1,
   mean: () => 1,
-  depthInLengths() {
-    throw new CoreError({
-      kind: 'not-applicable',
-      what: 'junction depth of a uniform layer',
-      why: 'no diffusion makes it: its depth is given, not derived',
-    })
-  },
+  depthFormula: '',
+  lengthSymbol: '',
+  depthInLengths: refuseLength,
+  depthResponse: refuseLength,
 } as const satisfies LayerProfile
+
+function refuseLength(): never {
+  throw new CoreError({
+    kind: 'not-applicable',
+    what: 'junction depth of a uniform layer',
+    why: 'no diffusion makes it: its depth is given, not derived',
+  })
+}

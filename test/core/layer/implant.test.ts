@@ -91,13 +91,18 @@ describe('implant', () => {
     const layer = implant.prepare(monitor)
     const steps = layer.explain(120)
     const found = inverted(layer, [120])
-    expect(steps.map(({ symbol }) => symbol)).toEqual(['N_p', 'Q', 'Φ', 'd ln Q / d ln R_s'])
+    expect(steps.map(({ symbol }) => symbol)).toEqual(['N_p', 'Q', 'Φ', 'd ln Q / d ln R_s', 'd ln R_s / d ln Q'])
     expect(steps[0].value).toBe(found.concentration_cm3[0])
     expect(steps[1].value).toBe(found.dose_cm2[0])
     // The normal distribution up to 2.727 (tables: 0.9968).
     expect(steps[2].value).toBeCloseTo(0.9968, 4)
     expect(steps[0].formula).toContain('R_p = 0.06000 µm')
+    // One percent more dose, made anew by the integral.
+    const moved = layer.forward(found.concentration_cm3[0] * 1.0001) / layer.forward(found.concentration_cm3[0])
+    expect(steps[4].value).toBeCloseTo(Math.log(moved) / Math.log(1.0001), 4)
+    expect(steps[4].formula).toMatch(/^1 % of dose moves sheet resistance by −0\.\d{3} %$/)
     expect(layer.explain(1e9)[0].formula).toMatch(/^none: /)
+    expect(layer.explain(1e9)[4].formula).toMatch(/^none: /)
   })
 
   it('refuses a background of its own type, sizes and peaks out of range', () => {

@@ -15,6 +15,7 @@ export function untouchedColumns(count: number): LayerColumns {
     concentration_cm3: column(),
     dose_cm2: column(),
     thickness_um: column(),
+    resistivitySensitivity: column(),
     concentrationSensitivity: column(),
     doseSensitivity: column(),
   }

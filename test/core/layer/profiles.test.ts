@@ -31,6 +31,16 @@ describe('layer profiles', () => {
     )
   })
 
+  it.each(falling)('$id: depth response is the slope of its depth', (profile) => {
+    fc.assert(
+      fc.property(ratios, (ratio) => {
+        const [deeper, shallower] = [1e-5, -1e-5].map((step) => profile.depthInLengths(ratio * Math.exp(-step)))
+        const slope = Math.log(deeper / shallower) / 2e-5
+        expect(slope / profile.depthResponse(ratio)).toBeCloseTo(1, 5)
+      }),
+    )
+  })
+
   it('uniform: a box', () => {
     const { shape, mean } = layerProfile('uniform')
     expect([shape(0.1)(0), shape(0.1)(1), mean(0.1)]).toEqual([1, 1, 1])

@@ -39,6 +39,8 @@ describe('layer kinds', () => {
       expect(found[column][1]).toBeNaN()
     }
     for (const column of Object.values(found)) expect([...column]).not.toContain(-1)
+    const hasResistivity = (kind.gives as readonly string[]).includes('resistivity')
+    expect(Number.isFinite(found.resistivitySensitivity[0])).toBe(hasResistivity)
   })
 
   it.each(layerKinds)('$id: names its concentration and its sources where it has any', (kind) => {
