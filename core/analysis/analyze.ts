@@ -6,6 +6,7 @@ import type { WaferLimits } from '../conformity/judge-wafer'
 import type { Limits } from '../conformity/limits'
 import { lotSentence } from '../conformity/lot-sentence'
 import { verdictCode } from '../conformity/verdict'
+import type { DepthProfile } from '../ingest/read-profile'
 import type { Readings } from '../ingest/readings'
 import { CoreError, type Problem } from '../problems/problem'
 import { neededForReadings } from '../procedure/needed-for-readings'
@@ -43,6 +44,8 @@ export interface AnalysisInput {
   readonly notes: readonly string[]
   /** Sites that a person took out. */
   readonly excluded?: readonly Exclusion[]
+  /** The depth profile that the procedure of a tabulated layer names. */
+  readonly profile?: DepthProfile | null
   readonly watch?: Watch
 }
 
@@ -53,10 +56,10 @@ export interface AnalysisInput {
  * that is missing); whatever is wrong with single sites is in the result
  */
 export function analyze(input: AnalysisInput): LotAnalysis {
-  const { readings, procedure, defaults, problems, notes, excluded = [], watch } = input
+  const { readings, procedure, defaults, problems, notes, excluded = [], profile = null, watch } = input
   const enter = (stage: Stage): void => watch?.({ stage, share: 0, rows: readings.count })
   enter('correcting')
-  const measured = measure(readings, procedure)
+  const measured = measure(readings, procedure, profile)
   const { sites, positions, outline, quantity } = measured
   const unmatched = flagExcluded(readings, excluded, sites.flags)
   const limits = limitsOn(quantity, procedure)
@@ -75,6 +78,7 @@ export function analyze(input: AnalysisInput): LotAnalysis {
     procedure,
     defaults,
     readings,
+    profile,
     outline,
     quantity,
     sites,
@@ -83,7 +87,11 @@ export function analyze(input: AnalysisInput): LotAnalysis {
     lot,
     excluded,
     problems: [...problems, ...found],
-    notes: [...notes, ...exclusionNotes(excluded), ...analysisNotes({ readings, procedure, ...measured, dies })],
+    notes: [
+      ...notes,
+      ...exclusionNotes(excluded),
+      ...analysisNotes({ readings, procedure, profile, ...measured, dies }),
+    ],
   }
 }
 
@@ -97,16 +105,16 @@ interface Measured {
 }
 
 /** Every site's result with its uncertainty and flags; verdicts and probabilities are still to be filled. */
-function measure(readings: Readings, procedure: Procedure): Measured {
+function measure(readings: Readings, procedure: Procedure, profile: DepthProfile | null): Measured {
   requireWhatReadingsNeed(readings, procedure)
   const flags = new Uint32Array(readings.count)
   const positions = sitePositions(readings, procedure)
   const setUp = measuringSetUp(procedure)
   const vOverI = ratios(readings, flags)
-  const layer = prepareLayer(procedure)
+  const layer = prepareLayer(procedure, profile)
   const corrections = correct(readings, procedure, setUp, positions, vOverI, flags)
   const inverted = layerResults(procedure, layer, corrections, flags)
-  const relative = propagate(contributions(procedure, corrections, flags), inverted, readings.count)
+  const relative = propagate(contributions(procedure, profile, corrections, flags), inverted, readings.count)
   const quantity = judgedQuantity(procedure, readings)
   const sites = siteColumns({ corrections, layer: inverted, relative, quantity, flags })
   flagUncounted(sites.value, positions, setUp.outline, procedure, flags)

@@ -2,9 +2,11 @@
 import { DUAL_SOURCE } from '../geometry/dual'
 import { outlineGeometry } from '../geometry/registry'
 import { THICKNESS_SOURCE } from '../geometry/thickness'
+import { JUNCTION_SOURCE } from '../layer/junction-depth'
 import { layerKind } from '../layer/registry'
 import { layerProfile } from '../layer/profiles/registry'
 import { METHOD_TITLES } from '../map/interpolator'
+import type { Procedure } from '../procedure/schema'
 import { TEMPERATURE_SOURCE } from '../silicon/temperature'
 import type { LotAnalysis } from './lot-analysis'
 import { layerMobility } from './prepare-layer'
@@ -30,8 +32,9 @@ export function formulaSources(analysis: LotAnalysis): FormulaSource[] {
     ...(layer.kind === 'bulk' ? [entry('thickness', 'Thickness factor', THICKNESS_SOURCE)] : []),
     ...(layer.kind === 'bulk' ? [entry('temperature', 'Temperature coefficient', TEMPERATURE_SOURCE)] : []),
     ...kind.sources.map((reference, k) => entry(`${kind.id}-${k}`, kind.title, reference)),
-    ...(layer.kind === 'doped-layer'
-      ? [entry('profile', `Profile: ${layer.profile}`, layerProfile(layer.profile).source)]
+    ...(layer.kind === 'doped-layer' ? [entry('profile', `Profile: ${layer.profile}`, profileSource(layer))] : []),
+    ...(layer.kind === 'doped-layer' && layer.diffusionLengthUm !== undefined
+      ? [entry('junction', 'Junction depth from the diffusion length', JUNCTION_SOURCE)]
       : []),
     ...(mobility ? [entry(mobility.id, `Mobility model: ${mobility.title}`, mobility.source)] : []),
     entry('uniformity', 'Non-uniformity figures SUP and HLV', 'SEMI MF1618-1104'),
@@ -41,6 +44,10 @@ export function formulaSources(analysis: LotAnalysis): FormulaSource[] {
       ? [entry('dies', `Dies between sites: ${METHOD_TITLES['thin-plate-spline']}`, THIN_PLATE_SOURCE)]
       : []),
   ]
+}
+
+function profileSource({ profile, profileFile }: Extract<Procedure['layer'], { kind: 'doped-layer' }>): string {
+  return profile === 'tabulated' ? `the file ${profileFile}` : layerProfile(profile).source
 }
 
 const THIN_PLATE_SOURCE = 'J. Duchon, Springer Lecture Notes in Mathematics 571 (1977) 85 (from memory)'

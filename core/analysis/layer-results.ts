@@ -14,24 +14,32 @@ export function layerResults(
   flags: Uint32Array,
 ): LayerColumns {
   const { sheetResistance_ohm_sq: sheet, reported } = corrections
-  const column = () => new Float64Array(sheet.length).fill(NaN)
-  const columns: LayerColumns = {
-    resistivity_ohm_cm: column(),
-    concentration_cm3: column(),
-    dose_cm2: column(),
-    thickness_um: column(),
-    concentrationSensitivity: column(),
-    doseSensitivity: column(),
-  }
+  const columns = emptyLayerColumns(sheet.length)
   layer?.invert(sheet, columns)
   if (reported) useReportedResistivity(procedure, reported.resistivity_ohm_cm, columns)
   flagRanges(procedure, sheet, columns, flags)
   return columns
 }
 
+/** Of NaN throughout. */
+export function emptyLayerColumns(count: number): LayerColumns {
+  const column = () => new Float64Array(count).fill(NaN)
+  return {
+    resistivity_ohm_cm: column(),
+    concentration_cm3: column(),
+    dose_cm2: column(),
+    thickness_um: column(),
+    resistivitySensitivity: column(),
+    concentrationSensitivity: column(),
+    doseSensitivity: column(),
+  }
+}
+
 function useReportedResistivity(procedure: Procedure, resistivity_ohm_cm: Float64Array, columns: LayerColumns): void {
   for (let i = 0; i < resistivity_ohm_cm.length; i++) {
-    if (!Number.isNaN(resistivity_ohm_cm[i])) columns.resistivity_ohm_cm[i] = resistivity_ohm_cm[i]
+    if (Number.isNaN(resistivity_ohm_cm[i])) continue
+    columns.resistivity_ohm_cm[i] = resistivity_ohm_cm[i]
+    columns.resistivitySensitivity[i] = 1
   }
   const mobility = layerMobility(procedure.layer)
   if (procedure.layer.kind !== 'bulk' || !mobility) return

@@ -3,6 +3,7 @@
  * report all read this and compute nothing of their own.
  */
 import type { Verdict } from '../conformity/verdict'
+import type { DepthProfile } from '../ingest/read-profile'
 import type { Readings } from '../ingest/readings'
 import type { Outline } from '../wafer/outline'
 import type { Problem } from '../problems/problem'
@@ -19,6 +20,8 @@ export interface LotAnalysis {
   /** Dotted keys of every procedure default that was used, with its value. */
   readonly defaults: readonly { readonly key: string; readonly value: string }[]
   readonly readings: Readings
+  /** Of a tabulated layer: the profile that its procedure names. */
+  readonly profile: DepthProfile | null
   readonly outline: Outline
   readonly quantity: Quantity
   readonly sites: SiteColumns

@@ -1,19 +1,22 @@
 /** What was assumed, taken from where, or left undone, each as a sentence that the report prints. */
+import type { DepthProfile } from '../ingest/read-profile'
 import type { Readings } from '../ingest/readings'
 import { UNCERTAINTY_COMPONENTS, type Procedure } from '../procedure/schema'
 import { layerMobility } from './prepare-layer'
 import { CELSIUS_ZERO_K } from '../units/constants'
 import type { Corrections } from './corrections'
-import type { DieColumns, Quantity } from './lot-analysis'
+import type { DieColumns, Quantity, SiteColumns } from './lot-analysis'
 import type { MeasuringSetUp } from './measuring-set-up'
 import type { SitePositions } from './site-positions'
 
 export interface NotesInput {
   readonly readings: Readings
   readonly procedure: Procedure
+  readonly profile: DepthProfile | null
   readonly positions: SitePositions | null
   readonly setUp: MeasuringSetUp
   readonly corrections: Corrections
+  readonly sites: SiteColumns
   readonly quantity: Quantity
   readonly dies: DieColumns | null
 }
@@ -24,6 +27,7 @@ export function analysisNotes(input: NotesInput): string[] {
     ...placeNotes(input),
     ...(input.corrections.reported && allReported(input) ? [] : [input.corrections.temperature.note]),
     ...modelNotes(input),
+    ...profileNotes(input),
     ...uncertaintyNotes(input),
   ]
 }
@@ -77,6 +81,26 @@ function modelNotes({ procedure }: NotesInput): string[] {
   if (min === max && Math.abs(min - reference_K) > 1) {
     notes.push(
       `The model "${mobility.id}" holds at ${min} K and was used as it stands for ${procedure.temperature.referenceC} °C: in lightly doped silicon that is about 3 %.`,
+    )
+  }
+  return notes
+}
+
+function profileNotes({ profile, procedure, sites }: NotesInput): string[] {
+  if (!profile || procedure.layer.kind !== 'doped-layer') return []
+  const { file, depth_um, concentration_cm3 } = profile
+  const last = depth_um.length - 1
+  const background_cm3 = procedure.layer.background.concentrationCm3
+  const endOverPeak = concentration_cm3[last] / concentration_cm3.reduce((most, n) => Math.max(most, n), 0)
+  const cut = sites.concentration_cm3.reduce((count, peak) => count + (peak * endOverPeak > background_cm3 ? 1 : 0), 0)
+  const notes = [
+    `The shape of the profile is that of ${file}: ${last + 1} points down to ${depth_um[last]} µm, ln N straight between them; each site's scale is solved from its sheet resistance.`,
+  ]
+  if (depth_um[0] > 0)
+    notes.push(`Above the first point of ${file}, at ${depth_um[0]} µm, its value holds to the surface.`)
+  if (cut > 0) {
+    notes.push(
+      `At ${cut} sites the profile is still above the background where ${file} ends; what lies deeper is left out.`,
     )
   }
   return notes

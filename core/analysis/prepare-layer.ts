@@ -1,15 +1,23 @@
-import type { PreparedLayer } from '../layer/layer-kind'
+import type { DepthTable, PreparedLayer } from '../layer/layer-kind'
 import { layerKind } from '../layer/registry'
+import { CoreError } from '../problems/problem'
 import type { Procedure } from '../procedure/schema'
 import { mobilityModel } from '../silicon/mobility/registry'
 import type { MobilityModel } from '../silicon/mobility-model'
 import { CELSIUS_ZERO_K } from '../units/constants'
+import { missingProfile } from './companions'
 
 /**
  * The procedure's layer in the terms of layer/, at its reference temperature. Null for bulk silicon of unknown
  * thickness: only a reported resistivity can be inverted then.
+ *
+ * @param profile the file that a tabulated layer names; the others pass it over
+ * @throws CoreError missing-file: a tabulated layer without it; those of the layer kind
  */
-export function prepareLayer({ layer, wafer, temperature }: Procedure): PreparedLayer | null {
+export function prepareLayer(
+  { layer, wafer, temperature }: Procedure,
+  profile: DepthTable | null,
+): PreparedLayer | null {
   const temperature_K = temperature.referenceC + CELSIUS_ZERO_K
   switch (layer.kind) {
     case 'sheet':
@@ -26,6 +34,8 @@ export function prepareLayer({ layer, wafer, temperature }: Procedure): Prepared
         temperature_K,
         profile: layer.profile,
         depth_um: layer.depthUm,
+        diffusionLength_um: layer.diffusionLengthUm,
+        table: tableOf(layer, profile),
         background: backgroundOf(layer.background),
       })
     case 'implant':
@@ -40,6 +50,12 @@ export function prepareLayer({ layer, wafer, temperature }: Procedure): Prepared
     case 'film':
       return layerKind('film').prepare({ resistivity_ohm_cm: layer.resistivityOhmCm, thickness_um: layer.thicknessUm })
   }
+}
+
+function tableOf(layer: Procedure['layer'], profile: DepthTable | null): DepthTable | undefined {
+  if (layer.kind !== 'doped-layer' || layer.profile !== 'tabulated') return undefined
+  if (!profile) throw new CoreError(missingProfile(layer.profileFile ?? '', ''))
+  return profile
 }
 
 type DopedLayer = Extract<Procedure['layer'], { readonly dopant: unknown }>

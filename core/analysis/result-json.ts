@@ -2,6 +2,7 @@
 import { explain, placeOf } from '../problems/explain'
 import type { LotAnalysis, WaferAnalysis } from './lot-analysis'
 import { flagNames } from './flags'
+import { mobilityComparison } from './mobility-comparison'
 import type { Statistics } from '../statistics/summarize'
 
 export const RESULT_FORMAT = 'persquare-result/1'
@@ -36,6 +37,7 @@ export function resultObject(analysis: LotAnalysis, { program, version }: Result
       statistics: statisticsObject(lot.statistics),
       varianceComponents: lot.varianceComponents,
     },
+    layer: layerObject(analysis),
     wafers: wafers.map((wafer) => waferObject(wafer, analysis)),
   }
 }
@@ -47,6 +49,18 @@ export function resultJson(analysis: LotAnalysis, context: ResultContext): strin
 
 function numbersOrNull(_key: string, value: unknown): unknown {
   return typeof value === 'number' && !Number.isFinite(value) ? null : value
+}
+
+function layerObject(analysis: LotAnalysis): object {
+  const { profile, procedure } = analysis
+  const file = profile && {
+    name: profile.file,
+    bytes: profile.bytes,
+    sha256: profile.sha256,
+    columns: profile.headers,
+    points: profile.depth_um.length,
+  }
+  return { kind: procedure.layer.kind, profile: file, mobilityComparison: mobilityComparison(analysis) }
 }
 
 function waferObject(wafer: WaferAnalysis, { sites }: LotAnalysis): object {

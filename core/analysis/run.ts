@@ -5,6 +5,7 @@ import { CoreError, type Problem } from '../problems/problem'
 import { parseProcedure } from '../procedure/parse-procedure'
 import { PROCEDURE_FORMAT } from '../procedure/schema'
 import { analyze } from './analyze'
+import { readCompanions } from './companions'
 import type { Exclusion } from './exclusions'
 import type { LotAnalysis } from './lot-analysis'
 import type { Watch } from './progress'
@@ -12,6 +13,8 @@ import type { Watch } from './progress'
 export interface RunInput {
   readonly readings: readonly InputFile[]
   readonly procedure: { readonly name: string; readonly bytes: Uint8Array }
+  /** Files that the procedure names, matched by base name; others are passed over. */
+  readonly companions?: readonly InputFile[]
   /** Sites that a person took out. */
   readonly excluded?: readonly Exclusion[]
   /** Is told of the progress while it runs. */
@@ -25,13 +28,17 @@ export interface RunResult {
 }
 
 /** Never throws for what a user can bring in; a throw is a bug. */
-export function run({ readings: files, procedure: { name, bytes }, excluded = [], watch }: RunInput): RunResult {
+export function run(input: RunInput): RunResult {
+  const { readings: files, excluded = [], watch } = input
+  const { name, bytes } = input.procedure
   const decoded = decodeText(bytes)
   if ('looksLike' in decoded) {
     return { analysis: null, problems: [{ kind: 'not-text', file: name, looksLike: decoded.looksLike }] }
   }
   const parsed = parseProcedure(decoded.text, name)
   if (!parsed.procedure) return { analysis: null, problems: parsed.problems }
+  const companions = readCompanions(parsed.procedure, input.companions ?? [], name)
+  if (companions.problems.length > 0) return { analysis: null, problems: companions.problems }
   const read = readReadings(files, parsed.procedure.readings, (share, rows) =>
     watch?.({ stage: 'reading', share, rows }),
   )
@@ -44,6 +51,7 @@ export function run({ readings: files, procedure: { name, bytes }, excluded = []
       problems: read.problems,
       notes: [...migrationNotes(parsed.migratedFrom, name), ...read.notes],
       excluded,
+      profile: companions.profile,
       ...(watch && { watch }),
     })
     return { analysis, problems: analysis.problems }

@@ -5,13 +5,14 @@ import { DUAL_SOURCE } from '../geometry/dual'
 import { TEMPERATURE_SOURCE } from '../silicon/temperature'
 import { formatQuantity, formatSignificant } from '../units/format'
 import { correct, type Corrections } from './corrections'
+import { layerResults } from './layer-results'
 import type { LotAnalysis } from './lot-analysis'
 import { measuringSetUp, type MeasuringSetUp } from './measuring-set-up'
 import { oneSite } from './one-site'
 import { prepareLayer } from './prepare-layer'
 import { limitsOn } from './quantity'
 import { sitePositions } from './site-positions'
-import { contributions, type Contribution } from './uncertainty'
+import { contributions, onResistivity, type Contribution } from './uncertainty'
 import { ratios } from './v-over-i'
 import { VERDICTS } from '../conformity/verdict'
 import type { BudgetLine, Working, WorkingStep } from './working'
@@ -21,14 +22,14 @@ const CONFORMANCE_SOURCE = 'JCGM 106:2012 clause 7'
 
 /** One site taken through the same functions as the lot, with what each step used. */
 export function siteWorking(analysis: LotAnalysis, site: number): Working {
-  const { readings, procedure } = analysis
+  const { readings, procedure, profile } = analysis
   const one = oneSite(readings, site)
   const flags = new Uint32Array(1)
   const setUp = measuringSetUp(procedure)
   const vOverI = ratios(one, flags)
   const positions = sitePositions(one, procedure)
   const corrections = correct(one, procedure, setUp, positions, vOverI, flags)
-  const parts = contributions(procedure, corrections, flags)
+  const parts = contributions(procedure, profile, corrections, flags)
   const x_mm = positions ? positions.x_mm[0] : NaN
   const y_mm = positions ? positions.y_mm[0] : NaN
   const input = { analysis, site, corrections, setUp, parts, x_mm, y_mm }
@@ -192,14 +193,14 @@ function temperatureSteps({ corrections: { temperature }, analysis, site, parts 
 }
 
 function layerSteps({ analysis, site }: WorkingInput): WorkingStep[] {
-  const { sites, procedure } = analysis
+  const { sites, procedure, profile } = analysis
   const sheet = sites.sheetResistance_ohm_sq[site]
   if (Number.isNaN(sheet)) return reportedResistivitySteps(analysis, site)
   const uncertaintyOf: Partial<Record<string, number>> = {
     'Ω·cm': sites.uResistivity_ohm_cm[site],
     'cm⁻³': sites.uConcentration_cm3[site],
   }
-  const steps: readonly LayerStep[] = prepareLayer(procedure)?.explain(sheet) ?? []
+  const steps: readonly LayerStep[] = prepareLayer(procedure, profile)?.explain(sheet) ?? []
   return steps.map((step) => ({ ...step, u: uncertaintyOf[step.unit] ?? NaN }))
 }
 
@@ -235,13 +236,16 @@ function judgementSteps({ analysis, site }: WorkingInput): WorkingStep[] {
   ]
 }
 
-function budgetOf({ analysis, parts }: WorkingInput): BudgetLine[] {
-  const isResistivity = analysis.quantity.id === 'resistivity'
+function budgetOf({ analysis, corrections, parts }: WorkingInput): BudgetLine[] {
+  const { procedure, profile, quantity } = analysis
+  const isResistivity = quantity.id === 'resistivity'
+  const layer = layerResults(procedure, prepareLayer(procedure, profile), corrections, new Uint32Array(1))
+  const sensitivity = layer.resistivitySensitivity[0]
   const lines = parts.map((part) => ({
     component: part.component,
     title: part.title,
     shared: part.shared,
-    relative: Math.abs(part.sheetResistance(0) + (isResistivity ? part.resistivityExtra : 0)),
+    relative: Math.abs(isResistivity ? onResistivity(part, 0, sensitivity) : part.sheetResistance(0)),
   }))
   const sum = lines.reduce((total, { relative: r }) => total + r * r, 0)
   return lines

@@ -3,7 +3,7 @@
  * derivative, components are uncorrelated with each other, and those common to all sites are kept apart from those
  * that every site has to itself (JCGM 100:2008, 5.1.2).
  */
-import type { LayerColumns } from '../layer/layer-kind'
+import type { DepthTable, LayerColumns } from '../layer/layer-kind'
 import type { Procedure, UncertaintyComponent } from '../procedure/schema'
 import type { Corrections } from './corrections'
 import { SITE_FLAGS } from './flags'
@@ -14,7 +14,10 @@ export interface Contribution {
   readonly title: string
   readonly shared: boolean
   sheetResistance(site: number): number
-  /** What the component does to resistivity beyond what it does to sheet resistance, e.g. thickness. */
+  /**
+   * What the component does by itself, in units of a relative change of sheet resistance: resistivity and concentration
+   * follow from sheet resistance times a thickness, depth or diffusion length.
+   */
   readonly resistivityExtra: number
   /** What it does to the concentration by itself, in units of a relative change of resistivity (mobility). */
   readonly concentrationExtra: number
@@ -34,14 +37,20 @@ const TITLES: Record<UncertaintyComponent, string> = {
 }
 
 /** The components with an uncertainty, each with how it acts on this lot. */
-export function contributions(procedure: Procedure, corrections: Corrections, flags: Uint32Array): Contribution[] {
+export function contributions(
+  procedure: Procedure,
+  profile: DepthTable | null,
+  corrections: Corrections,
+  flags: Uint32Array,
+): Contribution[] {
   const given = procedure.uncertainty
   const shared = new Set(given.shared)
   const { slopes, thicknessSlope } = corrections
   const corrected = (site: number): boolean => (flags[site] & SITE_FLAGS.reported.bit) === 0
   const relativeThickness = procedure.wafer.thicknessUm ? given.thicknessUm / procedure.wafer.thicknessUm : 0
   const through = procedure.layer.kind === 'bulk' ? relativeThickness : 0
-  const depth = procedure.layer.kind === 'doped-layer' ? given.depthUm / procedure.layer.depthUm : 0
+  const depth = depthOf(procedure.layer, profile)
+  const hasSilicon = 'dopant' in procedure.layer
   const onSheet: Partial<Record<UncertaintyComponent, (site: number) => number>> = {
     currentRel: () => given.currentRel,
     voltageRel: (site) => given.voltageRel * slopes.voltage[site],
@@ -56,16 +65,39 @@ export function contributions(procedure: Procedure, corrections: Corrections, fl
     const effect = onSheet[component]
     return {
       component,
-      title: TITLES[component],
+      title: component === 'depthUm' ? depth.title : TITLES[component],
       shared: shared.has(component),
       sheetResistance:
         component === 'reportedRel'
           ? (site) => (corrected(site) ? 0 : given.reportedRel)
           : (site) => (effect && corrected(site) ? effect(site) : 0),
-      resistivityExtra: component === 'thicknessUm' ? through : component === 'depthUm' ? depth : 0,
-      concentrationExtra: component === 'mobilityRel' ? given.mobilityRel : 0,
+      resistivityExtra:
+        component === 'thicknessUm' ? through : component === 'depthUm' ? given.depthUm / depth.value_um : 0,
+      concentrationExtra: component === 'mobilityRel' && hasSilicon ? given.mobilityRel : 0,
     }
   })
+}
+
+/**
+ * The length that a layer's depth scale is known by. At a given shape everything along the depth goes with it, so sheet
+ * resistance times this length is a function of the concentration alone. A profile file's depths are taken to be wrong
+ * by one factor, as those of a sputtered crater are.
+ */
+function depthOf(layer: Procedure['layer'], profile: DepthTable | null): { title: string; value_um: number } {
+  if (layer.kind !== 'doped-layer') return { title: TITLES.depthUm, value_um: Infinity }
+  if (layer.depthUm !== undefined) return { title: TITLES.depthUm, value_um: layer.depthUm }
+  if (layer.diffusionLengthUm !== undefined) return { title: 'diffusion length', value_um: layer.diffusionLengthUm }
+  return {
+    title: 'depths of the profile file',
+    value_um: profile ? profile.depth_um[profile.depth_um.length - 1] : NaN,
+  }
+}
+
+/** Relative effect of a component on a site's resistivity, of the sensitivity that the layer says. */
+export function onResistivity(part: Contribution, site: number, sensitivity: number): number {
+  const through = part.sheetResistance(site) + part.resistivityExtra
+  // What a mobility does to the concentration it also does to a depth that is solved with it.
+  return sensitivity * through + (sensitivity - 1) * part.concentrationExtra
 }
 
 /** Relative standard uncertainties, a column each; shared and independent parts are of sheet resistance and resistivity. */
@@ -87,11 +119,11 @@ export function propagate(parts: readonly Contribution[], layer: LayerColumns, c
     const bulk = part.shared ? sums.resistivity.shared : sums.resistivity.independent
     for (let site = 0; site < count; site++) {
       const effect = part.sheetResistance(site)
-      const onResistivity = effect + part.resistivityExtra
-      const onConcentration = onResistivity + part.concentrationExtra
+      const resistivity = onResistivity(part, site, layer.resistivitySensitivity[site])
+      const concentration = effect + part.resistivityExtra + part.concentrationExtra
       sheet[site] += effect * effect
-      bulk[site] += onResistivity * onResistivity
-      sums.concentration[site] += onConcentration * onConcentration
+      bulk[site] += resistivity * resistivity
+      sums.concentration[site] += concentration * concentration
     }
   }
   for (const column of [...Object.values(sums.sheetResistance), ...Object.values(sums.resistivity)]) {

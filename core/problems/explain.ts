@@ -79,10 +79,14 @@ const sentences: Sentences = {
   'doubled-site': ({ wafer, site, firstLine }) =>
     `Site ${quote(site)} of wafer ${quote(wafer)} was already read in line ${firstLine}. Remove one of the two, or give them different site names.`,
 
+  'bad-profile': ({ why }) => `The depth profile can't be used: ${ended(why)}`,
+
   'not-json': ({ why }) => `This is no valid JSON: ${ended(why)}`,
   'unknown-key': ({ nearest, known }) => `A procedure has no such key. ${unknownKeyHint(nearest, known)}`,
   'bad-value': ({ found, allowed }) => `Found ${bare(found)}; allowed is ${ended(allowed)}`,
   'missing-key': ({ why }) => `This key is missing; it is needed because ${ended(why)}`,
+  'missing-file': ({ name }) =>
+    `The file ${quote(name)}, which the procedure names here, is not there. Put it beside the procedure, under just this name.`,
   'limits-reversed': ({ key, lower, upper }) =>
     key.endsWith('.target')
       ? `The target lies outside its limits: ${lower} should not be above ${upper}.`

@@ -4,7 +4,8 @@
  * Two ways out of core: a single calculation with a broken precondition throws a `CoreError`; work over many
  * rows or sites collects problems and goes on with what is good.
  */
-export type Problem = PhysicsProblem | FileProblem | RowProblem | ProcedureProblem | AnalysisProblem | OutputProblem
+export type Problem =
+  PhysicsProblem | FileProblem | RowProblem | ProfileProblem | ProcedureProblem | AnalysisProblem | OutputProblem
 
 /** A broken precondition of one calculation. */
 export type PhysicsProblem =
@@ -93,6 +94,14 @@ export type RowProblem =
       readonly firstLine: number
     }
 
+/** A depth profile that the procedure names: the whole file, or one line of it. */
+export interface ProfileProblem {
+  readonly kind: 'bad-profile'
+  readonly file: string
+  readonly line?: number
+  readonly why: string
+}
+
 /** The procedure file. `key` is the dotted path, e.g. `limits.waferMeanOhmSq.lower`. */
 export type ProcedureProblem =
   | { readonly kind: 'not-json'; readonly file: string; readonly why: string }
@@ -111,6 +120,13 @@ export type ProcedureProblem =
       readonly allowed: string
     }
   | { readonly kind: 'missing-key'; readonly file: string; readonly key: string; readonly why: string }
+  | {
+      /** A file that the key names and that did not come with the procedure. */
+      readonly kind: 'missing-file'
+      readonly file: string
+      readonly key: string
+      readonly name: string
+    }
   | {
       readonly kind: 'limits-reversed'
       readonly file: string

@@ -1,6 +1,7 @@
 /** What a key may hold, in words: "a number above 0 and up to 20000 µm". */
 import { isObject, kindsOf, knownKeys, optionsOf } from './key-shape'
 import type { KeyPath, KeyShape } from './key-shape'
+import { BARE_FILE_NAME } from './schema'
 
 /** The unit stands at the end of a key's name; the longer ending first. */
 const UNIT_ENDINGS: readonly (readonly [ending: string, unit: string])[] = [
@@ -76,7 +77,8 @@ export function shortNumber(value: number): string {
   return Math.abs(value) >= 1e6 ? value.toExponential().replace('e+', 'e') : String(value)
 }
 
-function stringWords({ minLength, maxLength }: KeyShape): string {
+function stringWords({ minLength, maxLength, pattern }: KeyShape): string {
+  if (pattern === BARE_FILE_NAME.source) return 'the bare name of a file beside the procedure, without /, \\, : or ..'
   if (maxLength !== undefined) return `a text of at most ${maxLength} characters`
   return minLength === undefined ? 'a text' : 'a text that is not empty'
 }
@@ -90,5 +92,5 @@ function listWords(shape: KeyShape, path: KeyPath): string {
 /** `"a", "b" or "c"` */
 export function orList(words: readonly string[]): string {
   if (words.length < 2) return words.join('')
-  return `${words.slice(0, -1).join(', ')} or ${words[words.length - 1]!}`
+  return `${words.slice(0, -1).join(', ')} or ${words[words.length - 1]}`
 }

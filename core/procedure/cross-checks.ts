@@ -116,14 +116,40 @@ function layerChecks({ layer, wafer }: Sections, blame: Blame): Checks {
       ),
     )
   }
-  const thickness_um = wafer?.thicknessUm
-  if (layer.kind === 'doped-layer' && thickness_um !== undefined && layer.depthUm >= thickness_um) {
-    problems.push(blame.bad('layer.depthUm', layer.depthUm, `less than wafer.thicknessUm, ${thickness_um} µm`))
-  }
+  if (layer.kind === 'doped-layer') problems.push(...depthChecks(layer, wafer?.thicknessUm, blame))
   return problems
 }
 
 type Layer<Kind> = Extract<Procedure['layer'], { kind: Kind }>
+
+/** A named profile has one of depth and length, a uniform one its depth, a tabulated one its file. */
+function depthChecks(layer: Layer<'doped-layer'>, thickness_um: number | undefined, blame: Blame): Checks {
+  const { profile, depthUm, diffusionLengthUm, profileFile } = layer
+  const isTabulated = profile === 'tabulated'
+  const problems: ProcedureProblem[] = []
+  for (const key of ['depthUm', 'diffusionLengthUm'] as const) {
+    const value = layer[key]
+    if (value === undefined) continue
+    if (isTabulated) {
+      const allowed = 'nothing beside "profile": "tabulated": the file has its depths'
+      problems.push(blame.bad(`layer.${key}`, value, allowed))
+    } else if (thickness_um !== undefined && value >= thickness_um) {
+      problems.push(blame.bad(`layer.${key}`, value, `less than wafer.thicknessUm, ${thickness_um} µm`))
+    }
+  }
+  if (isTabulated) return profileFile === undefined ? [...problems, blame.missing('layer.profileFile')] : problems
+  if (profileFile !== undefined) {
+    problems.push(blame.bad('layer.profileFile', profileFile, 'a file only together with "profile": "tabulated"'))
+  }
+  if (diffusionLengthUm === undefined) return depthUm === undefined ? [...problems, blame.missing('layer.depthUm')] : problems // prettier-ignore
+  const beside = 'nothing beside layer.depthUm: give one, the other follows from it'
+  if (depthUm !== undefined) problems.push(blame.bad('layer.diffusionLengthUm', diffusionLengthUm, beside))
+  else if (profile === 'uniform') {
+    const allowed = 'nothing for a uniform profile, which no diffusion makes; give layer.depthUm'
+    problems.push(blame.bad('layer.diffusionLengthUm', diffusionLengthUm, allowed))
+  }
+  return problems
+}
 
 function filmChecks(layer: Layer<'film'>, blame: Blame): Checks {
   const { resistivityOhmCm, thicknessUm } = layer

@@ -21,6 +21,7 @@ export interface KeyShape {
   readonly maximum?: number
   readonly minLength?: number
   readonly maxLength?: number
+  readonly pattern?: string
 }
 
 export type KeyPath = readonly (string | number)[]

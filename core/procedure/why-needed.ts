@@ -15,6 +15,7 @@ const REASONS: Readonly<Record<string, string>> = {
   'layer.constantMobility.holesCm2Vs': 'mobility "constant" takes the holes\' mobility from here',
   'layer.profile': 'the concentration depends on how the dopant falls off with depth',
   'layer.depthUm': 'the dopant is spread down to the junction, so its concentration needs the junction depth',
+  'layer.profileFile': 'profile "tabulated" takes its shape from this file',
   'layer.background': 'the junction lies where the profile has come down to the background',
   'layer.background.dopant': "its type must be opposite to the layer's",
   'layer.background.concentrationCm3': 'the junction lies where the profile has come down to it',
@@ -30,5 +31,5 @@ const REASONS: Readonly<Record<string, string>> = {
 
 export function whyNeeded(key: string): string {
   if (/^readings\.columns\..+\.header$/.test(key)) return 'it names the header of the column in the readings'
-  return Object.hasOwn(REASONS, key) ? REASONS[key]! : 'it has no safe default'
+  return Object.hasOwn(REASONS, key) ? REASONS[key] : 'it has no safe default'
 }

@@ -4,6 +4,7 @@ import type { ReportDocument } from './document'
 import { reportContext, type LotReportInput } from './report-context'
 import { findingsSection } from './sections/findings-section'
 import { inputSection } from './sections/input-section'
+import { layerSection } from './sections/layer-section'
 import { procedureSection } from './sections/procedure-section'
 import { sourcesSection } from './sections/sources-section'
 import { summarySection } from './sections/summary-section'
@@ -32,6 +33,7 @@ export function lotReport(input: LotReportInput): ReportDocument {
       ...summarySection(context),
       ...findingsSection(context),
       ...context.wafers.flatMap((wafer) => waferSection(wafer, context)),
+      ...layerSection(context),
       ...inputSection(context),
       ...procedureSection(context),
       ...uncertaintySection(context),

@@ -1,8 +1,10 @@
 /** How a layer is named, and which of its quantities stands first. */
 import type { LotAnalysis, WaferAnalysis } from '../../analysis/lot-analysis'
+import { layerProfile } from '../../layer/profiles/registry'
 import type { Procedure } from '../../procedure/schema'
 
 export type LayerSettings = Procedure['layer']
+type DopedLayer = Extract<LayerSettings, { kind: 'doped-layer' }>
 
 export interface LayerQuantityColumn {
   readonly title: string
@@ -18,7 +20,7 @@ export function layerWords(layer: LayerSettings): string {
     case 'bulk':
       return `bulk, ${layer.dopant} (${layer.mobility})`
     case 'doped-layer':
-      return `${layer.dopant}, ${layer.profile}, ${layer.depthUm} µm deep, on ${layer.background.dopant} (${layer.mobility})`
+      return `${layer.dopant}, ${profileWords(layer)}, on ${layer.background.dopant} (${layer.mobility})`
     case 'implant':
       return `${layer.dopant} implant, range ${layer.rangeUm} µm, straggle ${layer.straggleUm} µm (${layer.mobility})`
     case 'film':
@@ -30,8 +32,16 @@ export function layerWords(layer: LayerSettings): string {
   }
 }
 
+/** "gaussian, 0.35 µm deep"; of a diffusion length "gaussian, √(D t) = 0.06 µm"; of a table "profile NAME". */
+function profileWords({ profile, depthUm, diffusionLengthUm, profileFile }: DopedLayer): string {
+  if (profile === 'tabulated') return `profile ${profileFile}`
+  if (depthUm !== undefined) return `${profile}, ${depthUm} µm deep`
+  return `${profile}, ${layerProfile(profile).lengthSymbol} = ${diffusionLengthUm} µm`
+}
+
 /** What a concentration of this layer means. */
 export function concentrationTitle(layer: LayerSettings): string {
+  if (layer.kind === 'doped-layer' && layer.profile === 'tabulated') return 'Peak concentration'
   if (layer.kind === 'doped-layer') return layer.profile === 'uniform' ? 'Mean concentration' : 'Surface concentration'
   if (layer.kind === 'implant') return 'Peak concentration'
   return 'Dopant concentration'
