@@ -1,3 +1,4 @@
+import { deflateSync, inflateSync } from 'node:zlib'
 import fc from 'fast-check'
 import PDFDocument from 'pdfkit'
 import { describe, expect, it } from 'vitest'
@@ -118,6 +119,21 @@ describe('files that are made to do harm', () => {
     expectFault(buildWithFiles([{ name: 'a.csv', content: utf8('1'), size: -1 }]), /damaged/)
     expectFault(buildWithFiles([{ name: 'a.csv', content: utf8('1'), size: 0.5 }]), /damaged/)
     expectFault(buildWithFiles([{ name: 'a.csv', content: utf8('1'), size: 2 ** 40 }]), /larger than 256 MB/)
+  })
+
+  it('one that lies, before it is unpacked any further than it says', () => {
+    const packed = deflateSync(bomb(64), { level: 9 })
+    const lying = buildWithFiles([{ name: 'a.csv', content: bomb(64), size: 1000 }], 9)
+    const quickest = (work: () => unknown) =>
+      Math.min(
+        ...[1, 2, 3].map(() => {
+          const begin = performance.now()
+          work()
+          return performance.now() - begin
+        }),
+      )
+    const whole = quickest(() => inflateSync(packed))
+    expect(quickest(() => expect(() => read(lying)).toThrow(PdfFault))).toBeLessThan(whole / 4)
   })
 
   it('many that are too much together', () => {
