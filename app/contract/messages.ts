@@ -7,18 +7,18 @@ import type { HostCall } from './channels'
 import { FILE_CHOICES, SAVE_KINDS } from './file-kinds'
 import type { FileChoice, Host, Reply, ReportRequest, SavedState } from './host'
 
-const text = (most: number) => z.string().check(z.maxLength(most))
-const list = <Item extends z.core.$ZodType>(item: Item, most: number) => z.array(item).check(z.maxLength(most))
-const keysOf = <Key extends string>(record: Readonly<Record<Key, unknown>>) =>
+export const text = (most: number) => z.string().check(z.maxLength(most))
+export const list = <Item extends z.core.$ZodType>(item: Item, most: number) => z.array(item).check(z.maxLength(most))
+export const keysOf = <Key extends string>(record: Readonly<Record<Key, unknown>>) =>
   z.enum(Object.keys(record) as [Key, ...Key[]])
 
 const bytes = z.custom<Uint8Array>((value) => value instanceof Uint8Array)
-const fileName = text(1000)
-const token = text(200)
+export const fileName = text(1000)
+export const token = text(200)
 const openedFile = z.object({ name: fileName, bytes })
 const openedFiles = list(openedFile, 10_000)
 
-const exclusion = z.object({ wafer: text(1000), site: text(1000), reason: text(2000) })
+export const exclusion = z.object({ wafer: text(1000), site: text(1000), reason: text(2000) })
 const decision = z.object({ decision: keysOf(DECISIONS), name: text(200), comment: text(5000), date: text(100) })
 
 /** All of a report request but the bytes of its files. */
