@@ -1,8 +1,10 @@
+import { readFileSync } from 'node:fs'
 import { resolve } from 'node:path'
 import vue from '@vitejs/plugin-vue'
 import { defineConfig } from 'electron-vite'
 
 const here = import.meta.dirname
+const { version } = JSON.parse(readFileSync(resolve(here, 'package.json'), 'utf8')) as { version: string }
 
 export default defineConfig({
   main: {
@@ -31,6 +33,7 @@ export default defineConfig({
   renderer: {
     root: resolve(here, 'app/renderer'),
     plugins: [vue()],
+    define: { __VERSION__: JSON.stringify(version) },
     build: {
       outDir: resolve(here, 'out/renderer'),
       emptyOutDir: true,

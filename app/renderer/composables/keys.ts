@@ -1,4 +1,5 @@
 import { onBeforeUnmount, onMounted } from 'vue'
+import { mapLayers } from '../figures/layers'
 import type { Direction } from '../figures/neighbours'
 import { useChoicesStore } from '../stores/choices'
 import { useLotStore } from '../stores/lot'
@@ -37,6 +38,11 @@ export function useKeys(): void {
     '?': () => (view.dialog = 'help'),
     '[': () => selection.stepWafer(-1),
     ']': () => selection.stepWafer(1),
+    l: nextLayer,
+    '+': () => (view.zoomed = { factor: 1.5 }),
+    '=': () => (view.zoomed = { factor: 1.5 }),
+    '-': () => (view.zoomed = { factor: 1 / 1.5 }),
+    '0': () => (view.zoomed = { factor: 0 }),
     n: () => goTo(1),
     p: () => goTo(-1),
     x: () => (selection.site !== null ? (view.dialog = 'exclude') : undefined),
@@ -45,6 +51,10 @@ export function useKeys(): void {
     Escape: escape,
   }
 
+  function nextLayer(): void {
+    const ids = lot.pictures ? mapLayers(lot.pictures).map(({ id }) => id) : []
+    view.layer = ids[(ids.indexOf(view.layer) + 1) % ids.length] ?? 'value'
+  }
   function goTo(way: 1 | -1): void {
     selection.stepOut(way)
     if (selection.site !== null) view.page = 'wafer'

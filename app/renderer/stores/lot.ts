@@ -7,6 +7,7 @@ import { isProcedureName } from '../../contract/file-kinds'
 import type { OpenedFile, Reply } from '../../contract/host'
 import { analyzeInWorker, lotAnalyzer } from '../analysis'
 import { lotPictures } from '../figures/lot-pictures'
+import type { Keeping } from '../persistence/session-keeper'
 import { useChoicesStore } from './choices'
 
 export type LotState = 'empty' | 'needs-procedure' | 'needs-readings' | 'reading' | 'analysed' | 'failed'
@@ -19,6 +20,8 @@ export const useLotStore = defineStore('lot', () => {
   const progress = shallowRef<Progress | null>(null)
   const busy = ref(false)
   const wasCancelled = ref(false)
+  /** Whether the session would outlive a crash; told by whoever keeps it. */
+  const keeping = shallowRef<Keeping>('kept')
   let latest = 0
 
   const analysis = computed(() => outcome.value?.analysis ?? null)
@@ -75,5 +78,19 @@ export const useLotStore = defineStore('lot', () => {
     () => void analyse(),
   )
 
-  return { analysis, pictures, problems, refusal, state, busy, progress, wasCancelled, take, cancel, analyse, refuse }
+  return {
+    analysis,
+    pictures,
+    problems,
+    refusal,
+    state,
+    busy,
+    progress,
+    wasCancelled,
+    keeping,
+    take,
+    cancel,
+    analyse,
+    refuse,
+  }
 })
