@@ -8,10 +8,13 @@ import { REVERSE_BIT } from './read-role'
 export const LARGEST = 1e30
 /** Nor does any come near this from the other side: what is smaller is no reading, and V/I of it would leave all bounds. */
 export const SMALLEST = 1e-30
+/** A kilometre, and as many dies: no wafer is so wide. */
+const FARTHEST = 1e6
 
 export class ReadingCheck {
   private readonly x: Float64Array | null
   private readonly y: Float64Array | null
+  private readonly dies: readonly Float64Array[]
   private readonly current: Float64Array | null
   private readonly voltage: Float64Array | null
   private readonly vOverI: Float64Array | null
@@ -25,6 +28,7 @@ export class ReadingCheck {
     const column = (name: NumberColumn) => (has(layout, name) ? columns.number(name) : null)
     this.x = column('x_mm')
     this.y = column('y_mm')
+    this.dies = DIES.flatMap((name) => column(name) ?? [])
     this.current = column('current_A')
     this.voltage = column('voltage_V')
     this.vOverI = column('vOverI_ohm')
@@ -40,7 +44,8 @@ export class ReadingCheck {
   isGood(row: number, role: number): boolean {
     const isReverse = (role & REVERSE_BIT) !== 0
     const { x, y, current, voltage } = this
-    if (x !== null && y !== null && !(Math.abs(x[row]) < LARGEST && Math.abs(y[row]) < LARGEST)) return false
+    if (x !== null && y !== null && !(Math.abs(x[row]) <= FARTHEST && Math.abs(y[row]) <= FARTHEST)) return false
+    for (const die of this.dies) if (die[row] === die[row] && !isDieIndex(die[row])) return false
     let found = false
     if (current !== null && voltage !== null) {
       const i = current[row]
@@ -77,6 +82,10 @@ export class ReadingCheck {
     const cell = (column: NumberColumn, why: string) => ({ column, why, isCell: true })
     if (this.x && Number.isNaN(value('x_mm'))) return cell('x_mm', 'is empty')
     if (this.y && Number.isNaN(value('y_mm'))) return cell('y_mm', 'is empty')
+    for (const name of PLACES) if (Math.abs(value(name)) > FARTHEST) return cell(name, 'is no place on a wafer')
+    for (const name of DIES) {
+      if (!Number.isNaN(value(name)) && !isDieIndex(value(name))) return cell(name, 'is no index of a die')
+    }
     for (const [i, v] of [['current_A', 'voltage_V'], ...SIDE_PAIRS] as const) {
       if (!has(this.layout, i) || !has(this.layout, v)) continue
       const isFirst = i === 'current_A'
@@ -103,6 +112,13 @@ export class ReadingCheck {
     }
     return { column: READY.find((name) => has(this.layout, name)) ?? 'voltage_V', why: 'is empty', isCell: true }
   }
+}
+
+const PLACES = ['x_mm', 'y_mm'] as const
+const DIES = ['dieX', 'dieY'] as const
+
+function isDieIndex(value: number): boolean {
+  return Number.isInteger(value) && Math.abs(value) <= FARTHEST
 }
 
 const TOO_SMALL = 'is too near to zero to be a reading'

@@ -119,10 +119,8 @@ class SiteFinder {
   }
 
   private findPlace(row: number, table: RowTable): number {
-    const [x0, x1] = cellsOf(this.x![row])
-    const [y0, y1] = cellsOf(this.y![row])
-    for (let x = x0; x <= x1; x++) {
-      for (let y = y0; y <= y1; y++) {
+    for (const x of cellsOf(this.x![row])) {
+      for (const y of cellsOf(this.y![row])) {
         const found = table.find(this.placeHash(row, x, y), this.isSamePlace)
         if (found >= 0) return found
       }

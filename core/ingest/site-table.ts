@@ -41,8 +41,10 @@ export function mix(a: number, b: number, c: number): number {
 }
 
 /** The hash cells that a place may share with another within SAME_PLACE_MM: nearly always one. */
-export function cellsOf(value: number): readonly [number, number] {
+export function cellsOf(value: number): readonly number[] {
   const at = value / CELL_MM
   const near = SAME_PLACE_MM / CELL_MM
-  return [Math.round(at - near), Math.round(at + near)]
+  const low = Math.round(at - near)
+  const high = Math.round(at + near)
+  return low === high ? [low] : [low, high]
 }
