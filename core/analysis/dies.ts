@@ -34,7 +34,8 @@ export function dieGridOf(procedure: Procedure): DieGrid | null {
 /**
  * Every whole die of every wafer. A die between sites is interpolated (thin-plate spline); its uncertainty adds that
  * of the sites through their weights, the part common to all sites whole, and the root mean square leave-one-out
- * error of the wafer. A die whose centre lies outside the hull of the sites is not assessed.
+ * error of the wafer. A die whose centre lies outside the hull of the sites is not assessed, nor one that the surface
+ * puts below zero.
  *
  * @returns null without a die grid, without positions or without a known outline
  */
@@ -102,7 +103,8 @@ function interpolate(
   const squares = left.reduce((sum, residual) => sum + residual * residual, 0)
   const interpolation = Math.sqrt(squares / Math.max(1, left.length))
   for (let die = 0; die < estimate.length; die++) {
-    if (!interpolator.inside[die]) continue
+    // Beside a stray site the surface may overshoot below zero, where there is no resistance.
+    if (!interpolator.inside[die] || !(estimate[die] > 0)) continue
     columns.value[start + die] = estimate[die]
     columns.u[start + die] = Math.hypot(shared[die], independent[die], interpolation)
   }
