@@ -19,6 +19,8 @@ export interface NamedBytes {
 export interface ReportInputs {
   readonly readings: readonly NamedBytes[]
   readonly procedure: NamedBytes
+  /** Files that the procedure names. */
+  readonly companions?: readonly NamedBytes[]
 }
 
 /** How the report was made, as far as that shows in it. */
@@ -34,7 +36,7 @@ export interface ReportMaking {
 }
 
 export interface ReportContents extends ReportMaking {
-  readonly inputs: ReportInputs
+  readonly inputs: Required<ReportInputs>
   /** Sites that a person took out. */
   readonly excluded: readonly Exclusion[]
   /** Text of result.json. */
@@ -59,9 +61,10 @@ export function reportAttachments(
   { inputs, excluded, result }: ReportSubject,
   { program, version, date, paper, decision = null, compression = compressionMark() }: ReportMaking,
 ): readonly ReportAttachment[] {
-  const [procedureName, ...readingNames] = attachmentNames(
-    [inputs.procedure, ...inputs.readings].map(({ name }) => name),
-  )
+  const { readings, procedure, companions = [] } = inputs
+  const [procedureName, ...names] = attachmentNames([procedure, ...readings, ...companions].map(({ name }) => name))
+  const listed = (files: readonly NamedBytes[], from: number): readonly ManifestFile[] =>
+    files.map(({ name }, k) => ({ attachment: names[from + k], name }))
   const manifest = {
     format: REPORT_FORMAT,
     program: { name: program, version },
@@ -69,16 +72,18 @@ export function reportAttachments(
     excluded: excluded.map(({ wafer, site, reason }) => ({ wafer, site, reason })),
     decision: decision && { ...decision },
     compression,
-    readings: inputs.readings.map(({ name }, k): ManifestFile => ({ attachment: readingNames[k], name })),
-    procedure: { attachment: procedureName, name: inputs.procedure.name } satisfies ManifestFile,
+    readings: listed(readings, 0),
+    procedure: { attachment: procedureName, name: procedure.name } satisfies ManifestFile,
+    companions: listed(companions, readings.length),
     result: RESULT_NAME,
   }
   const json = (value: string): Uint8Array => new TextEncoder().encode(value)
   return [
-    ...inputs.readings.map(({ bytes }, k) => ({
-      name: readingNames[k], bytes, mime: 'text/csv', description: 'Readings, as analysed',
+    ...readings.map(({ bytes }, k) => ({ name: names[k], bytes, mime: 'text/csv', description: 'Readings, as analysed' })),
+    { name: procedureName, bytes: procedure.bytes, mime: 'application/json', description: 'Procedure, as used' },
+    ...companions.map(({ bytes }, k) => ({
+      name: names[readings.length + k], bytes, mime: 'text/csv', description: 'Named by the procedure',
     })),
-    { name: procedureName, bytes: inputs.procedure.bytes, mime: 'application/json', description: 'Procedure, as used' },
     { name: RESULT_NAME, bytes: json(result), mime: 'application/json', description: 'Result' },
     {
       name: MANIFEST_NAME, bytes: json(`${JSON.stringify(manifest, null, 2)}\n`), mime: 'application/json',
@@ -98,10 +103,12 @@ export function reportContents(attachments: readonly ReadAttachment[]): ReportCo
     used.add(name)
     return bytes
   }
-  const { readings, procedure, making, excluded, compression } = manifest
+  const { making, excluded, compression } = manifest
+  const opened = ({ attachment, name }: ManifestFile): NamedBytes => ({ name, bytes: bytesOf(attachment) })
   const inputs = {
-    readings: readings.map(({ attachment, name }) => ({ name, bytes: bytesOf(attachment) })),
-    procedure: { name: procedure.name, bytes: bytesOf(procedure.attachment) },
+    readings: manifest.readings.map(opened),
+    procedure: opened(manifest.procedure),
+    companions: manifest.companions.map(opened),
   }
   const result = textOf(bytesOf(RESULT_NAME))
   if (used.size !== byName.size) throw new PdfFault('a file was added to it')
@@ -116,6 +123,7 @@ interface Manifest {
   readonly compression: string
   readonly readings: readonly ManifestFile[]
   readonly procedure: ManifestFile
+  readonly companions: readonly ManifestFile[]
 }
 
 function parsedManifest(bytes: Uint8Array | undefined): Manifest {
@@ -137,6 +145,7 @@ function parsedManifest(bytes: Uint8Array | undefined): Manifest {
     compression: word(written['compression']),
     readings,
     procedure: manifestFile(written['procedure']),
+    companions: list(written['companions']).map(manifestFile),
   }
 }
 

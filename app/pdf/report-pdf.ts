@@ -1,3 +1,4 @@
+import { companionNames, companionsOf } from '../../core/analysis/companions'
 import { formulaSources } from '../../core/analysis/formula-sources'
 import type { LotAnalysis } from '../../core/analysis/lot-analysis'
 import { reportSite } from '../../core/analysis/report-site'
@@ -25,8 +26,9 @@ export interface ReportPdfOptions extends ReportMaking {
  * @throws CoreError cannot-write if the inputs are too many or too large to travel in a report that can be read again
  */
 export async function reportPdf(analysis: LotAnalysis, options: ReportPdfOptions): Promise<Uint8Array> {
-  const { program, version, date, paper, decision = null, inputs } = options
-  requireFew(inputs)
+  const { program, version, date, paper, decision = null } = options
+  const inputs = { ...options.inputs, companions: companionsOf(analysis.procedure, options.inputs.companions ?? []) }
+  requireAll(analysis, inputs)
   const result = resultJson(analysis, { program, version })
   const attachments = reportAttachments({ inputs, excluded: analysis.excluded, result }, options)
   const site = reportSite(analysis)
@@ -44,9 +46,12 @@ export async function reportPdf(analysis: LotAnalysis, options: ReportPdfOptions
   return pdf
 }
 
-function requireFew({ readings }: ReportInputs): void {
-  // Beside the readings stand the procedure, the result and the list of them all.
-  const most = ATTACHMENT_LIMITS.count - 3
+function requireAll({ procedure }: LotAnalysis, { readings, companions }: Required<ReportInputs>): void {
+  if (companions.length < companionNames(procedure).length) {
+    throw new Error('a file that the procedure names was not handed to its report')
+  }
+  // Beside them stand the procedure, the result and the list of them all.
+  const most = ATTACHMENT_LIMITS.count - 3 - companions.length
   if (readings.length > most) throw unwritable(`no more than ${most} files with readings can travel in it`)
 }
 

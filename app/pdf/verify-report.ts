@@ -22,7 +22,7 @@ export interface Verification {
   /** No difference in what was compared. */
   readonly isSame: boolean
   readonly madeBy: { readonly program: string; readonly version: string }
-  /** Names of the readings and the procedure inside. */
+  /** Names of the readings, the procedure and the files that it names. */
   readonly inputs: readonly string[]
   /** The lot's own sentence as it comes out now; null where nothing comes out. */
   readonly sentence: string | null
@@ -45,11 +45,16 @@ export interface PageComparison {
 /** @throws CoreError cannot-read if it is no report of this program, or a damaged one */
 export async function verifyReport(bytes: Uint8Array, verifier: Verifier): Promise<Verification> {
   const { file, contents } = read(bytes, verifier.file)
-  const { readings, procedure } = contents.inputs
-  const { analysis, problems } = run({ readings: readings.map(withDigest), procedure, excluded: contents.excluded })
+  const { readings, procedure, companions } = contents.inputs
+  const { analysis, problems } = run({
+    readings: readings.map(withDigest),
+    procedure,
+    companions: companions.map(withDigest),
+    excluded: contents.excluded,
+  })
   const known = {
     madeBy: { program: contents.program, version: contents.version },
-    inputs: [...readings, procedure].map(({ name }) => name),
+    inputs: [...readings, procedure, ...companions].map(({ name }) => name),
   }
   if (!analysis) {
     const pages = { how: 'none', places: [] } as const

@@ -19,6 +19,15 @@ export function companionsNamedIn({ name, bytes }: { name: string; bytes: Uint8A
   return procedure ? companionNames(procedure) : []
 }
 
+/** Of the files given, those that the procedure names. */
+export function companionsOf<File extends { readonly name: string }>(
+  procedure: Procedure,
+  given: readonly File[],
+): readonly File[] {
+  const names = companionNames(procedure).map((name) => name.normalize('NFC'))
+  return given.filter(({ name }) => names.includes(baseName(name)))
+}
+
 export interface Companions {
   /** null where the procedure names none, or there is a problem. */
   readonly profile: DepthProfile | null
@@ -29,7 +38,7 @@ export interface Companions {
 export function readCompanions(procedure: Procedure, given: readonly InputFile[], file: string): Companions {
   const [name] = companionNames(procedure)
   if (name === undefined) return { profile: null, problems: [] }
-  const found = given.find((companion) => baseName(companion.name) === name.normalize('NFC'))
+  const [found] = companionsOf(procedure, given)
   if (!found) return { profile: null, problems: [missingProfile(name, file)] }
   return readProfile({ ...found, name })
 }

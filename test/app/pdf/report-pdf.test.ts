@@ -29,6 +29,7 @@ describe('what a report carries', () => {
       compression: compressionMark(),
       readings: [{ attachment: 'TB-0417.csv', name: 'TB-0417.csv' }],
       procedure: { attachment: 'procedure.json', name: 'procedure.json' },
+      companions: [],
       result: 'result.json',
     })
   })

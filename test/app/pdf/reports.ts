@@ -1,6 +1,7 @@
 /** Small reports for the tests, and PDF files built by hand in the way that this program writes them. */
 import { createHash } from 'node:crypto'
 import { deflateSync } from 'node:zlib'
+import type { NamedBytes } from '../../../app/pdf/report-contents'
 import { reportPdf, type ReportPdfOptions } from '../../../app/pdf/report-pdf'
 import { renderReportPdf, type ReportAttachment } from '../../../app/pdf/write-report'
 import type { Exclusion } from '../../../core/analysis/exclusions'
@@ -35,9 +36,14 @@ export function makeReport(
   options: ReportPdfOptions = optionsOf(),
   excluded: readonly Exclusion[] = [],
 ): Promise<Uint8Array> {
-  const { readings, procedure } = options.inputs
-  const withDigest = readings.map((file) => ({ ...file, sha256: createHash('sha256').update(file.bytes).digest('hex') }))
-  const { analysis, problems } = run({ readings: withDigest, procedure, excluded })
+  const { readings, procedure, companions = [] } = options.inputs
+  const withDigest = (file: NamedBytes) => ({ ...file, sha256: createHash('sha256').update(file.bytes).digest('hex') })
+  const { analysis, problems } = run({
+    readings: readings.map(withDigest),
+    procedure,
+    companions: companions.map(withDigest),
+    excluded,
+  })
   if (!analysis) throw new Error(`not analysed: ${JSON.stringify(problems)}`)
   return reportPdf(analysis, options)
 } // prettier-ignore

@@ -1,8 +1,11 @@
 import { createHash } from 'node:crypto'
+import { readFileSync } from 'node:fs'
+import { join } from 'node:path'
 import { deflateSync, inflateSync } from 'node:zlib'
 import { describe, expect, it, vi } from 'vitest'
 import { openPdf } from '../../../app/pdf/pdf-file'
 import { readAttachments } from '../../../app/pdf/read-attachments'
+import type { NamedBytes } from '../../../app/pdf/report-contents'
 import type * as ReportPdf from '../../../app/pdf/report-pdf'
 import { verifyReport, type Verification } from '../../../app/pdf/verify-report'
 import type { ReportAttachment } from '../../../app/pdf/write-report'
@@ -19,7 +22,8 @@ vi.mock('../../../app/pdf/report-pdf', async (original) => {
     reportPdf: (analysis: LotAnalysis, options: ReportPdf.ReportPdfOptions) => {
       const { inputs, ...rest } = options
       const digest = createHash('sha256').update(JSON.stringify(rest))
-      for (const { name, bytes } of [...inputs.readings, inputs.procedure]) digest.update(name).update(bytes)
+      for (const { name, bytes } of [...inputs.readings, inputs.procedure, ...(inputs.companions ?? [])])
+        digest.update(name).update(bytes)
       const key = digest.update(JSON.stringify(analysis.excluded)).digest('hex')
       if (!made.has(key)) made.set(key, reportPdf(analysis, options))
       return made.get(key)!
@@ -114,6 +118,33 @@ describe('a report as it was made', () => {
     const { isSame, inputs } = await verify(await makeReport(options))
     expect(isSame).toBe(true)
     expect(inputs).toEqual(['result.json', 'result.json', '../Prüfung\n.json'])
+  })
+})
+
+describe('a report whose procedure names a file', () => {
+  const name = 'tb-0417-boron-profile.csv'
+  const bytes = new Uint8Array(readFileSync(join(import.meta.dirname, '../../fixtures/layer', name)))
+  const background = { dopant: 'phosphorus', concentrationCm3: 1e15 }
+  const layer = { kind: 'doped-layer', dopant: 'boron', profile: 'tabulated', profileFile: name, background }
+  const procedure = JSON.stringify({ ...(JSON.parse(PROCEDURE) as object), layer })
+  const made = (companions: readonly NamedBytes[]): Promise<Uint8Array> => {
+    const options = optionsOf(undefined, { name: 'procedure.json', text: procedure })
+    return makeReport({ ...options, inputs: { ...options.inputs, companions } })
+  }
+
+  it('carries that file and no other, and is made again with it', async () => {
+    const report = await made([{ name: 'stray.csv', bytes: utf8('1') }, { name, bytes }])
+    expect(attachmentsOf(report).map((file) => file.name)).toEqual([
+      'TB-0417.csv', 'procedure.json', name, 'result.json', 'persquare-report.json',
+    ])
+    expect(await verify(report)).toMatchObject({ isSame: true, inputs: ['TB-0417.csv', 'procedure.json', name] })
+  }) // prettier-ignore
+
+  it('is another with another such file', async () => {
+    const thinner = (text: string) => text.replace(/^\d+.*\n/m, '')
+    const { isSame, problems, result } = await verify(await withFile(name, thinner, await made([{ name, bytes }])))
+    expect(isSame).toBe(false)
+    expect(problems.length + (result?.count ?? 0)).toBeGreaterThan(0)
   })
 })
 
