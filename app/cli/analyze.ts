@@ -8,6 +8,7 @@ import { CoreError, type Problem } from '../../core/problems/problem'
 import { parseTime } from '../../core/ingest/parse-time'
 import { lotTable } from './lot-table'
 import { ARTIFACTS, outputFiles, type Artifact } from './output-files'
+import { readCompanions } from './read-companions'
 import { readInput } from './read-inputs'
 import { PROGRAM, VERSION } from './version'
 import { writeWhole } from '../host/write-whole'
@@ -32,14 +33,15 @@ export async function analyzeCommand(args: readonly string[]): Promise<number> {
 export async function analyzeLot(options: AnalyzeOptions): Promise<number> {
   const procedure = await readInput(options.procedure)
   const readings = await Promise.all(options.files.map(readInput))
-  const { analysis, problems } = run({ readings, procedure })
+  const companions = await readCompanions(options.procedure, procedure)
+  const { analysis, problems } = run({ readings, procedure, companions })
   printProblems(problems, options.output === 'none')
   if (!analysis) {
     console.error('Nothing was analysed and nothing written.')
     return EXIT.notAnalysed
   }
   if (options.out !== null) {
-    await writeWhole(options.out, await outputFiles(analysis, { readings, procedure }, options))
+    await writeWhole(options.out, await outputFiles(analysis, { readings, procedure, companions }, options))
   }
   print(analysis, options)
   return analysis.lot.verdict === 'in-spec' ? EXIT.inSpec : EXIT.notInSpec

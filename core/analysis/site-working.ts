@@ -3,6 +3,7 @@ import type { LayerStep } from '../layer/layer-kind'
 import { outlineGeometry } from '../geometry/registry'
 import { DUAL_SOURCE } from '../geometry/dual'
 import { TEMPERATURE_SOURCE } from '../silicon/temperature'
+import { STANDARD_TEMPERATURE_C } from '../units/constants'
 import { formatQuantity, formatSignificant } from '../units/format'
 import { correct, type Corrections } from './corrections'
 import { layerResults } from './layer-results'
@@ -172,7 +173,9 @@ function temperatureSteps({ corrections: { temperature }, analysis, site, parts 
       : procedure.temperature.measuredC
   if (measured === undefined) return []
   const { referenceC } = procedure.temperature
-  const coefficient = formatSignificant(-100 * temperature.slope_per_C[0], 3)
+  // The slope of ln(1 - C (T - 23)) is -C / (1 - C (T - 23)).
+  const slope = temperature.slope_per_C[0]
+  const coefficient = formatSignificant((-100 * slope) / (1 - slope * (measured - STANDARD_TEMPERATURE_C)), 3)
   const value = temperature.factor[0]
   const source =
     temperature.basis === 'published'

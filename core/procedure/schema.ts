@@ -62,7 +62,7 @@ const layer = z.discriminatedUnion('kind', [
     /** sqrt(D t) of a gaussian or erfc profile, the decay length of an exponential one; the depth follows. */
     diffusionLengthUm: positive(1000).optional(),
     /** Only with profile "tabulated": depths and concentrations as CSV. */
-    profileFile: z.string().min(1).max(200).regex(BARE_FILE_NAME).optional(),
+    profileFile: z.string().max(200).regex(BARE_FILE_NAME).optional(),
     background,
   }),
   z.strictObject({

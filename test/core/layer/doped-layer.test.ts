@@ -7,13 +7,15 @@ import { mobilityIds } from '../../../core/silicon/mobility/registry'
 import { irvinLayers } from '../../reference/irvin-layers'
 import { between, inverted, largestRelativeDifference, modelOf, oppositeOf, problemOf } from './layer-fixtures'
 
+const DEPTH_UM = 0.35
+
 /** A boron source/drain monitor of the Tern Bay pilot line. */
 const monitor: DopedLayerSettings = {
   dopant: 'boron',
   mobility: modelOf('masetti'),
   temperature_K: 300,
   profile: 'gaussian',
-  depth_um: 0.35,
+  depth_um: DEPTH_UM,
   background: { dopant: 'phosphorus', concentration_cm3: 1e15 },
 }
 
@@ -36,7 +38,7 @@ describe('doped layer', () => {
         profile: row.profile,
         background: { dopant: oppositeOf(row.dopant), concentration_cm3: row.background_cm3 },
       })
-      const found = inverted(layer, [row.product_ohm_um / monitor.depth_um])
+      const found = inverted(layer, [row.product_ohm_um / DEPTH_UM])
       expect(Math.abs(found.concentration_cm3[0] / row.surface_cm3 - 1)).toBeLessThan(1e-10)
       expect(found.resistivity_ohm_cm[0] / (row.product_ohm_um * 1e-4)).toBeCloseTo(1, 12)
     }
@@ -44,7 +46,7 @@ describe('doped layer', () => {
 
   it('gives the dose of the diffusion that made it, where the background is negligible', () => {
     const background = { dopant: 'phosphorus', concentration_cm3: 1e10 } as const
-    const depth_cm = monitor.depth_um * 1e-4
+    const depth_cm = DEPTH_UM * 1e-4
     const ratio = 1e20 / 1e10
     const doseAt = (profile: 'gaussian' | 'erfc'): number => {
       const layer = dopedLayer.prepare({ ...monitor, profile, background })

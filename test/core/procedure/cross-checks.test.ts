@@ -75,6 +75,51 @@ describe('the layer', () => {
     expect(problemsOf({ wafer: { thicknessUm: 1.1 }, layer: boron })).toEqual([])
   })
 
+  it('has one of junction depth and diffusion length, where it is a named profile', () => {
+    const noDepth = { ...boron, depthUm: undefined }
+    expect(problemsOf({ layer: { ...noDepth, diffusionLengthUm: 0.06 } })).toEqual([])
+    expect(problemsOf({ layer: { ...boron, diffusionLengthUm: 0.06 } })).toMatchObject([
+      { kind: 'bad-value', key: 'layer.diffusionLengthUm', allowed: expect.stringContaining('give one') },
+    ])
+    expect(problemsOf({ layer: noDepth })).toMatchObject([{ kind: 'missing-key', key: 'layer.depthUm' }])
+    expect(problemsOf({ layer: { ...noDepth, profile: 'uniform', diffusionLengthUm: 0.06 } })).toMatchObject([
+      { kind: 'bad-value', key: 'layer.diffusionLengthUm', allowed: expect.stringContaining('give layer.depthUm') },
+    ])
+    expect(problemsOf({ wafer: { thicknessUm: 1 }, layer: { ...noDepth, diffusionLengthUm: 1 } })).toMatchObject([
+      { kind: 'bad-value', key: 'layer.diffusionLengthUm' },
+    ])
+  })
+
+  it('has a profile file exactly where the profile is tabulated, and then no depth', () => {
+    const noDepth = { ...boron, depthUm: undefined }
+    const tabulated = { ...noDepth, profile: 'tabulated', profileFile: 'tb-0417-profile.csv' }
+    expect(problemsOf({ layer: tabulated })).toEqual([])
+    expect(problemsOf({ layer: { ...noDepth, profile: 'tabulated' } })).toMatchObject([
+      { kind: 'missing-key', key: 'layer.profileFile' },
+    ])
+    expect(problemsOf({ layer: { ...boron, profileFile: 'p.csv' } })).toMatchObject([
+      { kind: 'bad-value', key: 'layer.profileFile' },
+    ])
+    for (const key of ['depthUm', 'diffusionLengthUm']) {
+      expect(problemsOf({ layer: { ...tabulated, [key]: 1 } })).toMatchObject([{ kind: 'bad-value', key: `layer.${key}` }]) // prettier-ignore
+    }
+  })
+
+  it.each(['/etc/p.csv', '../p.csv', 'a/p.csv', 'a\\p.csv', '..', 'C:p.csv', 'p\u0000.csv', 'p\n.csv', ''])(
+    'takes no profile file outside its folder: %j',
+    (profileFile) => {
+      const noDepth = { ...boron, depthUm: undefined }
+      expect(problemsOf({ layer: { ...noDepth, profile: 'tabulated', profileFile } })).toMatchObject([
+        { kind: 'bad-value', key: 'layer.profileFile', allowed: expect.stringContaining('beside the procedure') },
+      ])
+    },
+  )
+
+  it.each(['p.csv', '.p', 'Profil Bor, 0,4 µm.csv', 'p.2026-03-16.csv'])('takes the profile file %j', (profileFile) => {
+    const noDepth = { ...boron, depthUm: undefined }
+    expect(problemsOf({ layer: { ...noDepth, profile: 'tabulated', profileFile } })).toEqual([])
+  })
+
   it('of a film has one of its two keys', () => {
     const both = { kind: 'film', resistivityOhmCm: 3e-6, thicknessUm: 0.5 }
     expect(problemsOf({ layer: both })).toMatchObject([{ kind: 'bad-value', key: 'layer.thicknessUm' }])

@@ -84,6 +84,38 @@ describe('the lot report', () => {
     expect(rows.find((row) => row.cells[0] === 'layer.depthUm')!.cells).toEqual(['layer.depthUm', '0.35', 'µm', 'given']) // prettier-ignore
   })
 
+  it('sets the mobility models side by side, after the wafers and before the readings', () => {
+    const models = table('Concentration and dose')
+    expect(models.rows.map(({ cells }) => cells[0])).toHaveLength(6)
+    const own = models.rows.filter(({ emphasis }) => emphasis === 'strong')
+    expect(own.map(({ cells }) => [cells[3], cells[4]])).toEqual([['0.00', "the procedure's"]])
+    const headings = blocks.flatMap((block) => (block.kind === 'heading' && block.level === 1 ? [block.text] : []))
+    const at = headings.indexOf('Layer')
+    expect(headings[at - 1]).toMatch(/^Wafer /)
+    expect(headings[at + 1]).toBe('Readings')
+    expect(JSON.stringify(blocks)).toMatch(/models valid here span .* from the least to the greatest, the dose by/)
+  })
+
+  it('says of a profile file what it is, and of a layer without silicon nothing', () => {
+    const layer = { ...lot.procedure.layer, profile: 'tabulated', profileFile: 'tb-0417-profile.csv', depthUm: undefined } as const // prettier-ignore
+    const profile = {
+      file: 'tb-0417-profile.csv',
+      bytes: 80,
+      sha256: 'c0ffee',
+      headers: { depth: 'depth_um', concentration: 'N_cm-3' },
+      depth_um: Float64Array.of(0, 0.1, 0.2, 0.4),
+      concentration_cm3: Float64Array.of(4e19, 3e19, 4e18, 1e15),
+    }
+    const text = JSON.stringify(blocksOf({ ...lot, profile, procedure: { ...lot.procedure, layer: layer as never } }))
+    expect(text).toContain('boron, profile tb-0417-profile.csv, on phosphorus')
+    expect(text).toContain('4 points to 0.4000 µm; columns depth_um and N_cm-3')
+    expect(text).toContain('c0ffee')
+    expect(text).toContain('Peak concentration')
+    const film = { ...lot.procedure, layer: { kind: 'film', resistivityOhmCm: 1.7e-6 } } as const
+    const headings = blocksOf({ ...lot, procedure: film }).flatMap((block) => (block.kind === 'heading' ? [block.text] : [])) // prettier-ignore
+    expect(headings).not.toContain('Layer')
+  })
+
   it('holds for a lot without positions, dies, values or limits', () => {
     const bare: LotAnalysis = {
       ...lot,
