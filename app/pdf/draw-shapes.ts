@@ -41,7 +41,7 @@ function ringsPath(rings: readonly (readonly number[])[], closed: boolean): stri
   const parts: string[] = []
   for (const ring of rings) {
     for (let i = 0; i + 1 < ring.length; i += 2) {
-      parts.push(`${rounded(ring[i]!)} ${rounded(ring[i + 1]!)} ${i === 0 ? 'm' : 'l'}`)
+      parts.push(`${rounded(ring[i])} ${rounded(ring[i + 1])} ${i === 0 ? 'm' : 'l'}`)
     }
     if (closed && ring.length > 0) parts.push('h')
   }

@@ -64,7 +64,7 @@ export class Paper {
   /** What is drawn inside is read as one element. */
   leaf(tag: StructureTag, draw: () => void, options: { alt?: string } = {}): void {
     const element = this.doc.struct(tag, options)
-    this.parents[this.parents.length - 1]!.add(element)
+    this.parents[this.parents.length - 1].add(element)
     const content = this.doc.markStructureContent(tag)
     draw()
     this.doc.endMarkedContent()
@@ -75,7 +75,7 @@ export class Paper {
   /** Elements inside belong to this one. */
   branch(tag: StructureTag, draw: () => void, options: { title?: string } = {}): void {
     const element = this.doc.struct(tag, options)
-    this.parents[this.parents.length - 1]!.add(element)
+    this.parents[this.parents.length - 1].add(element)
     this.parents.push(element)
     draw()
     this.parents.pop()

@@ -20,7 +20,7 @@ export function wrapped(text: string, width: number, measure: (text: string) => 
     if (line !== '') lines.push(line)
     const pieces = measure(word) <= width ? [word] : cut(word, width, measure)
     lines.push(...pieces.slice(0, -1))
-    line = pieces[pieces.length - 1]!
+    line = pieces[pieces.length - 1]
   }
   if (line !== '' || lines.length === 0) lines.push(line)
   return lines
@@ -32,7 +32,7 @@ function unbreakable(text: string): string[] {
   let joinNext = false
   for (const word of text.split(/ +/).filter((each) => each !== '')) {
     const last = words.length - 1
-    const isUnit = UNIT.test(word) && last >= 0 && /[\d)⁰¹²³⁴-⁹]$/.test(words[last]!)
+    const isUnit = UNIT.test(word) && last >= 0 && /[\d)⁰¹²³⁴-⁹]$/.test(words[last])
     const isSign = JOINS_BOTH_SIDES.test(word) && last >= 0
     if (last >= 0 && (isUnit || isSign || joinNext)) words[last] += ` ${word}`
     else words.push(word)
