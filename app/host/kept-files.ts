@@ -49,13 +49,8 @@ export class KeptFiles {
     throw new CoreError({ kind: 'cannot-read', file: 'a file of the last session', why })
   }
 
-  async dropAllBut(used: ReadonlySet<string>, now_ms = Date.now()): Promise<void> {
-    const names = await readdir(this.folder).catch(() => [] as string[])
-    for (const name of names.filter((each) => !used.has(each))) {
-      if (!isToken(name) && !name.endsWith(PART_SUFFIX)) continue
-      const known = await stat(join(this.folder, name)).catch(() => null)
-      if (known && now_ms - known.mtimeMs > GRACE_ms) await rm(join(this.folder, name), { force: true })
-    }
+  async dropAllBut(used: ReadonlySet<string>): Promise<void> {
+    await dropOld(this.folder, (name) => !used.has(name) && (isToken(name) || name.endsWith(PART_SUFFIX)))
   }
 
   /** One that is there already begins its grace anew. */
@@ -65,5 +60,14 @@ export class KeptFiles {
     const now = new Date()
     await utimes(path, now, now).catch(() => undefined)
     return true
+  }
+}
+
+/** Files whose time of grace is over. */
+export async function dropOld(folder: string, isUnused: (name: string) => boolean): Promise<void> {
+  const names = await readdir(folder).catch(() => [] as string[])
+  for (const name of names.filter(isUnused)) {
+    const known = await stat(join(folder, name)).catch(() => null)
+    if (known?.isFile() && Date.now() - known.mtimeMs > GRACE_ms) await rm(join(folder, name), { force: true })
   }
 }

@@ -7,8 +7,8 @@ import { mkdir, readFile, rename, rm } from 'node:fs/promises'
 import { join } from 'node:path'
 import { CoreError } from '../../core/problems/problem'
 import { MAX_STATE_BYTES, type SavedState } from '../contract/host'
-import { KeptFiles, isToken } from './kept-files'
-import { besideOf, flushFolder, writeFlushed } from './write-whole'
+import { dropOld, isToken, KeptFiles } from './kept-files'
+import { besideOf, flushFolder, PART_SUFFIX, writeFlushed } from './write-whole'
 
 const FORMAT = 'persquare-state/1'
 const LAST = 'state'
@@ -77,6 +77,8 @@ export class StateStore {
     const generations = [await this.read(LAST), await this.read(PREVIOUS)]
     const used = generations.flatMap((found) => (found && found !== 'damaged' ? found.kept : []))
     await this.files.dropAllBut(new Set(used))
+    // Left behind by a program that died while it wrote.
+    await dropOld(this.folder, (name) => name.endsWith(PART_SUFFIX))
   }
 
   private async read(name: string): Promise<Generation | 'damaged' | null> {
