@@ -4,6 +4,7 @@ import { join } from 'node:path'
 import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { startLoopbackHost } from '../../../app/browser/loopback-host'
+import { loopbackSettings } from './loopback-settings'
 import { builtPage, hasChromium, launchChromium } from './chromium'
 
 const sample = (name: string): string => join(import.meta.dirname, '..', '..', '..', 'sample-data', name)
@@ -26,7 +27,8 @@ describe.skipIf(!hasChromium())('the window in a browser', () => {
   })
 
   async function open(files: readonly string[], look: (page: Page) => Promise<void>): Promise<void> {
-    const host = await startLoopbackHost({ port: 0, root: builtPage(), files })
+    const own = await mkdtemp(join(folder, 'own-'))
+    const host = await startLoopbackHost(loopbackSettings(own, { root: builtPage(), files }))
     const page = await browser.newPage()
     page.setDefaultTimeout(15_000)
     const complaints: string[] = []
