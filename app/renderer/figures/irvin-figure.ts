@@ -10,7 +10,7 @@ import { decades, type CurveFigure } from './curves'
 import type { LotPictures } from './lot-pictures'
 
 const POINTS = 140
-const DECADES_ASIDE = 1.5
+const DECADES_ASIDE = 1
 
 /** Null for layers that have no concentration, or a lot without any. */
 export function irvinFigure({ analysis, wafers }: LotPictures, chosen: string | null): CurveFigure | null {

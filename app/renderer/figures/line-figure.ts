@@ -23,19 +23,19 @@ export function lineFigure(pictures: LotPictures, wafer: WaferAnalysis, angle_de
   const { position_mm, value, extrapolated, near, source } = lineProfile(columns, line)
   const { min, max } = extremes([...value, ...near.value])
   const frame = chartFrame({
-    width_pt: 430,
-    height_pt: 230,
+    width_pt: 264,
+    height_pt: 190,
     x: { min: -radius_mm, max: radius_mm },
     y: padded([min, max, ...limitsInReach(siteLimits, min, max)]),
-    xTickCount: 6,
+    xTickCount: 4,
     yTickCount: 5,
     right_pt: 48,
   })
   const course = (isGuess: 0 | 1): number[][] => runs(extrapolated, isGuess).map((run) => run.flatMap((i) => [frame.x(position_mm[i]), frame.y(value[i])])) // prettier-ignore
   return {
-    width_pt: 430,
-    height_pt: 230,
-    title: `Line profile of ${waferTitle(wafer.id)} along ${angle_deg}°`,
+    width_pt: 264,
+    height_pt: 190,
+    title: `Line profile of ${waferTitle(wafer.id).toLowerCase()} along ${angle_deg}°`,
     description: `${analysis.quantity.title} along a diameter at ${angle_deg}° from +x: ${source}. Marked are the ${near.site.length} sites nearest to the line; dashed lies beyond the sites.`,
     shapes: [
       ...frameShapes(frame, { x: 'position along the line / mm', y: axisTitle(analysis.quantity) }),

@@ -9,7 +9,9 @@ import type { WaferAnalysis } from '../../../core/analysis/lot-analysis'
 import { waferTitle } from '../../../core/report/report-context'
 import type { LotPictures } from './lot-pictures'
 
-const WIDE = { width_pt: 430, height_pt: 210 } as const
+/** Small on paper is large on the screen: the window sets a drawing as wide as its column. */
+const LEAF = { width_pt: 264, height_pt: 190 } as const
+const WIDE = { width_pt: 400, height_pt: 200 } as const
 
 export function lotFigure({ analysis, wafers, meanLimits }: LotPictures): Drawing {
   return waferMeans({
@@ -28,23 +30,23 @@ export function radialFigure(pictures: LotPictures, wafer: WaferAnalysis): Drawi
   const { analysis, siteLimits, sitesOf } = pictures
   const { outline } = analysis
   return radialProfile({
-    title: `Radial profile of ${waferTitle(wafer.id)}`,
+    title: `Radial profile of ${waferTitle(wafer.id).toLowerCase()}`,
     quantity: analysis.quantity,
     sites: sitesOf(wafer),
     limits: siteLimits,
     edgeRadius_mm: outline.shape === 'disc' ? outline.diameter_mm / 2 : NaN,
     edgeExclusion_mm: analysis.procedure.wafer.edgeExclusionMm,
-    ...WIDE,
+    ...LEAF,
   })
 }
 
 export function histogramFigure({ analysis, siteLimits, sitesOf }: LotPictures, wafer: WaferAnalysis): Drawing {
   return histogram({
-    title: `Histogram of ${waferTitle(wafer.id)}`,
+    title: `Histogram of ${waferTitle(wafer.id).toLowerCase()}`,
     quantity: analysis.quantity,
     values: sitesOf(wafer).value,
     limits: siteLimits,
-    ...WIDE,
+    ...LEAF,
   })
 }
 
@@ -54,7 +56,7 @@ export function mapFigure(pictures: LotPictures, wafer: WaferAnalysis): Drawing 
   if (!scale) return null
   const sites = sitesOf(wafer)
   return waferMap({
-    title: `Map of ${waferTitle(wafer.id)}`,
+    title: `Map of ${waferTitle(wafer.id).toLowerCase()}`,
     outline: analysis.outline,
     edgeExclusion_mm: analysis.procedure.wafer.edgeExclusionMm,
     quantity: analysis.quantity,

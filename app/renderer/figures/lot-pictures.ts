@@ -57,3 +57,21 @@ export function orderedRack(wafers: readonly WaferAnalysis[], order: RackOrder):
   }[order]
   return [...wafers].sort((a, b) => rank(a) - rank(b)).map((wafer) => ({ slot: wafer.slot, wafer }))
 }
+
+/** A map narrower than its figures says too little; a wider one only takes room. */
+const LEAST_PX = 74
+const MOST_PX = 190
+
+/** How many columns make the maps of a rack largest without scrolling; where they can't all be seen, the narrowest. */
+export function rackColumns(count: number, width: number, height: number): number {
+  const most = Math.max(1, Math.floor(width / LEAST_PX))
+  for (let columns = Math.max(1, Math.floor(width / MOST_PX)); columns <= most; columns++) {
+    if (Math.ceil(count / columns) * placeHeight(width / columns) <= height) return columns
+  }
+  return most
+}
+
+/** The map, its name and its figures, which take two lines where they don't fit into one. */
+function placeHeight(width: number): number {
+  return 0.82 * (width - 14) + (width < 100 ? 74 : 58)
+}

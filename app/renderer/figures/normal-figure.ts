@@ -25,20 +25,20 @@ export function normalFigure(pictures: LotPictures, wafer: WaferAnalysis): Drawi
   const end = scores[scores.length - 1] * 1.08
   const normalAt = (z: number): number => mean + z * standardDeviation
   const frame = chartFrame({
-    width_pt: 430,
-    height_pt: 230,
+    width_pt: 264,
+    height_pt: 190,
     x: { min: -end, max: end },
     y: padded([min, max, normalAt(-end), normalAt(end), ...limitsInReach(siteLimits, min, max)]),
-    xTickCount: 6,
+    xTickCount: 4,
     yTickCount: 5,
     right_pt: 48,
   })
   const every = Math.ceil(sites.length / MOST_POINTS)
   const { p } = andersonDarling(value, columns.sites)
   return {
-    width_pt: 430,
-    height_pt: 230,
-    title: `Normal plot of ${waferTitle(wafer.id)}`,
+    width_pt: 264,
+    height_pt: 190,
+    title: `Normal plot of ${waferTitle(wafer.id).toLowerCase()}`,
     description: `${sites.length} sites by rank; on the line they would be normally distributed. Anderson–Darling: so uneven a sample has probability ${formatSignificant(p, 2)} if they were, sites taken as independent.`,
     shapes: [
       ...frameShapes(frame, { x: 'standard normal score', y: axisTitle(analysis.quantity) }),

@@ -6,6 +6,7 @@ import type { Problem } from '../../../core/problems/problem'
 import { isProcedureName } from '../../contract/file-kinds'
 import type { OpenedFile, Reply } from '../../contract/host'
 import { analyzeInWorker, lotAnalyzer } from '../analysis'
+import { listFindings } from '../figures/findings'
 import { lotPictures } from '../figures/lot-pictures'
 import type { Keeping } from '../persistence/session-keeper'
 import { useChoicesStore } from './choices'
@@ -27,6 +28,7 @@ export const useLotStore = defineStore('lot', () => {
   const analysis = computed(() => outcome.value?.analysis ?? null)
   const pictures = computed(() => (analysis.value ? lotPictures(analysis.value) : null))
   const problems = computed(() => [...(refusal.value ? [refusal.value] : []), ...(outcome.value?.problems ?? [])])
+  const findings = computed(() => listFindings(analysis.value, problems.value, choices.now.procedure?.name ?? ''))
   const state = computed<LotState>(() => {
     if (analysis.value) return 'analysed'
     if (busy.value) return 'reading'
@@ -82,6 +84,7 @@ export const useLotStore = defineStore('lot', () => {
     analysis,
     pictures,
     problems,
+    findings,
     refusal,
     state,
     busy,

@@ -39,7 +39,7 @@ export const useViewStore = defineStore('view', () => {
   const figure = ref('radial')
   const lineAngle_deg = ref(0)
   const theme = ref<Theme>('system')
-  const dialog = ref<'find' | 'help' | 'exclude' | null>(null)
+  const dialog = ref<'find' | 'help' | 'exclude' | 'findings' | null>(null)
   /** Asked for from afar, and done by the part that can; a factor of 0 is the whole wafer. */
   const zoomed = shallowRef<{ readonly factor: number } | null>(null)
   const request = ref<'save' | 'print' | null>(null)
