@@ -11,8 +11,8 @@ export interface HeaderReading {
   readonly bracket: string | null
 }
 
-/** Words run together, as they often are in a header of few letters. */
-const RUN_TOGETHER: Readonly<Record<string, string>> = {
+/** Words run together, as they often are in a header of few letters. A map: "constructor" may be a header, too. */
+const RUN_TOGETHER = new Map(Object.entries({
   vf: 'v fwd', vr: 'v rev', if: 'i fwd', ir: 'i rev', va: 'v a', vb: 'v b', ia: 'i a', ib: 'i b', ra: 'r a', rb: 'r b',
   uf: 'u fwd', ur: 'u rev', ua: 'u a', ub: 'u b',
   vfwd: 'v fwd', vrev: 'v rev', ifwd: 'i fwd', irev: 'i rev', vpos: 'v fwd', vneg: 'v rev', ipos: 'i fwd', ineg: 'i rev',
@@ -21,10 +21,10 @@ const RUN_TOGETHER: Readonly<Record<string, string>> = {
   xcoord: 'x', ycoord: 'y', xloc: 'x', yloc: 'y', waferid: 'wafer id', waferno: 'wafer no', wafernumber: 'wafer no', lotid: 'lot id',
   lotno: 'lot no', lotnumber: 'lot no', siteno: 'site no', siteid: 'site id', sitenumber: 'site no', slotno: 'slot no',
   datetime: 'date time', timestamp: 'timestamp',
-} // prettier-ignore
+})) // prettier-ignore
 
 /** Pin pairs: SEMI MF1529 has the current on 1-4 and the voltage on 2-3 in A, the current on 1-3 and the voltage on 2-4 in B. */
-const PIN_PAIRS: Readonly<Record<string, string>> = { '14': 'a', '23': 'a', '13': 'b', '24': 'b' }
+const PIN_PAIRS: ReadonlyMap<string, string> = new Map(Object.entries({ '14': 'a', '23': 'a', '13': 'b', '24': 'b' }))
 
 const BRACKETS = /\(([^()]*)\)|\[([^[\]]*)\]|\{([^{}]*)\}|<([^<>]*)>/g
 const SEPARATORS = /[\s_,;:/\\.·*|=-]+/
@@ -87,10 +87,12 @@ function tokensOf(text: string): string[] {
 }
 
 function wordsOf(text: string): string[] {
-  const words = tokensOf(text).flatMap((token) => (RUN_TOGETHER[token.toLowerCase()] ?? token.toLowerCase()).split(' '))
+  const words = tokensOf(text).flatMap((token) =>
+    (RUN_TOGETHER.get(token.toLowerCase()) ?? token.toLowerCase()).split(' '),
+  )
   const joined: string[] = []
   for (let at = 0; at < words.length; at++) {
-    const pair = PIN_PAIRS[`${words[at]}${words[at + 1] ?? ''}`] ?? PIN_PAIRS[words[at]]
+    const pair = PIN_PAIRS.get(`${words[at]}${words[at + 1] ?? ''}`) ?? PIN_PAIRS.get(words[at])
     if (pair === undefined) joined.push(words[at])
     else {
       joined.push(pair)

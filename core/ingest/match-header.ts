@@ -51,7 +51,7 @@ function matchFamily(reading: HeaderReading, family: Family): HeaderMatch | null
   if (reading.words.length === 0 && (unit === null || unit.id.length < 2)) return null
   const parts = sortWords(reading.words, family)
   if (parts === null) return null
-  const weight = family.phrases[parts.phrase]
+  const weight = Object.hasOwn(family.phrases, parts.phrase) ? family.phrases[parts.phrase] : undefined
   const hasOwnUnit = unit !== null && unit.quantity === family.quantities[0]
   const namesUnit = hasOwnUnit || /ohm|Ω/i.test(reading.bracket ?? '')
   if (weight === undefined || (family.needUnit.includes(parts.phrase) && !namesUnit)) return null

@@ -153,6 +153,24 @@ describe('rows', () => {
     expect(problems).toMatchObject([{ kind, line: 3, why: expect.stringContaining(why) }])
   })
 
+  it.each(['constructor', '__proto__', 'toString', 'hasOwnProperty'])('a header or a cell may say %s', (word) => {
+    expect(readText(`site,${word},Rs\n1,1,90\n`).readings!.files[0]!.ignoredHeaders).toEqual([word])
+    expect(readText(`site,polarity,config,I,V\n1,${word},A,1,2\n2,+,${word},1,2\n`).problems).toMatchObject([
+      { kind: 'no-readings' },
+      { kind: 'bad-cell', line: 2, column: 'polarity' },
+      { kind: 'bad-cell', line: 3, column: 'config' },
+    ])
+  })
+
+  it('a place no wafer has, a reading next to nothing, half a die', () => {
+    const { problems } = readText('site,x,y,die_x,die_y,I,V\n1,1e28,0,0,0,1,2\n2,0,0,0,0,1e-300,2\n3,0,0,0.5,0,1,2\n')
+    expect(problems.slice(1)).toMatchObject([
+      { kind: 'bad-cell', line: 2, column: 'x' },
+      { kind: 'bad-cell', line: 3, column: 'I' },
+      { kind: 'bad-cell', line: 4, column: 'die_x' },
+    ])
+  })
+
   it('statistics that stand under the wafer, behind another column', () => {
     const { readings, problems } = readText('time,wafer,site,Rs\n,W-07,1,90\n,W-07,2,91\n,Mean,,90.5\n')
     expect(readings!.wafers.map(({ id }) => id)).toEqual(['W-07'])
