@@ -18,6 +18,8 @@ export type MeanConductivity = (upper: number, lower: number) => number
 /** Mobility models bend on the scale of one unit of ln N: degree 15 has twelve digits and more on half of that. */
 const PANEL_WIDTH = 0.5
 const RULE = gaussLegendre(16)
+/** Just above the background the integral begins with the square of the distance; it keeps its digits on panels that grow. */
+const FIRST_EDGES = [1e-4, 1e-3, 1e-2, 1e-1] as const
 /** Half the distance of the two points of the Gauss-Legendre rule of order 2. */
 const TWO_POINT = 0.5 / Math.sqrt(3)
 /** Below it a difference of integrals would lose digits, and two points of the integrand have all of them. */
@@ -56,7 +58,11 @@ interface Stretch {
 function integralFrom(bottom: number, jumps: readonly number[], f: (x: number) => number): (x: number) => number {
   const top = Math.log(LARGEST_DENSITY_CM3) + PANEL_WIDTH
   const count = Math.ceil((top - bottom) / PANEL_WIDTH)
-  const edges = [...Array.from({ length: count + 1 }, (_, i) => bottom + i * PANEL_WIDTH), ...jumps.slice(1)]
+  const edges = [
+    ...Array.from({ length: count + 1 }, (_, i) => bottom + i * PANEL_WIDTH),
+    ...FIRST_EDGES.map((edge) => bottom + edge),
+    ...jumps.slice(1),
+  ]
   edges.sort((a, b) => a - b)
   const stretches: Stretch[] = []
   let before = 0
@@ -68,7 +74,7 @@ function integralFrom(bottom: number, jumps: readonly number[], f: (x: number) =
   }
   return (x) => {
     if (x <= bottom) return 0
-    // Jumps add panels, so the one of x comes no earlier than its place among equal ones.
+    // Jumps and first edges add panels, so the one of x comes no earlier than its place among equal ones.
     let i = Math.min(stretches.length - 1, Math.floor((x - bottom) / PANEL_WIDTH))
     while (i < stretches.length - 1 && stretches[i].panel.to < x) i++
     return stretches[i].before + seriesAt(stretches[i].panel, x)
