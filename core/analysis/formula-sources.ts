@@ -19,7 +19,7 @@ export interface FormulaSource {
 }
 
 export function formulaSources(analysis: LotAnalysis): FormulaSource[] {
-  const { procedure, outline, readings } = analysis
+  const { procedure, outline, readings, sites } = analysis
   const { layer } = procedure
   const hasPlaces = sitePositions(readings, procedure) !== null
   const geometry = outlineGeometry(hasPlaces ? outline : { shape: 'infinite' })
@@ -28,7 +28,9 @@ export function formulaSources(analysis: LotAnalysis): FormulaSource[] {
   const entry = (id: string, title: string, reference: string): FormulaSource => ({ id, title, reference })
   return [
     entry('geometry', `Geometry factor: ${geometry.title}`, geometry.source),
-    ...(procedure.probe.technique === 'dual' ? [entry('dual', 'Dual configuration', DUAL_SOURCE)] : []),
+    ...(procedure.probe.technique === 'dual' && sites.vOverIB_ohm
+      ? [entry('dual', 'Dual configuration', DUAL_SOURCE)]
+      : []),
     ...(layer.kind === 'bulk' ? [entry('thickness', 'Thickness factor', THICKNESS_SOURCE)] : []),
     ...(layer.kind === 'bulk' ? [entry('temperature', 'Temperature coefficient', TEMPERATURE_SOURCE)] : []),
     ...kind.sources.map((reference, k) => entry(`${kind.id}-${k}`, kind.title, reference)),

@@ -8,12 +8,16 @@ export interface MeasuringSetUp {
   readonly spacings_mm: PinSpacings
   readonly meanSpacing_mm: number
   readonly orientation: Orientation
+  /** The procedure says so and the readings have a configuration B. */
   readonly isDual: boolean
   /** null where the layer doesn't conduct through the wafer or its thickness isn't known. */
   readonly conductingThickness_um: number | null
 }
 
-export function measuringSetUp({ wafer, probe, layer }: Procedure): MeasuringSetUp {
+export function measuringSetUp(
+  { wafer, probe, layer }: Procedure,
+  { hasConfigurationB }: { readonly hasConfigurationB: boolean },
+): MeasuringSetUp {
   // Without an edge or a thickness nothing depends on the size of the probe: any equal spacing serves.
   const nominal_mm = probe.spacingMm ?? 1
   const spacings_mm = probe.pinSpacingsMm ?? [nominal_mm, nominal_mm, nominal_mm]
@@ -22,7 +26,7 @@ export function measuringSetUp({ wafer, probe, layer }: Procedure): MeasuringSet
     spacings_mm,
     meanSpacing_mm: (spacings_mm[0] + spacings_mm[1] + spacings_mm[2]) / 3,
     orientation: probe.orientation,
-    isDual: probe.technique === 'dual',
+    isDual: probe.technique === 'dual' && hasConfigurationB,
     conductingThickness_um: layer.kind === 'bulk' ? (wafer.thicknessUm ?? null) : null,
   }
 }

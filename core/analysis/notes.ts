@@ -50,10 +50,11 @@ function valueNotes({ readings, procedure, corrections, setUp }: NotesInput): st
   if (readings.voltage_V && (readings.sheetResistance_ohm_sq || readings.resistivity_ohm_cm)) {
     notes.push('The file reports results of its own beside V and I: they were left aside, and ours made from V and I.')
   }
-  if (setUp.isDual && !corrections.vOverI.b_ohm) {
+  const isDual = procedure.probe.technique === 'dual'
+  if (isDual && !setUp.isDual) {
     notes.push('The procedure says dual configuration, but the readings have no configuration B: treated as single.')
   }
-  if (!setUp.isDual && corrections.vOverI.b_ohm) {
+  if (!isDual && corrections.vOverI.b_ohm) {
     notes.push('The readings have a configuration B that a single-configuration procedure leaves unused.')
   }
   return notes

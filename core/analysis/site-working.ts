@@ -26,8 +26,8 @@ export function siteWorking(analysis: LotAnalysis, site: number): Working {
   const { readings, procedure, profile } = analysis
   const one = oneSite(readings, site)
   const flags = new Uint32Array(1)
-  const setUp = measuringSetUp(procedure)
   const vOverI = ratios(one, flags)
+  const setUp = measuringSetUp(procedure, { hasConfigurationB: vOverI.b_ohm !== null })
   const positions = sitePositions(one, procedure)
   const corrections = correct(one, procedure, setUp, positions, vOverI, flags)
   const parts = contributions(procedure, profile, corrections, flags)

@@ -1,5 +1,6 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
+import { siteWorking } from '../../../core/analysis/site-working'
 import { SITE_FLAGS } from '../../../core/analysis/flags'
 import type { ProcedureInput } from '../../../core/procedure/schema'
 import { analyzeText, runText, sampleBytes, sampleLot, sampleText } from './lots'
@@ -28,6 +29,17 @@ describe('what a site may bring', () => {
     expect(lot.sites.sheetResistance_ohm_sq[0]).toBe(again.sites.sheetResistance_ohm_sq[0])
     // 1.5 mm from the rim along a radius a single configuration reads 6.65 % high if not corrected.
     expect(((92 / 4.532) * PI_OVER_LN2) / lot.sites.sheetResistance_ohm_sq[0] - 1).toBeCloseTo(0.0665, 4)
+  })
+
+  it('a dual procedure over readings of configuration A alone is worked as single throughout, thickness and working too', () => {
+    const csv = 'wafer,site,v_over_i_ohm\n1,1,10\n'
+    const thick = { wafer: { thicknessUm: 1500 }, layer: { kind: 'bulk' as const, dopant: 'boron' as const } }
+    const [dual, single] = (['dual', 'single'] as const).map((technique) =>
+      analyzeText(csv, { ...thick, probe: { spacingMm: 1, technique } }),
+    )
+    expect(dual.sites.sheetResistance_ohm_sq[0]).toBe(single.sites.sheetResistance_ohm_sq[0])
+    expect(siteWorking(dual, 0).steps).toEqual(siteWorking(single, 0).steps)
+    expect(dual.notes.join()).toContain('treated as single')
   })
 
   it('both configurations: the exact dual relation, whatever the spacing of the pins', () => {
