@@ -175,7 +175,7 @@ export const procedureSchema = z.strictObject({
   uncertainty: uncertainty.prefault({}),
   readings: readings.prefault({}),
   /** With which constant a reported sheet resistance was made, so that V/I can be recovered and corrected anew. */
-  reported: z.strictObject({ factor: positive(100) }).optional(),
+  reported: z.strictObject({ factor: z.number().min(0.01).max(100) }).optional(),
   /** For editors that check a file as it is written; nothing here reads it. */
   $schema: z.string().max(1000).optional(),
 })
