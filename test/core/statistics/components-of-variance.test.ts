@@ -1,6 +1,10 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
+import { analysisOfVariance } from '../../../core/statistics/analysis-of-variance'
+import { componentInterval } from '../../../core/statistics/component-interval'
 import { componentsOfVariance } from '../../../core/statistics/components-of-variance'
+import { standardDeviationInterval } from '../../../core/statistics/intervals'
+import { summarize } from '../../../core/statistics/summarize'
 import { STRD_ANOVA, strdRows } from '../../reference/nist-strd'
 
 const byFives = (count: number) => Array.from({ length: count / 5 }, (_, w) => Uint32Array.of(5 * w, 5 * w + 1, 5 * w + 2, 5 * w + 3, 5 * w + 4)) // prettier-ignore
@@ -15,6 +19,37 @@ describe('published values', () => {
     expect(withinWafer.standardDeviation).toBeCloseTo(certified.residualStandardDeviation, 12)
     expect(betweenWafers.variance).toBeCloseTo((msBetween - msWithin) / 5, 13)
     expect([withinWafer.degreesOfFreedom, betweenWafers.degreesOfFreedom]).toEqual([20, 4])
+  })
+})
+
+describe('intervals', () => {
+  const values = Float64Array.from(strdRows('strd-anova-sirstv'), ([, y]) => Number(y))
+
+  it('SiRstv: within by chi-square of 20; between from 0, for F = 1.18 is not significant', () => {
+    const { withinWafer, betweenWafers } = componentsOfVariance(values, byFives(25))!
+    const within = standardDeviationInterval({ ...withinWafer, level: 0.95 })
+    expect(withinWafer.interval.lower).toBeCloseTo(within.lower, 12)
+    expect(withinWafer.interval.upper).toBeCloseTo(within.upper, 12)
+    expect(betweenWafers.interval.lower).toBe(0)
+    expect(betweenWafers.interval.upper).toBeGreaterThan(betweenWafers.standardDeviation)
+  })
+
+  it('of equal numbers of sites, between is that of the mean squares', () => {
+    const wafers = byFives(25)
+    const { between, within } = analysisOfVariance(values, wafers)
+    const { lower, upper } = componentInterval({ larger: between, smaller: within, divisor: 5, level: 0.5 })
+    const { betweenWafers } = componentsOfVariance(values, wafers, 0.5)!
+    expect(betweenWafers.interval.lower ** 2).toBeCloseTo(lower, 12)
+    expect(betweenWafers.interval.upper ** 2).toBeCloseTo(upper, 12)
+  })
+
+  it('of unequal numbers, that of the unweighted means and the harmonic mean of the numbers', () => {
+    const wafers = [Uint32Array.of(0, 1), Uint32Array.of(5, 6, 7), Uint32Array.of(10, 11, 12, 13, 14, 15)]
+    const means = Float64Array.from(wafers, (rows) => summarize(values, rows).mean)
+    const larger = { meanSquare: 3 * summarize(means).standardDeviation ** 2, degreesOfFreedom: 2 }
+    const smaller = analysisOfVariance(values, wafers).within
+    const { upper } = componentInterval({ larger, smaller, divisor: 3, level: 0.95 })
+    expect(componentsOfVariance(values, wafers)!.betweenWafers.interval.upper ** 2).toBeCloseTo(upper, 11)
   })
 })
 
