@@ -78,6 +78,22 @@ export class WaferLabels {
     return (this.siteCounts[wafer] = this.siteCounts[wafer] + 1)
   }
 
+  /** Undoes everything since. */
+  mark(): () => void {
+    const slots = Float64Array.from(this.labels, ({ slot }) => slot)
+    const rejected = Uint32Array.from(this.labels, ({ rejectedRows }) => rejectedRows)
+    const siteCounts = Uint32Array.from(this.siteCounts)
+    return () => {
+      for (const { id } of this.labels.splice(slots.length)) this.byId.delete(id)
+      this.labels.forEach((label, at) => {
+        label.slot = slots[at]
+        label.rejectedRows = rejected[at]
+      })
+      this.siteCounts.length = siteCounts.length
+      siteCounts.forEach((count, at) => (this.siteCounts[at] = count))
+    }
+  }
+
   reject(wafer: number): void {
     this.labels[wafer].rejectedRows++
   }

@@ -82,11 +82,12 @@ function readFile(
   if ('line' in ends) return { kind: 'line-too-long', file, ...ends, max: MAX_LINE_LENGTH }
   const header = findHeader(file, text.slice(0, ends[0]), options)
   if ('kind' in header) return header
+  const undo = draft.mark()
   const reader = new RowReader(draft, file, index, header.delimiter, options)
   const begin = draft.columns.count
   const problem = readBlocks(reader, text, ends, header, options, watch)
   if (problem) {
-    draft.columns.truncate(begin)
+    undo()
     return problem
   }
   const { decimalMark } = reader

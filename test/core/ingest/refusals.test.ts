@@ -101,6 +101,18 @@ describe('whole files', () => {
     expect(problems).toEqual([{ kind: 'empty-file', file: 'a.csv' }])
   })
 
+  it('what a refused file says of lot, wafers and sites weighs on no other', () => {
+    const { readings, problems, notes } = readReadings([
+      textFile('lot: TB-0999\nslot: 9\nx,y,Rs\n0,0,1\n0,1,x\nx,y,Rs,Rs\n1,2,3,4\n', 'a.csv'),
+      textFile('wafer,slot,Rs\n1,4,90\n1,9,x\nwafer,Rs,Rs\n1,2,3\n', 'b.csv'),
+      textFile('lot: TB-0417\nwafer,Rs\n1,91\n', 'c.csv'),
+    ])
+    expect(problems.map(({ kind }) => kind)).toEqual(['ambiguous-column', 'ambiguous-column'])
+    expect(readings).toMatchObject({ lot: 'TB-0417', wafers: [{ id: '1', slot: 1, rejectedRows: 0 }] })
+    expect([...readings!.site].map((site) => readings!.siteNames[site])).toEqual(['1'])
+    expect(notes.filter((note) => !note.startsWith('c.csv'))).toEqual([])
+  })
+
   it('a second header that is ambiguous refuses the file and leaves nothing of it behind', () => {
     const { readings, problems } = readReadings([
       textFile('wafer,site,Rs\n1,1,90\nwafer,Rs,Rs\n1,2,3\n', 'a.csv'),
