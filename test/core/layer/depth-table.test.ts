@@ -40,7 +40,7 @@ describe('a table as lines', () => {
 
   it('holds above the background what an integral over depth says', () => {
     const at = (x_um: number): number => {
-      const i = x_um < 0.1 ? -1 : table.depth_um.findLastIndex((depth) => depth <= x_um)
+      const i = x_um < 0.1 ? -1 : table.depth_um.filter((depth) => depth <= x_um).length - 1
       if (i < 0) return 1e18
       const share = (x_um - table.depth_um[i]) / (table.depth_um[i + 1] - table.depth_um[i])
       return table.concentration_cm3[i] * (table.concentration_cm3[i + 1] / table.concentration_cm3[i]) ** share
