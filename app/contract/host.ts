@@ -89,6 +89,7 @@ export interface SavedState {
 }
 
 export interface ReportRequest {
+  /** All that was brought but the procedure; what the procedure names goes with it. */
   readonly readings: readonly OpenedFile[]
   readonly procedure: OpenedFile
   readonly excluded: readonly Exclusion[]

@@ -99,7 +99,9 @@ const VALUES: Values = {
 /** A problem is what can be explained: whatever else has its shape would only fail when it is shown. */
 export const problem = z.custom<Problem>((value) => {
   try {
-    return typeof explain(value as Problem) === 'string'
+    const problem = value as Problem
+    // `toString` and its like are in every object, the table of sentences included.
+    return !(problem.kind in {}) && typeof explain(problem) === 'string'
   } catch {
     return false
   }

@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto'
 import { run } from '../../core/analysis/run'
 import { CoreError } from '../../core/problems/problem'
+import { partBrought } from '../contract/brought-files'
 import type { ReportRequest } from '../contract/host'
 import { reportPdf } from '../pdf/report-pdf'
 
@@ -16,10 +17,11 @@ export interface Program {
  */
 export async function makeReport(request: ReportRequest, { program, version }: Program): Promise<Uint8Array> {
   const { procedure, excluded, decision, date, paper } = request
-  const readings = request.readings.map(({ name, bytes }) => {
+  const brought = request.readings.map(({ name, bytes }) => {
     return { name, bytes, sha256: createHash('sha256').update(bytes).digest('hex') }
   })
-  const { analysis, problems } = run({ readings, procedure, excluded })
+  const { readings, companions } = partBrought(brought, procedure)
+  const { analysis, problems } = run({ readings, companions, procedure, excluded })
   if (!analysis) throw new CoreError(problems[0])
-  return reportPdf(analysis, { program, version, date, paper, decision, inputs: { readings, procedure } })
+  return reportPdf(analysis, { program, version, date, paper, decision, inputs: { readings, procedure, companions } })
 }

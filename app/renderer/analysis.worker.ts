@@ -1,6 +1,7 @@
 /** Runs core's pipeline beside the window, one job at a time. */
 import type { LotAnalysis } from '../../core/analysis/lot-analysis'
 import { run, type RunInput } from '../../core/analysis/run'
+import { partBrought } from '../contract/brought-files'
 import type { FileUse, Job, Report } from './analysis-messages'
 
 interface KeptFile {
@@ -24,7 +25,7 @@ async function answer({ added, dropped, readings, procedure, excluded }: Job): P
   for (const id of dropped) kept.delete(id)
   for (const { id, bytes } of added) kept.set(id, { bytes, sha256: await sha256(bytes) })
   const input: RunInput = {
-    readings: readings.map(named),
+    ...partBrought(readings.map(named), named(procedure)),
     procedure: named(procedure),
     excluded,
     watch: (progress) => port.postMessage({ kind: 'progress', progress }),
