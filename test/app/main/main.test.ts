@@ -143,7 +143,7 @@ describe('the menus', () => {
   it.each(['linux', 'darwin', 'win32'] as const)('on %s hold every command once, with its key', async (platform) => {
     const { menuTemplate } = await import('../../../app/main/menu')
     const sent: string[] = []
-    const items = (menuTemplate((id) => sent.push(id), platform) as readonly MenuItem[]).flatMap(
+    const items = (menuTemplate((id) => sent.push(id), platform) as unknown as readonly MenuItem[]).flatMap(
       ({ submenu }) => submenu ?? [],
     )
     const commands = items.filter(({ id }) => id !== undefined)
