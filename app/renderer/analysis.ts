@@ -39,33 +39,15 @@ export function newAnalysisWorker(): WorkerLike {
 /** An analyzer with a worker of its own, so that one analysis (of another model, say) can run beside another. */
 export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker): Analyzer {
   let worker: WorkerLike | null = null
-  let sent = new Map<Uint8Array, number>()
-  let running: { end(result: RunResult | null): void } | null = null
-  let count = 0
+  let sent = sentFiles()
+  let running: Ending | null = null
 
   function close(): void {
     worker?.terminate()
     worker = null
-    sent = new Map()
+    sent = sentFiles()
     running?.end(null)
     running = null
-  }
-
-  function job(readings: readonly OpenedFile[], procedure: OpenedFile, excluded: readonly Exclusion[]): Job {
-    const used = new Set([...readings, procedure].map(({ bytes }) => bytes))
-    const dropped = [...sent].filter(([bytes]) => !used.has(bytes))
-    for (const [bytes] of dropped) sent.delete(bytes)
-    const fresh = [...used].filter((bytes) => !sent.has(bytes))
-    for (const bytes of fresh) sent.set(bytes, ++count)
-    const use = ({ name, bytes }: OpenedFile): FileUse => ({ id: sent.get(bytes) ?? 0, name })
-    return {
-      added: fresh.map((bytes) => ({ id: sent.get(bytes) ?? 0, bytes })),
-      dropped: dropped.map(([, id]) => id),
-      readings: readings.map(use),
-      procedure: use(procedure),
-      // Plain copies: what a store holds may be wrapped, and a wrapped object can't be sent.
-      excluded: excluded.map(({ wafer, site, reason }) => ({ wafer, site, reason })),
-    }
   }
 
   function analyze(
@@ -77,13 +59,11 @@ export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker):
     if (running) close()
     const own = (worker ??= newWorker())
     const listeners: ((progress: Progress) => void)[] = []
-    let end: (result: RunResult | null) => void = () => undefined
-    const result = new Promise<RunResult | null>((resolve) => (end = resolve))
-    const mine = { end }
+    const mine = ending()
     running = mine
     const finish = (found: RunResult): void => {
       if (running === mine) running = null
-      end(found)
+      mine.end(found)
     }
     own.onmessage = ({ data }: MessageEvent<Report>) => {
       if (data.kind === 'progress') for (const listener of listeners) listener(data.progress)
@@ -94,9 +74,9 @@ export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker):
       // It may be out of memory or never have started: the next run gets a fresh one.
       if (worker === own) close()
     }
-    own.postMessage(job(readings, procedure, excluded))
+    own.postMessage(sent.job(readings, procedure, excluded))
     return {
-      result,
+      result: mine.result,
       progress: (listener) => void listeners.push(listener),
       cancel: () => {
         if (running === mine) close()
@@ -105,6 +85,43 @@ export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker):
   }
 
   return { analyze, close, warm: () => void (worker ??= newWorker()) }
+}
+
+interface Ending {
+  readonly result: Promise<RunResult | null>
+  end(result: RunResult | null): void
+}
+
+function ending(): Ending {
+  let end: Ending['end'] = () => undefined
+  const result = new Promise<RunResult | null>((resolve) => (end = resolve))
+  return { result, end }
+}
+
+/** Knows which files a worker has, and says what it still needs for the next job. */
+function sentFiles() {
+  const ids = new Map<Uint8Array, number>()
+  let count = 0
+
+  function job(readings: readonly OpenedFile[], procedure: OpenedFile, excluded: readonly Exclusion[]): Job {
+    const used = new Set([...readings, procedure].map(({ bytes }) => bytes))
+    const dropped = [...ids].filter(([bytes]) => !used.has(bytes))
+    for (const [bytes] of dropped) ids.delete(bytes)
+    const fresh = [...used].filter((bytes) => !ids.has(bytes))
+    for (const bytes of fresh) ids.set(bytes, ++count)
+    const idOf = (bytes: Uint8Array): number => ids.get(bytes) ?? 0
+    const use = ({ name, bytes }: OpenedFile): FileUse => ({ id: idOf(bytes), name })
+    return {
+      added: fresh.map((bytes) => ({ id: idOf(bytes), bytes })),
+      dropped: dropped.map(([, id]) => id),
+      readings: readings.map(use),
+      procedure: use(procedure),
+      // Plain copies: what a store holds may be wrapped, and a wrapped object can't be sent.
+      excluded: excluded.map(({ wafer, site, reason }) => ({ wafer, site, reason })),
+    }
+  }
+
+  return { job }
 }
 
 function failure(why: string): RunResult {

@@ -133,5 +133,3 @@ function saveFile(suggestedName: string, bytes: Uint8Array, kind: SaveKind): Pro
   setTimeout(() => URL.revokeObjectURL(address), 60_000)
   return Promise.resolve({ ok: true, value: 'saved' })
 }
-
-export { readFiles } from './dropped-files'
