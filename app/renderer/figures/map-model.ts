@@ -56,7 +56,7 @@ export function mapModel(pictures: LotPictures, wafer: WaferAnalysis, layer: Map
   const surface = surfaceMaker(outline, layer.scale)(surfaceSites(places), 'large')
   return {
     ...frameOf(pictures, places),
-    ...painted(surface, layer.scale),
+    ...painted(surface, layer.scale, places.value.length),
     dies: waferDies(pictures, wafer),
     places,
     grid: siteGrid(places.x_mm, places.y_mm),
@@ -71,7 +71,7 @@ export function surfaceModel(pictures: LotPictures, x_mm: Float64Array, y_mm: Fl
   const surface = surfaceMaker(pictures.analysis.outline, scale)(surfaceSites(places), 'large')
   return {
     ...frameOf(pictures, places),
-    ...painted(surface, scale),
+    ...painted(surface, scale, value.length),
     dies: null,
     places,
     grid: siteGrid(x_mm, y_mm),
@@ -103,21 +103,40 @@ export function surfaceMaker(outline: Outline, scale: BandScale): SurfaceOf {
   return make
 }
 
-export function painted(surface: WaferSurface | null, scale: BandScale): Pick<MapModel, 'bands' | 'method'> {
+export function painted(
+  surface: WaferSurface | null,
+  scale: BandScale,
+  count: number,
+): Pick<MapModel, 'bands' | 'method'> {
   if (!surface) return { bands: null, method: null }
   const bands = surface.contours
     .filter(({ rings_mm }) => rings_mm.length > 0)
     .map(({ rings_mm, threshold }) => ({ path: ringPath(rings_mm), colour: scale.colours[bandOf(scale, threshold)] }))
-  return { bands, method: surface.method }
+  const every = strideOf(count)
+  return { bands, method: every === 1 ? surface.method : `${surface.method}, one of every ${every} sites` }
 }
 
 export function waferSurface(pictures: LotPictures, wafer: WaferAnalysis, layer: MapLayer, detail: MapDetail): WaferSurface | null {
   return surfaceMaker(pictures.analysis.outline, layer.scale)(surfaceSites(waferPlaces(pictures, wafer, layer)), detail)
 } // prettier-ignore
 
-/** Excluded sites don't shape the surface. */
+/** More sites than this tell a raster of a map nothing new, and joining them would halt the window. */
+const MOST_SURFACE_SITES = 5000
+
+/** Excluded sites don't shape the surface; of very many sites, every so-manieth does. */
 function surfaceSites({ x_mm, y_mm, value, isExcluded }: MapPlaces): MapSites {
-  return { x_mm, y_mm, value, verdict: [], excluded: isExcluded }
+  const every = strideOf(value.length)
+  if (every === 1) return { x_mm, y_mm, value, verdict: [], excluded: isExcluded }
+  const rows = Uint32Array.from({ length: Math.ceil(value.length / every) }, (_, i) => i * every)
+  const pick = (column: Float64Array): Float64Array => Float64Array.from(rows, (row) => column[row])
+  const excluded = Uint8Array.from(rows, (row) => isExcluded[row])
+  return { x_mm: pick(x_mm), y_mm: pick(y_mm), value: pick(value), verdict: [], excluded }
+}
+
+/** Odd, so that it doesn't fall in step with the rows of a lattice. */
+function strideOf(count: number): number {
+  const least = Math.ceil(count / MOST_SURFACE_SITES)
+  return least === 1 ? 1 : least + ((least + 1) % 2)
 }
 
 export function waferPlaces(pictures: LotPictures, wafer: WaferAnalysis, { column, isJudged }: MapLayer): MapPlaces {

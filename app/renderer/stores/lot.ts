@@ -64,6 +64,7 @@ export const useLotStore = defineStore('lot', () => {
     const found = await running.result
     // What was chosen meanwhile has the word.
     if (turn !== latest) return
+    performance.mark('persquare:analysed')
     busy.value = false
     if (found) outcome.value = found
     else wasCancelled.value = true
