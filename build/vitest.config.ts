@@ -1,7 +1,9 @@
+import vue from '@vitejs/plugin-vue'
 import { defineConfig } from 'vitest/config'
 
 export default defineConfig({
   root: new URL('..', import.meta.url).pathname,
+  plugins: [vue()],
   test: {
     include: ['test/**/*.test.ts'],
     testTimeout: 60_000,

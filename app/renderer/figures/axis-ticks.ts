@@ -18,7 +18,7 @@ export function axisTicks(plane: ScreenPlane): { readonly x: readonly AxisTick[]
   return {
     x: across.values
       .map((value) => ({ at: plane.x(value), label: formatFixed(value, across.decimals) }))
-      .filter(({ at }) => at > AXIS_SPACE.left + 10 && at < plane.width - 12),
+      .filter(({ at }) => at > AXIS_SPACE.left + 10 && at < plane.width - 74),
     y: up.values
       .map((value) => ({ at: plane.y(value), label: formatFixed(value, up.decimals) }))
       .filter(({ at }) => at > 12 && at < plane.height - AXIS_SPACE.bottom - 8),
