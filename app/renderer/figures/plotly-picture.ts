@@ -12,7 +12,6 @@ export function plotlyPicture(figure: CurveFigure, inks: Inks & { readonly accen
     title: { text: title, standoff: 8 },
     type: isLogarithmic ? 'log' : 'linear',
     exponentformat: 'power',
-    dtick: isLogarithmic ? 1 : undefined,
     gridcolor: inks.blank,
     linecolor: inks.rule,
     zeroline: false,
