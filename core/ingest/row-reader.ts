@@ -34,6 +34,8 @@ export class RowReader {
   failure: FileProblem | null = null
 
   private layout: Layout | null = null
+  /** As the row of names stands in the file, without what a row of units under it added. */
+  private names: readonly string[] = []
   private check: ReadingCheck | null = null
   private targets: Float64Array[] = []
   private decimal = 46
@@ -76,6 +78,7 @@ export class RowReader {
       return false
     }
     this.layout = layout
+    this.names = layout.headers
     this.hasLong ||= layout.isLong
     this.isJustAfterHeader = true
     this.lastWafer = -1
@@ -249,8 +252,11 @@ export class RowReader {
     if (filled === 0) return
     if (this.isJustAfterHeader && isUnitsRow(cells)) {
       const { headers } = this.layout!
+      const { names } = this
       this.readHeader(headers.map((header, at) => withUnit(header, cells[at] ?? '')))
-    } else if (isPreambleRow(cells, this.delimiter)) this.readPreamble(cells)
+      this.names = names
+    } else if (this.isSameHeader(cells)) this.readHeader(cells)
+    else if (isPreambleRow(cells, this.delimiter)) this.readPreamble(cells)
     else if (this.isHeader(cells)) this.readHeader(cells)
     else this.rejectReading(cells, line, filled)
   }
@@ -267,11 +273,14 @@ export class RowReader {
     }
   }
 
+  /** Asked first: "Temp,Rs" over the next wafer's rows reads as a preamble, too. */
+  private isSameHeader(cells: readonly string[]): boolean {
+    const { names } = this
+    return widthOf(cells) === names.length && names.every((name, at) => name === cells[at].trim())
+  }
+
   private isHeader(cells: readonly string[]): boolean {
-    if (!isWordRow(cells)) return false
-    const { headers } = this.layout!
-    const isSame = widthOf(cells) === headers.length && trimmed(cells).every((cell, at) => cell === (headers[at] ?? ''))
-    return isSame || headerStrength(trimmed(cells), this.options) > 1
+    return isWordRow(cells) && headerStrength(trimmed(cells), this.options) > 1
   }
 
   private rejectReading(cells: readonly string[], line: number, filled: number): void {
