@@ -57,7 +57,7 @@ export function unknownKey(path: KeyPath, written: unknown, file: string): Shape
 /** A key that is right but stands in the wrong object; its uncertainty's namesake is never the first thing meant. */
 function elsewhere(name: string): string | null {
   const same = keyPaths().filter((key) => key.split('.').pop() === name && !key.startsWith('uncertainty.'))
-  return same.length === 1 ? same[0]! : null
+  return same.length === 1 ? same[0] : null
 }
 
 function missingKey(path: KeyPath, file: string): ShapeProblem {
@@ -77,6 +77,8 @@ const FOUND_LENGTH = 60
 
 /** The value as the file writes it, cut to what fits into a sentence. */
 export function foundText(value: unknown): string {
+  // JSON has no such number; `1e999` in the file is one all the same.
+  if (typeof value === 'number' && !Number.isFinite(value)) return 'a number larger than any'
   const text = JSON.stringify(value) ?? 'nothing'
   return text.length > FOUND_LENGTH ? `${text.slice(0, FOUND_LENGTH - 1)}…` : text
 }
