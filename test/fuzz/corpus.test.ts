@@ -117,6 +117,22 @@ const KEPT: readonly Kept[] = [
       expect(result).toMatchObject({ analysis: null, problems: [{ kind: 'bad-value', key: 'reported.factor' }] }),
   },
   {
+    note: 'the names over the second wafer, "Temp,Rs", were read as a preamble and their units as a reading',
+    files: ['names-like-a-preamble.csv'],
+    check: (result, analysis) => {
+      expect(result.problems).toEqual([])
+      expect(values(analysis)).toEqual([92.1, 92.4])
+      expect([...analysis.readings.temperature_C!]).toEqual([23.1, 23.2])
+      expect(analysis.notes.join()).not.toContain("can't be read")
+    },
+  },
+  {
+    note: 'a diameter of 1e999 was told as "null"',
+    files: ['good.csv'],
+    procedure: 'larger-than-any.procedure.json',
+    check: ({ problems }) => expect(problems).toMatchObject([{ kind: 'bad-value', found: 'a number larger than any' }]),
+  },
+  {
     note: 'the lot, slot and rejected rows of a refused file weighed on the good one',
     files: ['refused-after-rows.csv', 'good.csv'],
     check: (result, { readings }) => {
