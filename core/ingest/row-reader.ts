@@ -217,7 +217,7 @@ export class RowReader {
     const { sites, wafers } = this.draft
     if (at.site < 0) return sites.ofNumber(wafers.nextSite(wafer))
     const cell = cells[at.site]
-    return isBlank(cell) ? sites.ofText(`line ${line}`) : sites.ofCell(cell)
+    return cell.trim() === '' ? sites.ofText(`line ${line}`) : sites.ofCell(cell)
   }
 
   private readLot(cell: string): void {
