@@ -74,8 +74,9 @@ const layer = z.discriminatedUnion('kind', [
   }),
   z.strictObject({
     kind: z.literal('film'),
-    resistivityOhmCm: positive(1e12).optional(),
-    thicknessUm: positive(1e4).optional(),
+    resistivityOhmCm: z.number().min(1e-12).max(1e12).optional(),
+    /** No film is thinner than a tenth of an atom. */
+    thicknessUm: z.number().min(1e-5).max(1e4).optional(),
   }),
 ])
 

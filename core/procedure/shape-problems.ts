@@ -73,12 +73,17 @@ function badValue(path: KeyPath, written: unknown, file: string): ShapeProblem {
   }
 }
 
+/** JSON has no such number, but `1e999` in a file is one all the same. */
+const BEYOND_ALL = 'a number larger than any'
+
+function isBeyondAll(value: unknown): boolean {
+  return typeof value === 'number' && !Number.isFinite(value)
+}
+
 const FOUND_LENGTH = 60
 
 /** The value as the file writes it, cut to what fits into a sentence. */
 export function foundText(value: unknown): string {
-  // JSON has no such number; `1e999` in the file is one all the same.
-  if (typeof value === 'number' && !Number.isFinite(value)) return 'a number larger than any'
-  const text = JSON.stringify(value) ?? 'nothing'
+  const text = JSON.stringify(value, (_, part: unknown) => (isBeyondAll(part) ? BEYOND_ALL : part)) ?? 'nothing'
   return text.length > FOUND_LENGTH ? `${text.slice(0, FOUND_LENGTH - 1)}…` : text
 }
