@@ -127,10 +127,22 @@ const KEPT: readonly Kept[] = [
     },
   },
   {
+    note: 'a site named by a blank that is none in ASCII had no name at all',
+    files: ['blank-beyond-ascii.csv'],
+    check: (_, { readings }) => expect(readings.siteNames).toEqual(['1', 'line 3']),
+  },
+  {
+    note: 'a film 5e-324 µm thick had a resistivity of nothing',
+    files: ['good.csv'],
+    procedure: 'film-of-nothing.procedure.json',
+    check: ({ problems }) => expect(problems[0]).toMatchObject({ kind: 'bad-value', key: 'layer.thicknessUm' }),
+  },
+  {
     note: 'a diameter of 1e999 was told as "null"',
     files: ['good.csv'],
     procedure: 'larger-than-any.procedure.json',
-    check: ({ problems }) => expect(problems).toMatchObject([{ kind: 'bad-value', found: 'a number larger than any' }]),
+    check: ({ problems }) =>
+      expect(problems).toMatchObject([{ kind: 'bad-value', found: '"a number larger than any"' }]),
   },
   {
     note: 'the lot, slot and rejected rows of a refused file weighed on the good one',
