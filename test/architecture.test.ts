@@ -31,7 +31,10 @@ const ROOMS: Readonly<Record<string, { readonly rooms: readonly string[]; readon
   'app/main': { rooms: ['core', 'app/contract', 'app/host'], npm: ['node', 'electron'] },
   'app/preload': { rooms: ['core', 'app/contract'], npm: ['electron'] },
   'app/browser': { rooms: ['core', 'app/contract', 'app/host'], npm: ['node'] },
-  'app/renderer': { rooms: ['core', 'app/contract'], npm: ['vue', 'pinia', 'plotly.js-dist-min', 'plotly.js-cartesian-dist-min'] },
+  'app/renderer': {
+    rooms: ['core', 'app/contract'],
+    npm: ['vue', 'pinia', 'plotly.js-dist-min', 'plotly.js-cartesian-dist-min'],
+  },
 }
 
 /** An import that only one file of a room may make. */
