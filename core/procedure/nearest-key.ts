@@ -21,12 +21,12 @@ export function editDistance(a: string, b: string): number {
     const row = [i]
     for (let j = 1; j <= b.length; j++) {
       const same = a[i - 1] === b[j - 1]
-      let least = Math.min(rows[i - 1]![j]! + 1, row[j - 1]! + 1, rows[i - 1]![j - 1]! + (same ? 0 : 1))
+      let least = Math.min(rows[i - 1][j] + 1, row[j - 1] + 1, rows[i - 1][j - 1] + (same ? 0 : 1))
       const swapped = i > 1 && j > 1 && a[i - 1] === b[j - 2] && a[i - 2] === b[j - 1]
-      if (swapped) least = Math.min(least, rows[i - 2]![j - 2]! + 1)
+      if (swapped) least = Math.min(least, rows[i - 2][j - 2] + 1)
       row.push(least)
     }
     rows.push(row)
   }
-  return rows[a.length]![b.length]!
+  return rows[a.length][b.length]
 }

@@ -41,7 +41,7 @@ export function scanJson(text: string): JsonScan {
 
 function placeAt(text: string, offset: number): { line: number; column: number } {
   const lines = text.slice(0, offset).split(/\r\n|\r|\n/)
-  return { line: lines.length, column: lines[lines.length - 1]!.length + 1 }
+  return { line: lines.length, column: lines[lines.length - 1].length + 1 }
 }
 
 class Scanner {
@@ -55,7 +55,7 @@ class Scanner {
     if (this.at === this.text.length) throw new Fault(this.at, 'the file is empty')
     this.value('', 0)
     if (this.at < this.text.length) {
-      throw new Fault(this.at, `${shown(this.text[this.at]!)} stands after the end of the object`)
+      throw new Fault(this.at, `${shown(this.text[this.at])} stands after the end of the object`)
     }
   }
 
