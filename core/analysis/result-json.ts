@@ -3,6 +3,9 @@ import { explain, placeOf } from '../problems/explain'
 import type { LotAnalysis, WaferAnalysis } from './lot-analysis'
 import { flagNames } from './flags'
 import { mobilityComparison } from './mobility-comparison'
+import { figuresObject, patternsObject, statisticsOtherwiseObject } from './result-details'
+import { waferDetails, type WaferDetails } from './wafer-details'
+import type { VarianceComponents, VarianceComponent } from '../statistics/components-of-variance'
 import type { Statistics } from '../statistics/summarize'
 
 export const RESULT_FORMAT = 'persquare-result/1'
@@ -11,10 +14,13 @@ export interface ResultContext {
   /** Name and version of what made it. */
   readonly program: string
   readonly version: string
+  /** Of a wafer, where they are at hand; absent: worked out here. */
+  readonly detailsOf?: (wafer: WaferAnalysis) => WaferDetails
 }
 
 /** Plain data; numbers that don't exist are null, since JSON has no NaN. Keys stand in a fixed order. */
-export function resultObject(analysis: LotAnalysis, { program, version }: ResultContext): object {
+export function resultObject(analysis: LotAnalysis, context: ResultContext): object {
+  const { program, version, detailsOf = (wafer) => waferDetails(analysis, wafer) } = context
   const { readings, procedure, defaults, excluded, problems, notes, quantity, lot, wafers } = analysis
   return {
     format: RESULT_FORMAT,
@@ -35,10 +41,10 @@ export function resultObject(analysis: LotAnalysis, { program, version }: Result
       reasons: lot.reasons,
       wafers: wafers.length,
       statistics: statisticsObject(lot.statistics),
-      varianceComponents: lot.varianceComponents,
+      varianceComponents: lot.varianceComponents && componentsObject(lot.varianceComponents),
     },
     layer: layerObject(analysis),
-    wafers: wafers.map((wafer) => waferObject(wafer, analysis)),
+    wafers: wafers.map((wafer) => waferObject(wafer, analysis, detailsOf(wafer))),
   }
 }
 
@@ -63,10 +69,10 @@ function layerObject(analysis: LotAnalysis): object {
   return { kind: procedure.layer.kind, profile: file, mobilityComparison: mobilityComparison(analysis) }
 }
 
-function waferObject(wafer: WaferAnalysis, { sites }: LotAnalysis): object {
+function waferObject(wafer: WaferAnalysis, analysis: LotAnalysis, details: WaferDetails): object {
   const { id, slot, verdict, reasons, statistics, uMean, means, sitesOut, sitesNotAssessed, rejectedRows, dieCounts } =
     wafer
-  const flagged = wafer.sites.reduce((bits, site) => bits | sites.flags[site], 0)
+  const flagged = wafer.sites.reduce((bits, site) => bits | analysis.sites.flags[site], 0)
   return {
     id,
     slot,
@@ -80,9 +86,22 @@ function waferObject(wafer: WaferAnalysis, { sites }: LotAnalysis): object {
     rejectedRows,
     dies: dieCounts,
     flags: flagNames(flagged).split('|').filter(Boolean),
+    statisticsOtherwise: statisticsOtherwiseObject(analysis, wafer),
+    figures: figuresObject(analysis, wafer, details.figures),
+    patterns: patternsObject(analysis, wafer, details),
   }
 }
 
 function statisticsObject({ nonuniformity, ...figures }: Statistics): object {
   return { ...figures, nonuniformity }
+}
+
+function componentsObject({ withinWafer, betweenWafers, source }: VarianceComponents): object {
+  const component = ({ variance, standardDeviation, degreesOfFreedom, interval }: VarianceComponent): object => ({
+    variance,
+    standardDeviation,
+    degreesOfFreedom,
+    interval,
+  })
+  return { withinWafer: component(withinWafer), betweenWafers: component(betweenWafers), source }
 }

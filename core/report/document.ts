@@ -79,10 +79,12 @@ export interface KeyValue {
   readonly note?: string
 }
 
-/** Two stacks side by side; they never break over a page, so they hold little. */
+/** Stacks side by side; they never break over a page, so they hold little. */
 export interface ColumnsBlock {
   readonly kind: 'columns'
   readonly columns: readonly (readonly Block[])[]
+  /** Of the width, one a stack; absent: all as wide. */
+  readonly shares?: readonly number[]
 }
 
 export interface TableBlock {
@@ -130,6 +132,16 @@ export interface SignatureBlock {
   readonly choices: readonly string[]
   readonly fields: readonly string[]
 }
+
+/** Width of each stack of a columns block that itself is so wide. */
+export function columnWidths_pt({ columns, shares }: ColumnsBlock, width_pt: number): number[] {
+  const given = columns.map((_, i) => shares?.[i] ?? 1)
+  const whole = given.reduce((sum, share) => sum + share, 0)
+  const room = width_pt - (columns.length - 1) * COLUMN_GAP_PT
+  return given.map((share) => (room * share) / whole)
+}
+
+export const COLUMN_GAP_PT = 18
 
 /** Width that text and figures have between the margins. */
 export function contentWidth_pt(paper: PaperSize): number {

@@ -1,11 +1,12 @@
 /** The lot report: one analysis as a document to print, sign and hand over. */
 import type { Working } from '../analysis/working'
 import type { ReportDocument } from './document'
-import { reportContext, type LotReportInput } from './report-context'
+import { detailsOnce, reportContext, type LotReportInput } from './report-context'
 import { findingsSection } from './sections/findings-section'
 import { inputSection } from './sections/input-section'
 import { layerSection } from './sections/layer-section'
 import { procedureSection } from './sections/procedure-section'
+import { statisticsUses } from './sections/statistics-sources'
 import { sourcesSection } from './sections/sources-section'
 import { summarySection } from './sections/summary-section'
 import { uncertaintySection } from './sections/uncertainty-section'
@@ -19,8 +20,9 @@ export type { LotReportInput } from './report-context'
 const UNDATED = '1970-01-01T00:00:00Z'
 
 export function lotReport(input: LotReportInput): ReportDocument {
-  const { analysis, working, date, program, paper } = input
-  const context = reportContext(input, sourceList(input.sources, sourceUses(input)))
+  const { analysis, working, date, program, paper, detailsOf = detailsOnce(analysis) } = input
+  const uses = [...sourceUses(input), ...statisticsUses({ wafers: analysis.wafers, detailsOf })]
+  const context = reportContext({ ...input, detailsOf }, sourceList(input.sources, uses))
   return {
     title: `Lot ${analysis.lot.name}: sheet measurement report`,
     subject: analysis.lot.sentence,

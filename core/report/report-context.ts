@@ -4,6 +4,7 @@ import type { FormulaSource } from '../analysis/formula-sources'
 import type { LotAnalysis, WaferAnalysis } from '../analysis/lot-analysis'
 import { limitsOn } from '../analysis/quantity'
 import { sitePositions, type SitePositions } from '../analysis/site-positions'
+import { waferDetails, type WaferDetails } from '../analysis/wafer-details'
 import type { Working } from '../analysis/working'
 import type { Decision } from './decision'
 import { bandScale, type BandScale } from './figures/band-scale'
@@ -26,6 +27,8 @@ export interface LotReportInput {
   readonly sources: readonly FormulaSource[]
   /** Of the responsible person; null or absent where none is made yet. */
   readonly decision?: Decision | null
+  /** Of a wafer, where they are at hand; absent: worked out once a wafer. */
+  readonly detailsOf?: (wafer: WaferAnalysis) => WaferDetails
 }
 
 export interface ReportContext {
@@ -40,6 +43,7 @@ export interface ReportContext {
   readonly meanLimits: SiteLimits
   /** Columns of one wafer's sites; x and y are NaN where the file has no positions. */
   readonly sitesOf: (wafer: WaferAnalysis) => MapSites
+  readonly detailsOf: (wafer: WaferAnalysis) => WaferDetails
   readonly hasPositions: boolean
   readonly positions: SitePositions | null
   /** One colour scale for every map; null where no site has a value. */
@@ -70,13 +74,27 @@ export function reportContext(input: LotReportInput, sources: SourceList): Repor
       y_mm: Float64Array.from(sites, (i) => y[i]),
       value: Float64Array.from(sites, (i) => value[i]),
       verdict: Uint8Array.from(sites, (i) => verdict[i]),
-      excluded: Uint8Array.from(sites, (i) => (flags[i] & SITE_FLAGS.excludedByPerson.bit ? 1 : 0)),
+      excluded: Uint8Array.from(sites, (i) => (flags[i] & LEFT_OUT ? 1 : 0)),
     }),
+    detailsOf: input.detailsOf ?? detailsOnce(analysis),
     hasPositions: positions !== null,
     positions,
     scale,
     surfaceOf: surfacesFor(analysis.outline, scale),
     sources,
+  }
+}
+
+/** Sites with a value that neither count nor shape a surface. */
+const LEFT_OUT = SITE_FLAGS.excludedByPerson.bit | SITE_FLAGS.outlierLeftOut.bit
+
+/** Several sections ask for the same wafer's. */
+export function detailsOnce(analysis: LotAnalysis): (wafer: WaferAnalysis) => WaferDetails {
+  const known = new Map<WaferAnalysis, WaferDetails>()
+  return (wafer) => {
+    const details = known.get(wafer) ?? waferDetails(analysis, wafer)
+    known.set(wafer, details)
+    return details
   }
 }
 

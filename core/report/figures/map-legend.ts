@@ -1,4 +1,4 @@
-/** One line under a map that explains the marks that occur in it, and no others. */
+/** A line or two under a map that explain the marks that occur in it, and no others. */
 import type { Shape } from '../drawing'
 import { group, labelWidth_pt, line, polygon, rectangle, text } from '../drawing'
 import { formatFixed, formatMm } from '../../units/format'
@@ -14,16 +14,20 @@ interface LegendEntry {
 
 const GAP_PT = 10
 const SAMPLE_PT = 8
+const LINE_PT = 9.5
 
 export function mapLegend(marks: readonly MarkKind[], input: WaferMapInput, x_pt: number, y_pt: number): Shape {
   const shapes: Shape[] = []
   let x = 0
+  let y = 0
   for (const { sample, label } of legendEntries(marks, input)) {
+    const width = SAMPLE_PT + 2 + labelWidth_pt(label, LABEL_PT)
+    if (x > 0 && x_pt + x + width > input.width_pt) [x, y] = [0, y + LINE_PT]
     shapes.push(
-      group(x + SAMPLE_PT / 2, -2.3, [sample]),
-      text(x + SAMPLE_PT + 2, 0, label, { size_pt: LABEL_PT, fill: QUIET_INK }),
+      group(x + SAMPLE_PT / 2, y - 2.3, [sample]),
+      text(x + SAMPLE_PT + 2, y, label, { size_pt: LABEL_PT, fill: QUIET_INK }),
     )
-    x += SAMPLE_PT + 2 + labelWidth_pt(label, LABEL_PT) + GAP_PT
+    x += width + GAP_PT
   }
   return group(x_pt, y_pt, shapes)
 }

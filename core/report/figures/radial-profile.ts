@@ -1,4 +1,5 @@
-/** The judged value against the distance from the wafer's centre, with the limits. */
+/** The judged value against the distance from the wafer's centre, with the means of its rings and the limits. */
+import { ringMeans, type RingMeans } from '../../map/rings'
 import type { Drawing, Shape } from '../drawing'
 import { line, polyline } from '../drawing'
 import { formatMm } from '../../units/format'
@@ -20,7 +21,6 @@ export interface RadialProfileInput {
 }
 
 const MOST_POINTS = 1500
-const RINGS = 24
 
 export function radialProfile(input: RadialProfileInput): Drawing {
   const { sites, limits } = input
@@ -43,13 +43,13 @@ export function radialProfile(input: RadialProfileInput): Drawing {
     width_pt: input.width_pt,
     height_pt: input.height_pt,
     title: input.title,
-    description: `${input.quantity.title} of ${values.length} sites against their distance from the centre, 0 to ${formatMm(edge)}.`,
+    description: `${input.quantity.title} of ${values.length} sites against their distance from the centre, 0 to ${formatMm(edge)}, and the mean of each ring with its standard error.`,
     shapes: [
       ...frameShapes(frame, { x: 'distance from the centre / mm', y: axisTitle(input.quantity) }),
       ...exclusionLine(frame, edge - input.edgeExclusion_mm, input.edgeExclusion_mm),
       ...limitLines(frame, limits),
-      ...ringMeans(frame, radius, sites.value, farthest),
       ...points(frame, radius, input),
+      ...meansWithErrors(frame, ringsIn(sites)),
     ],
   }
 }
@@ -64,25 +64,36 @@ function exclusionLine(frame: ChartFrame, at_mm: number, exclusion_mm: number): 
   return [line(x, frame.top, x, frame.bottom, { stroke: INK, lineWidth_pt: 0.35, dash_pt: [1.2, 1.8] })]
 }
 
-/** The mean of the sites in each ring of equal width that holds any. */
-function ringMeans(frame: ChartFrame, radius: Float64Array, values: ArrayLike<number>, farthest: number): Shape[] {
-  const count = new Uint32Array(RINGS)
-  const sum = new Float64Array(RINGS)
-  const sumRadius = new Float64Array(RINGS)
-  for (let i = 0; i < radius.length; i++) {
-    if (!Number.isFinite(values[i]) || !Number.isFinite(radius[i])) continue
-    const ring = Math.min(RINGS - 1, Math.floor((radius[i] / (farthest || 1)) * RINGS))
-    count[ring]++
-    sum[ring] += values[i]
-    sumRadius[ring] += radius[i]
+/** Means of the rings on a line, each with its standard error up and down; of many rings the line alone. */
+function meansWithErrors(frame: ChartFrame, { r_mm, mean, standardError }: RingMeans): Shape[] {
+  const shapes: Shape[] = []
+  if (r_mm.length > 1) {
+    const path = Array.from(r_mm).flatMap((r, ring) => [frame.x(r), frame.y(mean[ring])])
+    shapes.push(polyline(path, { stroke: RULE, lineWidth_pt: 1.2 }))
   }
-  const path: number[] = []
-  for (let ring = 0; ring < RINGS; ring++) {
-    const n = count[ring]
-    if (n > 0) path.push(frame.x(sumRadius[ring] / n), frame.y(sum[ring] / n))
-  }
-  return path.length > 2 ? [polyline(path, { stroke: RULE, lineWidth_pt: 1.2 })] : []
+  if (r_mm.length > MOST_BARS) return shapes
+  const clipped = (value: number) => frame.y(Math.max(frame.yRange.min, Math.min(frame.yRange.max, value)))
+  r_mm.forEach((r, ring) => {
+    if (!(standardError[ring] > 0)) return
+    const x = frame.x(r)
+    const [top, bottom] = [clipped(mean[ring] + standardError[ring]), clipped(mean[ring] - standardError[ring])]
+    for (const y of [top, bottom]) shapes.push(line(x - CAP_PT, y, x + CAP_PT, y, BAR))
+    shapes.push(line(x, top, x, bottom, BAR))
+  })
+  return shapes
 }
+
+const MOST_BARS = 60
+const CAP_PT = 2.2
+const BAR = { stroke: INK, lineWidth_pt: 0.7 } as const
+
+function ringsIn({ x_mm, y_mm, value, excluded }: MapSites): RingMeans {
+  const shown = Float64Array.from(value, (each, i) => (excluded?.[i] === 1 || !Number.isFinite(each) ? NaN : each))
+  return ringMeans({ x_mm: Float64Array.from(x_mm), y_mm: Float64Array.from(y_mm), value: shown }, RING_WIDTH_MM)
+}
+
+/** Sites whose distances from the centre differ by less belong to one ring. */
+const RING_WIDTH_MM = 1
 
 function points(frame: ChartFrame, radius: Float64Array, input: RadialProfileInput): Shape[] {
   const { sites, limits } = input

@@ -18,7 +18,7 @@ export interface MapSites {
   readonly value: ArrayLike<number>
   /** Codes in the order of VERDICTS. */
   readonly verdict: ArrayLike<number>
-  /** 1 where a person took the site out: it is shown, but shapes no surface. */
+  /** 1 where the site was taken or left out: it is shown, but shapes no surface. */
   readonly excluded?: ArrayLike<number>
 }
 
@@ -62,7 +62,7 @@ const MOST_DOTS = 1500
 const MOST_MARKS = 1500
 const AXIS_SPACE_PT = 26
 const BAR_SPACE_PT = 62
-const LEGEND_SPACE_PT = 20
+const LEGEND_SPACE_PT = 22
 
 /** Millimetres from the wafer's centre to points on the drawing. */
 export interface Plane {
@@ -107,7 +107,7 @@ export function waferMap(input: WaferMapInput): Drawing {
         limits: input.limits,
         quantity: input.quantity,
       }),
-      mapLegend(drawnKinds(marks), input, field.left, Math.min(height_pt - 4, bottom + 32)),
+      mapLegend(drawnKinds(marks), input, field.left, Math.min(height_pt - 13, bottom + 28)),
     ],
   }
 }

@@ -1,11 +1,14 @@
 /** What the reader must know before signing: what is out of spec, what was wrong with the readings, what was assumed. */
 import { explain } from '../../problems/explain'
 import type { Problem } from '../../problems/problem'
-import { formatFixed, formatMm, formatWithUncertainty } from '../../units/format'
+import { formatFixed, formatMm, formatSignificant, formatWithUncertainty } from '../../units/format'
 import type { Block, TableRow } from '../document'
 import { waferMeans } from '../figures/wafer-means'
 import { markOf } from '../figures/marks'
 import { VERDICTS } from '../../analysis/lot-analysis'
+import type { VarianceComponent } from '../../statistics/components-of-variance'
+import { lotMapsSection } from './lot-maps'
+import { lotPatternsSection } from './lot-patterns'
 import { reasonsOf, VERDICT_WORDS, waferMarkOf, waferTitle, type ReportContext } from '../report-context'
 
 export function findingsSection(context: ReportContext): Block[] {
@@ -13,6 +16,8 @@ export function findingsSection(context: ReportContext): Block[] {
     { kind: 'heading', level: 1, text: 'Findings', aside: context.analysis.lot.name },
     ...outOfSpec(context),
     ...meansFigure(context),
+    ...lotMapsSection(context),
+    ...lotPatternsSection(context),
     ...mustKnow(context),
     { kind: 'heading', level: 2, text: 'Cautions' },
     { kind: 'list', numbered: false, entries: CAUTIONS },
@@ -147,11 +152,24 @@ function lotStatistics({ analysis }: ReportContext): { key: string; value: strin
     { key: 'Their standard deviation', value: formatWithUncertainty(s.standardDeviation, NaN, unit) },
     ...(v
       ? [
-          { key: 'Within a wafer, s', value: formatWithUncertainty(v.withinWafer.standardDeviation, NaN, unit) },
-          { key: 'Between wafers, s', value: betweenWords(v.betweenWafers, unit) },
+          {
+            key: 'Within a wafer, s',
+            value: formatWithUncertainty(v.withinWafer.standardDeviation, NaN, unit),
+            note: intervalWords(v.withinWafer),
+          },
+          {
+            key: 'Between wafers, s',
+            value: betweenWords(v.betweenWafers, unit),
+            note: intervalWords(v.betweenWafers),
+          },
         ]
       : []),
   ]
+}
+
+/** "95 %: 0.54 to 1.01". */
+function intervalWords({ interval: { level, lower, upper } }: VarianceComponent): string {
+  return `${Number((100 * level).toPrecision(6))} %: ${formatSignificant(lower, 3)} to ${formatSignificant(upper, 3)}`
 }
 
 /** A negative variance component is left negative: the wafers differ less than their sites let expect. */

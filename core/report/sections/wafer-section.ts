@@ -1,42 +1,36 @@
 /** One page for one wafer: its map, how its values run and spread, its statistics, and what they imply for the layer. */
-import { VERDICTS, type WaferAnalysis } from '../../analysis/lot-analysis'
-import { formatNumber, formatPercent, formatQuantity, formatWithUncertainty } from '../../units/format'
-import type { Block, KeyValue } from '../document'
-import { histogram } from '../figures/histogram'
-import { radialProfile } from '../figures/radial-profile'
-import { waferMap, type MapDies } from '../figures/wafer-map'
+import type { WaferAnalysis } from '../../analysis/lot-analysis'
+import { COLUMN_GAP_PT, columnWidths_pt, type Block, type ColumnsBlock, type KeyValue } from '../document'
+import { labelWidth_pt } from '../drawing'
 import { reasonsOf, VERDICT_WORDS, waferMarkOf, waferTitle, type ReportContext } from '../report-context'
-import { layerColumns } from './layer-words'
+import { histogramFigure, radialFigure, waferMapFigure } from './wafer-figures'
+import {
+  countEntries, layerEntries, nonuniformityEntries, outlierEntries, shapeEntries, statisticsEntries,
+} from './wafer-statistics' // prettier-ignore
 
 const CHART_GAP_PT = 14
-const CHART_HEIGHT_PT = 126
-const MOST_MAP_PT = 340
-const LEAST_MAP_PT = 200
-/** Title, verdict, map caption and charts. */
-const BESIDES_MAP_PT = 84 + CHART_HEIGHT_PT
+const MOST_CHART_PT = 108
+const LEAST_CHART_PT = 78
+const LEAST_MAP_PT = 170
+/** A round map and its colour bar need so much more width than height. */
+const MAP_WIDER_PT = 34
+const MAP_SHARES = [0.67, 0.33]
+/** Title, verdict's word, caption, the space after figures, and a little to spare. */
+const BESIDES_PT = 94
 const LINE_PT = 12.4
+const SMALL_LINE_PT = 9.9
+const TEXT_PT = 8.6
+const SMALL_PT = 7.2
+/** Of the width that labels of figures are given, to be safe, words take about this share. */
+const WORDS_SHARE = 0.93
 /** A small heading with the space about it. */
-const HEADING_PT = 26
-const CHARACTERS_A_LINE = 100
-
-/** What the page leaves for the map, so that everything of a wafer stands on one page. */
-function mapHeight_pt(sentence: string, stacks: readonly number[], context: ReportContext): number {
-  const lines = Math.ceil(sentence.length / CHARACTERS_A_LINE)
-  const room = context.height_pt - BESIDES_MAP_PT - LINE_PT * (lines + 1) - Math.max(...stacks)
-  return Math.max(LEAST_MAP_PT, Math.min(MOST_MAP_PT, room))
-}
+const HEADING_PT = 22
 
 export function waferSection(wafer: WaferAnalysis, context: ReportContext): Block[] {
   const title = waferTitle(wafer.id)
   const slot = Number.isNaN(wafer.slot) ? '' : `, slot ${wafer.slot}`
   const sentence = sentenceOf(reasonsOf(wafer))
-  const statistics = statisticsEntries(wafer, context)
-  const counts = countEntries(wafer)
-  const layer = layerEntries(wafer, context)
-  const stacks = [
-    HEADING_PT + statistics.length * LINE_PT,
-    HEADING_PT + counts.length * LINE_PT + (layer.length > 0 ? HEADING_PT + layer.length * LINE_PT : 0),
-  ]
+  const below = [statisticsColumns(wafer, context), ...patternBlocks(wafer, context)]
   return [
     { kind: 'page-break' },
     {
@@ -46,32 +40,9 @@ export function waferSection(wafer: WaferAnalysis, context: ReportContext): Bloc
       aside: `${context.analysis.lot.name}${slot}`,
       bookmark: `${title}: ${VERDICT_WORDS[wafer.verdict].toLowerCase()}`,
     },
-    {
-      kind: 'verdict',
-      word: VERDICT_WORDS[wafer.verdict],
-      mark: waferMarkOf(wafer, context),
-      sentence: sentence,
-    },
-    ...figures(wafer, mapHeight_pt(sentence, stacks, context), context),
-    {
-      kind: 'columns',
-      columns: [
-        [
-          { kind: 'heading', level: 3, text: 'Statistics' },
-          { kind: 'key-values', columns: 1, entries: statistics },
-        ],
-        [
-          { kind: 'heading', level: 3, text: 'Counts' },
-          { kind: 'key-values', columns: 1, entries: counts },
-          ...(layer.length > 0
-            ? ([
-                { kind: 'heading', level: 3, text: 'Layer, means over the sites' },
-                { kind: 'key-values', columns: 1, entries: layer },
-              ] as const)
-            : []),
-        ],
-      ],
-    },
+    { kind: 'verdict', word: VERDICT_WORDS[wafer.verdict], mark: waferMarkOf(wafer, context), sentence },
+    ...figures(wafer, heightsOf(wafer, sentence, below, context), context),
+    ...below,
   ]
 }
 
@@ -82,108 +53,133 @@ function sentenceOf(reasons: readonly string[]): string {
   return `${text.charAt(0).toUpperCase()}${text.slice(1)}${/[.!?]$/.test(text) ? '' : '.'}`
 }
 
-function figures(wafer: WaferAnalysis, mapHeight: number, context: ReportContext): Block[] {
-  const { analysis, width_pt, siteLimits, scale } = context
-  const sites = context.sitesOf(wafer)
-  const { quantity, outline, procedure } = analysis
-  const chart = { quantity, limits: siteLimits, width_pt: (width_pt - CHART_GAP_PT) / 2, height_pt: CHART_HEIGHT_PT }
-  const title = waferTitle(wafer.id)
-  const spread = histogram({ ...chart, title: `${title}: histogram`, values: sites.value })
-  if (!context.hasPositions || !scale) {
-    const text = scale ? 'No map: the readings carry no positions.' : 'No map: no site of the lot has a value.'
-    return [
+function figures(wafer: WaferAnalysis, heights: FigureHeights, context: ReportContext): Block[] {
+  const chart = { width_pt: (context.width_pt - CHART_GAP_PT) / 2, height_pt: heights.chart_pt }
+  const spread = histogramFigure(wafer, chart, context)
+  const counts = countStack(wafer)
+  const columns: ColumnsBlock = { kind: 'columns', shares: MAP_SHARES, columns: [[], counts] }
+  const size = { width_pt: columnWidths_pt(columns, context.width_pt)[0], height_pt: heights.map_pt }
+  const drawn = waferMapFigure(wafer, size, context)
+  if (!drawn) {
+    const text = context.scale ? 'No map: the readings carry no positions.' : 'No map: no site of the lot has a value.'
+    const stack: Block[] = [
       { kind: 'paragraph', text, quiet: true },
       { kind: 'figures', figures: [spread] },
     ]
+    return [{ kind: 'columns', columns: [stack, counts] }]
   }
-  const surface = context.surfaceOf(sites, 'large')
-  const map = waferMap({
-    title: `${title}: map of ${quantity.title}`,
-    outline,
-    edgeExclusion_mm: procedure.wafer.edgeExclusionMm,
-    quantity,
-    sites,
-    limits: siteLimits,
-    scale,
-    contours: surface?.contours ?? null,
-    diesOut: diesOutOf(wafer, context),
-    width_pt,
-    height_pt: mapHeight,
-  })
-  const profile = radialProfile({
-    ...chart,
-    title: `${title}: radial profile`,
-    sites,
-    edgeRadius_mm: outline.shape === 'disc' ? outline.diameter_mm / 2 : NaN,
-    edgeExclusion_mm: outline.shape === 'disc' ? procedure.wafer.edgeExclusionMm : 0,
-  })
   return [
-    { kind: 'figures', figures: [map] },
-    ...(surface ? [mapCaption(surface.method)] : []),
-    { kind: 'figures', figures: [profile, spread] },
+    { ...columns, columns: [[{ kind: 'figures', figures: [drawn.map] }], counts] },
+    caption(drawn.method),
+    { kind: 'figures', figures: [radialFigure(wafer, chart, context), spread] },
   ]
 }
 
-function mapCaption(method: string): Block {
-  const text = `Colours between the sites: ${method}; extrapolated beyond the outermost. Printed values are those of the sites.`
-  return { kind: 'paragraph', text, quiet: true }
+function caption(method: string | null): Block {
+  const map = method
+    ? `Colours between the sites: ${method}; extrapolated beyond the outermost. Printed values are those of the sites. `
+    : ''
+  return { kind: 'paragraph', text: `${map}Radial profile: ring means ± standard error.`, quiet: true }
 }
 
-function diesOutOf(wafer: WaferAnalysis, { analysis }: ReportContext): MapDies | null {
-  const { dies, procedure } = analysis
-  if (!dies || !procedure.dieGrid) return null
-  const centreX_mm: number[] = []
-  const centreY_mm: number[] = []
-  for (let i = 0; i < dies.count; i++) {
-    if (dies.wafer[i] !== wafer.index || VERDICTS[dies.verdict[i]] !== 'out-of-spec') continue
-    centreX_mm.push(dies.x_mm[i])
-    centreY_mm.push(dies.y_mm[i])
+function countStack(wafer: WaferAnalysis): Block[] {
+  return [...titled('Counts', countEntries(wafer)), ...titled('Non-uniformity', nonuniformityEntries(wafer))]
+}
+
+function statisticsColumns(wafer: WaferAnalysis, context: ReportContext): ColumnsBlock {
+  return {
+    kind: 'columns',
+    columns: [
+      titled('Statistics', [...statisticsEntries(wafer, context), ...outlierEntries(wafer, context)]),
+      [
+        ...titled('Capability and shape', shapeEntries(wafer, context)),
+        ...titled('Layer, means over the sites', layerEntries(wafer, context)),
+      ],
+    ],
   }
-  return { centreX_mm, centreY_mm, pitchX_mm: procedure.dieGrid.pitchXMm, pitchY_mm: procedure.dieGrid.pitchYMm }
 }
 
-function statisticsEntries(wafer: WaferAnalysis, { analysis }: ReportContext): KeyValue[] {
-  const { statistics: s } = wafer
-  const { unit } = analysis.quantity
+function titled(text: string, entries: readonly KeyValue[]): Block[] {
+  if (entries.length === 0) return []
   return [
-    { key: 'Mean', value: formatWithUncertainty(s.mean, wafer.uMean, unit), note: 'standard uncertainty' },
-    { key: 'Median', value: formatQuantity(s.median, unit) },
-    { key: 'Standard deviation', value: formatQuantity(s.standardDeviation, unit), note: 'divisor n − 1' },
-    { key: 'Minimum, maximum', value: `${formatNumber(s.min, unit)} to ${formatQuantity(s.max, unit)}` },
-    ...s.nonuniformity.map(({ formula, percent }, i) => ({
-      key: i === 0 ? 'Non-uniformity' : '',
-      value: formatPercent(percent),
-      note: formula.replaceAll('-', '−'),
-    })),
+    { kind: 'heading', level: 3, text },
+    { kind: 'key-values', columns: 1, entries },
   ]
 }
 
-function countEntries(wafer: WaferAnalysis): KeyValue[] {
-  const { dieCounts: dies } = wafer
+/** What the map looks like, by share of the variance, and where to look first. */
+function patternBlocks(wafer: WaferAnalysis, context: ReportContext): Block[] {
+  const { words } = context.detailsOf(wafer)
+  if (words.length === 0) return []
+  const entries = words.map(({ sentence, mayPointTo }) => (mayPointTo ? `${sentence} ${mayPointTo}` : sentence))
+  const isPointing = words.some(({ mayPointTo }) => mayPointTo !== null)
+  const text = isPointing ? 'Pattern, and what it may point to (common practice, no source)' : 'Pattern'
   return [
-    { key: 'Sites', value: String(wafer.sites.length) },
-    { key: 'In the statistics', value: String(wafer.statistics.count) },
-    { key: 'Out of spec', value: String(wafer.sitesOut) },
-    { key: 'Not assessed', value: String(wafer.sitesNotAssessed) },
-    { key: 'Rejected rows', value: String(wafer.rejectedRows) },
-    ...(dies
-      ? [
-          {
-            key: 'Dies',
-            value: `${dies['in-spec']} in, ${dies['out-of-spec']} out`,
-            note: `${dies.undecided} undecided, ${dies['not-assessed']} not assessed`,
-          },
-        ]
-      : []),
+    { kind: 'heading', level: 3, text },
+    { kind: 'list', numbered: false, entries },
   ]
 }
 
-function layerEntries(wafer: WaferAnalysis, { analysis }: ReportContext): KeyValue[] {
-  const { layer } = analysis.procedure
-  const entries = layerColumns(analysis).map(({ title, unit, mean }) => ({
-    key: title,
-    value: formatQuantity(mean(wafer), unit),
-  }))
-  if (entries.length === 0 || !('mobility' in layer)) return entries
-  return [...entries, { key: 'Mobility model', value: layer.mobility }]
+interface FigureHeights {
+  readonly map_pt: number
+  readonly chart_pt: number
+}
+
+/** What the page leaves for the figures, so that everything of a wafer stands on one page: the charts yield before the map. */
+function heightsOf(
+  wafer: WaferAnalysis,
+  sentence: string,
+  below: readonly Block[],
+  context: ReportContext,
+): FigureHeights {
+  const { width_pt, height_pt } = context
+  const [map_pt, side_pt] = MAP_SHARES.map((share) => share * (width_pt - COLUMN_GAP_PT))
+  const besideMap_pt = stackHeight_pt(countStack(wafer), side_pt)
+  const verdict_pt = roughHeight_pt({ kind: 'paragraph', text: sentence }, width_pt)
+  const room = height_pt - BESIDES_PT - verdict_pt - stackHeight_pt(below, width_pt)
+  const chart_pt = Math.max(LEAST_CHART_PT, Math.min(MOST_CHART_PT, room - Math.max(LEAST_MAP_PT, besideMap_pt)))
+  return { chart_pt, map_pt: Math.max(LEAST_MAP_PT, Math.min(map_pt - MAP_WIDER_PT, room - chart_pt)) }
+}
+
+function stackHeight_pt(blocks: readonly Block[], width_pt: number): number {
+  return blocks.reduce((sum, block) => sum + roughHeight_pt(block, width_pt), 0)
+}
+
+/** Rather high than low; whoever sets the page measures. */
+function roughHeight_pt(block: Block, width_pt: number): number {
+  const linesOf = (text: string, size: number) => Math.max(1, Math.ceil(wordsWidth_pt(text, size) / width_pt))
+  switch (block.kind) {
+    case 'heading':
+      return HEADING_PT
+    case 'key-values':
+      return 4 + keyValuesHeight_pt(block.entries, width_pt)
+    case 'list':
+      return 4 + block.entries.reduce((sum, entry) => sum + 2 + LINE_PT * linesOf(entry, TEXT_PT), 0)
+    case 'paragraph':
+      return 4 + (block.quiet ? SMALL_LINE_PT * linesOf(block.text, SMALL_PT) : LINE_PT * linesOf(block.text, TEXT_PT))
+    case 'columns': {
+      const widths = columnWidths_pt(block, width_pt)
+      return Math.max(...block.columns.map((stack, i) => stackHeight_pt(stack, widths[i])))
+    }
+    default:
+      return 0
+  }
+}
+
+function keyValuesHeight_pt(entries: readonly KeyValue[], width_pt: number): number {
+  const keys = Math.max(0, ...entries.map(({ key }) => wordsWidth_pt(key, TEXT_PT)))
+  const room = width_pt - Math.min(0.5 * width_pt, keys + 10)
+  return entries.reduce((sum, entry) => sum + rowHeight_pt(entry, room), 0)
+}
+
+function rowHeight_pt({ value, note = '' }: KeyValue, room: number): number {
+  const valueWidth = wordsWidth_pt(value, TEXT_PT)
+  const lines = Math.max(1, Math.ceil(valueWidth / room))
+  const last = valueWidth - (lines - 1) * room
+  const isNoteBelow = note !== '' && last + 7 + wordsWidth_pt(note, SMALL_PT) > room
+  return LINE_PT * (lines + (isNoteBelow ? 1 : 0))
+}
+
+function wordsWidth_pt(words: string, size_pt: number): number {
+  return WORDS_SHARE * labelWidth_pt(words, size_pt)
 }

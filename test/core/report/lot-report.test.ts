@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import { SITE_FLAGS } from '../../../core/analysis/flags'
 import type { LotAnalysis } from '../../../core/analysis/lot-analysis'
 import type { Decision } from '../../../core/report/decision'
 import type { Block, KeyValuesBlock, TableBlock } from '../../../core/report/document'
@@ -122,7 +123,11 @@ describe('the lot report', () => {
       readings: { ...lot.readings, x_mm: null, y_mm: null },
       dies: null,
       procedure: { ...lot.procedure, limits: { allowedSitesOut: 0 } },
-      sites: { ...lot.sites, value: new Float64Array(lot.sites.count).fill(NaN) },
+      sites: {
+        ...lot.sites,
+        value: new Float64Array(lot.sites.count).fill(NaN),
+        flags: new Uint32Array(lot.sites.count).fill(SITE_FLAGS.noReading.bit),
+      },
     }
     const text = JSON.stringify(blocksOf(bare))
     expect(text).toContain('No map')
@@ -135,10 +140,10 @@ describe('the lot report', () => {
   })
 
   it('states the formula of every non-uniformity', () => {
-    const statistics = blocks
+    const notes = blocks
       .flatMap((block) => (block.kind === 'columns' ? block.columns.flat() : []))
-      .find((block): block is KeyValuesBlock => block.kind === 'key-values')!
-    const notes = statistics.entries.map((entry) => entry.note)
+      .filter((block): block is KeyValuesBlock => block.kind === 'key-values')
+      .flatMap(({ entries }) => entries.map((entry) => entry.note))
     for (const { formula } of lot.wafers[0]!.statistics.nonuniformity)
       expect(notes).toContain(formula.replaceAll('-', '−'))
   })

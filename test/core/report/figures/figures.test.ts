@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import type { Drawing, Shape, TextShape } from '../../../../core/report/drawing'
 import { labelWidth_pt } from '../../../../core/report/drawing'
-import type { FiguresBlock } from '../../../../core/report/document'
+import type { Block } from '../../../../core/report/document'
 import { lotReport } from '../../../../core/report/lot-report'
 import { toSvg } from '../../../../core/report/to-svg'
 import { expectGoldenSvg } from '../../../fixtures/report/golden-svg'
@@ -15,9 +15,7 @@ const report = lotReport({
   paper: 'A4',
   sources: [],
 })
-const figures = report.blocks
-  .filter((block): block is FiguresBlock => block.kind === 'figures')
-  .flatMap((block) => block.figures)
+const figures = figuresIn(report.blocks)
 const named = (start: string) => figures.find((figure) => figure.title.startsWith(start))!
 
 describe('figures as they were looked at', () => {
@@ -51,6 +49,14 @@ describe('every figure of the report', () => {
     }
   })
 })
+
+/** Also those that stand in columns. */
+function figuresIn(blocks: readonly Block[]): readonly Drawing[] {
+  return blocks.flatMap((block) => {
+    if (block.kind === 'columns') return block.columns.flatMap(figuresIn)
+    return block.kind === 'figures' ? block.figures : []
+  })
+}
 
 interface TextBox {
   readonly text: string
