@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { VERDICTS } from '../../../core/conformity/verdict'
 import { SITE_FLAGS } from '../../../core/analysis/flags'
+import { resultObject } from '../../../core/analysis/result-json'
 import { sampleLot } from './lots'
 
 describe('TB-0417, boron implant monitor (invented)', () => {
@@ -36,6 +37,18 @@ describe('TB-0417, boron implant monitor (invented)', () => {
     expect(lot.sites.geometryFactor[0]).toBeCloseTo(c, 11)
     expect(lot.sites.thicknessFactor[0]).toBe(1)
     expect(lot.sites.sheetResistance_ohm_sq[0]).toBeCloseTo(((forward + reverse) / 2) * c * temperature, 10)
+  })
+
+  it('tells the stray site an outlier, which counts all the same, and what the wafers show', () => {
+    const stray = wafer('19')
+    expect(Array.from(stray.outliers, (site) => lot.readings.siteNames[lot.readings.site[site]])).toEqual(['31'])
+    expect(stray.statistics.count).toBe(49)
+    expect(stray.statisticsOtherwise!.count).toBe(48)
+    const result = JSON.parse(JSON.stringify(resultObject(lot, { program: 'Persquare', version: '0' })))
+    const shown = (id: string) => result.wafers.find((entry: { id: string }) => entry.id === id)
+    expect(shown('19').flags).toContain('outlier')
+    expect(JSON.stringify(shown('13').patterns)).toMatch(/tilt/)
+    expect(shown('07').figures.meanInterval).not.toBeNull()
   })
 
   it('judges dies only where sites surround them', () => {
