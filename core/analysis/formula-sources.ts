@@ -52,4 +52,5 @@ function profileSource({ profile, profileFile }: Extract<Procedure['layer'], { k
   return profile === 'tabulated' ? `the file ${profileFile}` : layerProfile(profile).source
 }
 
-const THIN_PLATE_SOURCE = 'J. Duchon, Springer Lecture Notes in Mathematics 571 (1977) 85 (from memory)'
+const THIN_PLATE_SOURCE =
+  'J. Duchon, in: Constructive Theory of Functions of Several Variables, Springer (1977) 85 (from memory)'
