@@ -1,5 +1,5 @@
 /** The words in which a verdict on a wafer is given. Numbers come with their units and enough digits to tell them from the limit. */
-import { formatNumber, formatSignificant } from '../units/format'
+import { formatNumber, formatScientific, formatSignificant } from '../units/format'
 import type { SiteFindings } from './judge-sites'
 import type { Limits } from './limits'
 
@@ -87,10 +87,12 @@ function outside({ above, below }: SiteFindings, limits: Limits, unit: string): 
   return `outside ${limitsText(limits, unit)} (${sides})`
 }
 
-/** A limit with the digits it was given with: 87 stays 87. */
+/** A limit with the digits it was given with: 87 stays 87. One that means "none", such as 1e300, keeps its power of ten. */
 function asWritten(limit: number): string {
   const [mantissa = ''] = Math.abs(limit).toExponential().split('e')
-  return formatSignificant(limit, Math.max(mantissa.replace('.', '').length, wholeDigits(limit)))
+  const digits = mantissa.replace('.', '').length
+  if (Math.abs(limit) >= 1e15 || Math.abs(limit) < 1e-6) return formatScientific(limit, digits)
+  return formatSignificant(limit, Math.max(digits, wholeDigits(limit)))
 }
 
 function wholeDigits(value: number): number {
