@@ -138,6 +138,12 @@ const KEPT: readonly Kept[] = [
     check: ({ problems }) => expect(problems[0]).toMatchObject({ kind: 'bad-value', key: 'layer.thicknessUm' }),
   },
   {
+    note: 'limits of 1e-300 and 1e300 threw where their digits were counted',
+    files: ['good.csv'],
+    procedure: 'limits-beyond-all.procedure.json',
+    check: (_, { lot }) => expect(lot.verdict).toBe('in-spec'),
+  },
+  {
     note: 'a diameter of 1e999 was told as "null"',
     files: ['good.csv'],
     procedure: 'larger-than-any.procedure.json',
