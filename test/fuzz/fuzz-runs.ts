@@ -15,8 +15,11 @@ function wholeNumber(text: string | undefined): number | null {
   return text !== undefined && /^\d{1,9}$/.test(text) ? Number(text) : null
 }
 
+/** For vitest, which would give up on a long look. */
+export const PATIENCE_MS = Math.max(60_000, 50 * total)
+
 /** A share of all inputs, in percent. */
-export function inputs(sharePercent: number): number {
+function inputs(sharePercent: number): number {
   return Math.max(1, Math.round((total * sharePercent) / 100))
 }
 

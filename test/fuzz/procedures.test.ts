@@ -3,7 +3,7 @@ import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { parseProcedure } from '../../core/procedure/parse-procedure'
 import { damagedProcedures } from './damaged-procedures'
-import { fuzz, inTime } from './fuzz-runs'
+import { fuzz, inTime, PATIENCE_MS } from './fuzz-runs'
 import { halfShapedProcedures, shapedProcedures } from './shaped-procedures'
 import { soundProcedures, type Json } from './sound-procedures'
 import { checkProblems, require, Words } from './sound-result'
@@ -24,12 +24,20 @@ function check(text: string): boolean {
 const textOf = (procedure: Json) => JSON.stringify(procedure)
 
 describe('procedures', () => {
-  it('that are sound are read', () => {
-    fuzz('sound procedures', 3, soundProcedures.map(textOf), (text) => require(check(text), () => `refused: ${text}`))
-  })
+  it(
+    'that are sound are read',
+    () => {
+      fuzz('sound procedures', 3, soundProcedures.map(textOf), (text) => require(check(text), () => `refused: ${text}`))
+    },
+    PATIENCE_MS,
+  )
 
-  it('made blindly from the shape, or damaged, are read or refused', () => {
-    const texts = fc.oneof(damagedProcedures, shapedProcedures.map(textOf), halfShapedProcedures.map(textOf))
-    fuzz('damaged procedures', 12, texts, check)
-  })
+  it(
+    'made blindly from the shape, or damaged, are read or refused',
+    () => {
+      const texts = fc.oneof(damagedProcedures, shapedProcedures.map(textOf), halfShapedProcedures.map(textOf))
+      fuzz('damaged procedures', 12, texts, check)
+    },
+    PATIENCE_MS,
+  )
 })

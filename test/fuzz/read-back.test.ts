@@ -4,7 +4,7 @@ import { describe, expect, it } from 'vitest'
 import { sitesCsv } from '../../core/analysis/export-csv'
 import { run } from '../../core/analysis/run'
 import { readReadings } from '../../core/ingest/read-files'
-import { fuzz } from './fuzz-runs'
+import { fuzz, PATIENCE_MS } from './fuzz-runs'
 import { checkTable } from './sound-outputs'
 
 const FORMULAS = [
@@ -83,7 +83,11 @@ function check([rows, column]: readonly [Rows, string]): void {
 }
 
 describe('what is written', () => {
-  it('reads back the same, and no name of it is a formula', () => {
-    fuzz('read back', 8, fc.tuple(lots, kinds), check)
-  })
+  it(
+    'reads back the same, and no name of it is a formula',
+    () => {
+      fuzz('read back', 8, fc.tuple(lots, kinds), check)
+    },
+    PATIENCE_MS,
+  )
 })

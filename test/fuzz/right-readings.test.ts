@@ -6,7 +6,7 @@ import { describe, expect, it } from 'vitest'
 import fc from 'fast-check'
 import { run, type RunResult } from '../../core/analysis/run'
 import { exportStyles, type ExportStyle } from './export-style'
-import { fuzz } from './fuzz-runs'
+import { fuzz, PATIENCE_MS } from './fuzz-runs'
 import { measuredLots, valueOf, type MeasuredLot, type MeasuredPair, type MeasuredSite } from './measured-lots'
 import { hasB, hasReverse, polarPlace, readyMade, writeExport, type WrittenExport } from './write-export'
 
@@ -122,7 +122,11 @@ function checkPlace({ style }: Case, site: MeasuredSite, x_mm: number | undefine
 }
 
 describe('well-formed exports', () => {
-  it('give the sheet resistance of every site, whatever their dialect, units and form', () => {
-    fuzz('right readings', 10, cases, check)
-  })
+  it(
+    'give the sheet resistance of every site, whatever their dialect, units and form',
+    () => {
+      fuzz('right readings', 10, cases, check)
+    },
+    PATIENCE_MS,
+  )
 })

@@ -6,7 +6,7 @@ import fc from 'fast-check'
 import { describe, it } from 'vitest'
 import { run } from '../../core/analysis/run'
 import { exportStyles, type ExportStyle } from './export-style'
-import { fuzz } from './fuzz-runs'
+import { fuzz, PATIENCE_MS } from './fuzz-runs'
 import { measuredLots, valueOf, type MeasuredLot } from './measured-lots'
 import { require } from './sound-result'
 import { TRAP_CELLS } from './spoil-export'
@@ -156,7 +156,11 @@ function quoted(cell: string, delimiter: string): string {
 }
 
 describe('a cell gone wrong', () => {
-  it('is refused and listed, or is the number it says', () => {
-    fuzz('spoiled cells', 12, cases, check)
-  })
+  it(
+    'is refused and listed, or is the number it says',
+    () => {
+      fuzz('spoiled cells', 12, cases, check)
+    },
+    PATIENCE_MS,
+  )
 })

@@ -8,7 +8,7 @@ import { run, type RunResult } from '../../core/analysis/run'
 import { readReadings } from '../../core/ingest/read-files'
 import { damagedProcedures } from './damaged-procedures'
 import { exportStyles } from './export-style'
-import { fuzz, inTime } from './fuzz-runs'
+import { fuzz, inTime, PATIENCE_MS } from './fuzz-runs'
 import { measuredLots } from './measured-lots'
 import { halfShapedProcedures } from './shaped-procedures'
 import { checkOutputs } from './sound-outputs'
@@ -51,31 +51,47 @@ const one = (files: fc.Arbitrary<Uint8Array>) => files.map((bytes) => [bytes])
 const several = fc.array(fc.oneof(goodFiles, spoiledFiles), { minLength: 2, maxLength: 3 })
 
 describe('the whole pipeline', () => {
-  it('good and spoiled exports under sound procedures', () => {
-    const inputs = fc.tuple(one(fc.oneof(goodFiles, spoiledFiles)), goodProcedures)
-    fuzz('exports under sound procedures', 4, inputs, checkWhole)
-  })
+  it(
+    'good and spoiled exports under sound procedures',
+    () => {
+      const inputs = fc.tuple(one(fc.oneof(goodFiles, spoiledFiles)), goodProcedures)
+      fuzz('exports under sound procedures', 4, inputs, checkWhole)
+    },
+    PATIENCE_MS,
+  )
 
-  it('several files at once', () => {
-    const inputs = fc.tuple(several, goodProcedures)
-    fuzz('several files', 1, inputs, checkWhole)
-  })
+  it(
+    'several files at once',
+    () => {
+      const inputs = fc.tuple(several, goodProcedures)
+      fuzz('several files', 1, inputs, checkWhole)
+    },
+    PATIENCE_MS,
+  )
 
-  it('anything under anything', () => {
-    const inputs = fc.tuple(one(fc.oneof(goodFiles, spoiledFiles, meaninglessFiles)), damagedProcedures)
-    fuzz('anything under anything', 15, inputs, checkWhole)
-  })
+  it(
+    'anything under anything',
+    () => {
+      const inputs = fc.tuple(one(fc.oneof(goodFiles, spoiledFiles, meaninglessFiles)), damagedProcedures)
+      fuzz('anything under anything', 15, inputs, checkWhole)
+    },
+    PATIENCE_MS,
+  )
 })
 
 describe('reading alone', () => {
-  it('of spoiled exports and of anything', () => {
-    const inputs = fc.oneof({ weight: 2, arbitrary: spoiledFiles }, { weight: 1, arbitrary: meaninglessFiles })
-    const check = (bytes: Uint8Array) => {
-      const words = new Words(bytes)
-      const { readings, problems } = inTime(() => readReadings([{ name: 'TB-0417.csv', bytes, sha256: '00' }]))
-      checkProblems(problems, words)
-      require(readings !== null || problems.length > 0, () => 'no readings and no problem')
-    }
-    fuzz('reading alone', 35, inputs, check)
-  })
+  it(
+    'of spoiled exports and of anything',
+    () => {
+      const inputs = fc.oneof({ weight: 2, arbitrary: spoiledFiles }, { weight: 1, arbitrary: meaninglessFiles })
+      const check = (bytes: Uint8Array) => {
+        const words = new Words(bytes)
+        const { readings, problems } = inTime(() => readReadings([{ name: 'TB-0417.csv', bytes, sha256: '00' }]))
+        checkProblems(problems, words)
+        require(readings !== null || problems.length > 0, () => 'no readings and no problem')
+      }
+      fuzz('reading alone', 35, inputs, check)
+    },
+    PATIENCE_MS,
+  )
 })
