@@ -46,7 +46,7 @@ async function picture(colorScheme, viewport) {
   await page.locator('.js-plotly-plot .main-svg').first().waitFor()
   await page.waitForTimeout(500)
   await shot('layer')
-  await page.keyboard.press('5')
+  await page.keyboard.press('6')
   await page.getByRole('heading', { name: 'Your decision' }).waitFor()
   await shot('hand-over')
   await page.keyboard.press('1')

@@ -2,7 +2,7 @@
 import { LAYER_IDS } from '../figures/layers'
 import type { KeptView } from '../persistence/keep-stores'
 import { useSelectionStore } from '../stores/selection'
-import { COMPARISONS, LEAVES, ORDERS, PAGES, THEMES, useViewStore } from '../stores/view'
+import { COMPARISONS, GAUGE_TABS, LEAVES, ORDERS, PAGES, THEMES, TRUST_TABS, useViewStore } from '../stores/view'
 
 type Check = (value: unknown) => boolean
 
@@ -16,6 +16,8 @@ const isName: Check = (value) => value === null || typeof value === 'string'
 const VIEW_CHECKS: Readonly<Record<string, Check>> = {
   page: oneOf(PAGES.map(({ id }) => id)),
   leaf: oneOf(LEAVES.map(({ id }) => id)),
+  trust: oneOf(TRUST_TABS.map(({ id }) => id)),
+  gauge: oneOf(GAUGE_TABS.map(({ id }) => id)),
   layer: oneOf(LAYER_IDS),
   order: oneOf(ORDERS),
   comparison: oneOf(COMPARISONS),

@@ -7,7 +7,7 @@ import { useSelectionStore } from '../stores/selection'
 import { PAGES, useViewStore } from '../stores/view'
 
 export const KEY_HELP: readonly { readonly keys: readonly string[]; readonly does: string }[] = [
-  { keys: ['1', '–', '5'], does: 'files, lot, wafer, layer, hand over' },
+  { keys: ['1', '–', '8'], does: 'files, lot, wafer, layer, trust, hand over, gauge, plan' },
   { keys: ['Enter'], does: 'one step in: lot, wafer, site' },
   { keys: ['Esc'], does: 'one step out' },
   { keys: ['←', '→', '↑', '↓'], does: 'neighbouring site; previous and next wafer while no site is selected' },
@@ -79,8 +79,8 @@ export function useKeys(): void {
     return true
   }
   function pageKey(key: string): boolean {
-    const page = /^[1-5]$/.test(key) ? PAGES[Number(key) - 1] : undefined
-    if (!page || (page.id !== 'files' && !lot.analysis)) return false
+    const page = /^[1-8]$/.test(key) ? PAGES[Number(key) - 1] : undefined
+    if (!page || (page.needsLot && !lot.analysis)) return false
     view.page = page.id
     return true
   }

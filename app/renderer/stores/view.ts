@@ -3,14 +3,34 @@ import { ref, shallowRef } from 'vue'
 import type { LayerId } from '../figures/layers'
 import type { RackOrder } from '../figures/lot-pictures'
 
+/** In the order of the work; the last two are of the bench and need no lot. */
 export const PAGES = [
-  { id: 'files', title: 'Files' },
-  { id: 'lot', title: 'Lot' },
-  { id: 'wafer', title: 'Wafer' },
-  { id: 'layer', title: 'Layer' },
-  { id: 'hand-over', title: 'Hand over' },
+  { id: 'files', title: 'Files', needsLot: false },
+  { id: 'lot', title: 'Lot', needsLot: true },
+  { id: 'wafer', title: 'Wafer', needsLot: true },
+  { id: 'layer', title: 'Layer', needsLot: true },
+  { id: 'trust', title: 'Trust', needsLot: true },
+  { id: 'hand-over', title: 'Hand over', needsLot: true },
+  { id: 'gauge', title: 'Gauge', needsLot: false },
+  { id: 'plan', title: 'Plan', needsLot: false },
 ] as const
-export type PageId = (typeof PAGES)[number]['id']
+export type Page = (typeof PAGES)[number]
+export type PageId = Page['id']
+
+/** How far the lot's measurement can be trusted. */
+export const TRUST_TABS = [
+  { id: 'uncertainty', title: 'Uncertainty' },
+  { id: 'risk', title: 'Risk' },
+  { id: 'readings', title: 'Readings' },
+  { id: 'map', title: 'Map' },
+] as const
+export type TrustTab = (typeof TRUST_TABS)[number]['id']
+
+export const GAUGE_TABS = [
+  { id: 'study', title: 'Gauge study' },
+  { id: 'check', title: 'Check wafer' },
+] as const
+export type GaugeTab = (typeof GAUGE_TABS)[number]['id']
 
 export const LEAVES = [
   { id: 'working', title: 'Working' },
@@ -30,6 +50,8 @@ export type Theme = (typeof THEMES)[number]
 export const useViewStore = defineStore('view', () => {
   const page = ref<PageId>('files')
   const leaf = ref<LeafId>('working')
+  const trust = ref<TrustTab>('uncertainty')
+  const gauge = ref<GaugeTab>('study')
   const layer = ref<LayerId>('value')
   const order = ref<RackOrder>('slot')
   const showsContours = ref(true)
@@ -44,6 +66,7 @@ export const useViewStore = defineStore('view', () => {
   const zoomed = shallowRef<{ readonly factor: number } | null>(null)
   const request = ref<'save' | 'print' | null>(null)
   return {
-    page, leaf, layer, order, showsContours, showsSites, showsDies, comparison, figure, lineAngle_deg, theme, dialog, zoomed, request,
+    page, leaf, trust, gauge, layer, order, showsContours, showsSites, showsDies, comparison, figure, lineAngle_deg, theme, dialog, zoomed,
+    request,
   } // prettier-ignore
 })

@@ -41,7 +41,7 @@ describe.skipIf(!hasChromium())('accessibility', () => {
       await page.keyboard.press('4')
       await page.locator('.js-plotly-plot .main-svg').first().waitFor()
       expect(await violations(page), 'layer').toEqual([])
-      await page.keyboard.press('5')
+      await page.keyboard.press('6')
       await page.getByRole('heading', { name: 'Your decision' }).waitFor()
       expect(await violations(page), 'hand over').toEqual([])
       await page.keyboard.press('1')

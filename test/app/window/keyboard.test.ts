@@ -82,7 +82,7 @@ describe.skipIf(!hasChromium())('the keyboard alone', () => {
       await page.getByText('This site was excluded by a person').waitFor()
       await page.keyboard.press('Control+z')
       await page.getByText('This site was excluded by a person').waitFor({ state: 'detached' })
-      await page.keyboard.press('5')
+      await page.keyboard.press('6')
       await page.getByRole('heading', { name: 'Your decision' }).waitFor()
     }))
 }) // prettier-ignore

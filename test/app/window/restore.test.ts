@@ -17,7 +17,7 @@ describe.skipIf(!hasChromium())('after a crash', () => {
       await page.getByLabel('Reason').fill('scratch')
       await page.getByRole('button', { name: 'Exclude the site' }).click()
       await page.getByText('This site was excluded by a person').waitFor()
-      await page.keyboard.press('5')
+      await page.keyboard.press('6')
       await page.getByRole('radio', { name: 'Measure again' }).check()
       await page.getByLabel('Name').fill('R. Aldous')
       // A moment after the last change everything is on the disk.

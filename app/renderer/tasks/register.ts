@@ -1,0 +1,37 @@
+/**
+ * Heavy pure work that the window has done beside it, each task under its name. A task loads its part of core when it is
+ * first asked for. To add one: a line in `Tasks` for its types and a line in `TASKS` for the work.
+ */
+import type { MapDetail, WaferSurface } from '../../../core/report/surface'
+import type { BandScale } from '../../../core/report/figures/band-scale'
+import type { MapSites } from '../../../core/report/figures/wafer-map'
+import type { Outline } from '../../../core/wafer/outline'
+
+/** Input and output of each; both are copied between the page and the worker, so they are plain data. */
+export interface Tasks {
+  'wafer-surface': {
+    readonly input: {
+      readonly outline: Outline
+      readonly scale: BandScale
+      readonly sites: MapSites
+      readonly detail: MapDetail
+    }
+    readonly output: WaferSurface | null
+  }
+}
+
+export type TaskName = keyof Tasks
+export type TaskInput<Name extends TaskName> = Tasks[Name]['input']
+export type TaskOutput<Name extends TaskName> = Tasks[Name]['output']
+
+/** Tells the share done, 0 to 1; calls that follow each other too closely are left out. */
+export type TellShare = (share: number) => void
+
+type Work<Name extends TaskName> = (input: TaskInput<Name>, tell: TellShare) => TaskOutput<Name>
+
+export const TASKS: { readonly [Name in TaskName]: () => Promise<Work<Name>> } = {
+  'wafer-surface': async () => {
+    const { surfacesFor } = await import('../../../core/report/surface')
+    return ({ outline, scale, sites, detail }) => surfacesFor(outline, scale)(sites, detail)
+  },
+}
