@@ -2,6 +2,7 @@
 import type { Exclusion } from '../../core/analysis/exclusions'
 import type { Progress } from '../../core/analysis/progress'
 import type { RunResult } from '../../core/analysis/run'
+import type { OpenedFile } from '../contract/host'
 
 /** Files are sent once and known by their number afterwards: a change of the procedure needs no second copy. */
 export interface Job {
@@ -13,6 +14,11 @@ export interface Job {
   readonly excluded: readonly Exclusion[]
 }
 
+/** A run ahead of the first lot, so that the pipeline is compiled and its tables are made; its files are not kept. */
+export interface Rehearsal {
+  readonly rehearse: { readonly readings: OpenedFile; readonly procedure: OpenedFile }
+}
+
 export interface FileUse {
   readonly id: number
   readonly name: string
@@ -21,4 +27,5 @@ export interface FileUse {
 export type Report =
   | { readonly kind: 'progress'; readonly progress: Progress }
   | { readonly kind: 'done'; readonly result: RunResult }
+  | { readonly kind: 'rehearsed'; readonly result: RunResult }
   | { readonly kind: 'failed'; readonly why: string }

@@ -6,7 +6,7 @@ import type { Exclusion } from '../../core/analysis/exclusions'
 import type { Progress } from '../../core/analysis/progress'
 import type { RunResult } from '../../core/analysis/run'
 import type { OpenedFile } from '../contract/host'
-import type { FileUse, Job, Report } from './analysis-messages'
+import type { FileUse, Job, Rehearsal, Report } from './analysis-messages'
 
 export interface AnalysisOptions {
   readonly excluded?: readonly Exclusion[]
@@ -25,6 +25,8 @@ export interface Analyzer {
   analyze(readings: readonly OpenedFile[], procedure: OpenedFile, options?: AnalysisOptions): RunningAnalysis
   /** Starts the worker ahead of the first file. */
   warm(): void
+  /** Has an idle worker run through a made-up lot, so that the first real one finds it fast; null where it isn't idle. */
+  rehearse(readings: OpenedFile, procedure: OpenedFile): Promise<RunResult | null>
   /** Ends the worker; the next call starts another. */
   close(): void
 }
@@ -41,6 +43,7 @@ export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker):
   let worker: WorkerLike | null = null
   let sent = sentFiles()
   let running: Ending | null = null
+  let rehearsing: Ending | null = null
 
   function close(): void {
     worker?.terminate()
@@ -48,6 +51,22 @@ export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker):
     sent = sentFiles()
     running?.end(null)
     running = null
+    rehearsed(null)
+  }
+
+  function rehearsed(result: RunResult | null): void {
+    rehearsing?.end(result)
+    rehearsing = null
+  }
+
+  function rehearse(readings: OpenedFile, procedure: OpenedFile): Promise<RunResult | null> {
+    if (running || rehearsing) return Promise.resolve(null)
+    const own = (worker ??= newWorker())
+    const mine = (rehearsing = ending())
+    own.onmessage = ({ data }: MessageEvent<Report>) => rehearsed(data.kind === 'rehearsed' ? data.result : null)
+    own.onerror = close
+    own.postMessage({ rehearse: { readings, procedure } } satisfies Rehearsal)
+    return mine.result
   }
 
   function analyze(
@@ -66,7 +85,8 @@ export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker):
       mine.end(found)
     }
     own.onmessage = ({ data }: MessageEvent<Report>) => {
-      if (data.kind === 'progress') for (const listener of listeners) listener(data.progress)
+      if (data.kind === 'rehearsed') rehearsed(data.result)
+      else if (data.kind === 'progress') for (const listener of listeners) listener(data.progress)
       else finish(data.kind === 'done' ? data.result : failure(data.why))
     }
     own.onerror = (event) => {
@@ -84,7 +104,7 @@ export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker):
     }
   }
 
-  return { analyze, close, warm: () => void (worker ??= newWorker()) }
+  return { analyze, rehearse, close, warm: () => void (worker ??= newWorker()) }
 }
 
 interface Ending {

@@ -2,7 +2,7 @@
 import type { LotAnalysis } from '../../core/analysis/lot-analysis'
 import { run, type RunInput } from '../../core/analysis/run'
 import { partBrought } from '../contract/brought-files'
-import type { FileUse, Job, Report } from './analysis-messages'
+import type { FileUse, Job, Rehearsal, Report } from './analysis-messages'
 
 interface KeptFile {
   readonly bytes: Uint8Array
@@ -12,13 +12,19 @@ interface KeptFile {
 /** The worker's own side of the channel, as far as it is used; the page's `self` has another type. */
 const port = self as unknown as {
   postMessage(report: Report, transfer?: readonly ArrayBufferLike[]): void
-  onmessage: ((event: MessageEvent<Job>) => void) | null
+  onmessage: ((event: MessageEvent<Job | Rehearsal>) => void) | null
 }
 
 const kept = new Map<number, KeptFile>()
 
 port.onmessage = ({ data }) => {
-  answer(data).catch((error: unknown) => port.postMessage({ kind: 'failed', why: String(error) }))
+  if ('rehearse' in data) rehearse(data)
+  else answer(data).catch((error: unknown) => port.postMessage({ kind: 'failed', why: String(error) }))
+}
+
+function rehearse({ rehearse: { readings, procedure } }: Rehearsal): void {
+  const result = run({ readings: [{ ...readings, sha256: '' }], procedure })
+  port.postMessage({ kind: 'rehearsed', result })
 }
 
 async function answer({ added, dropped, readings, procedure, excluded }: Job): Promise<void> {

@@ -79,7 +79,8 @@ async function ask<Value>(
 function post(body: Uint8Array): RequestInit {
   const bytes = body.buffer instanceof ArrayBuffer ? (body as Uint8Array<ArrayBuffer>) : new Uint8Array(body)
   const headers = { [OWN_HEADER]: '1', 'content-type': 'application/octet-stream' }
-  return { method: 'POST', headers, body: bytes }
+  // A blob is taken from the page once; a bare array is copied while the window waits.
+  return { method: 'POST', headers, body: new Blob([bytes]) }
 }
 
 async function problemIn(response: Response, path: string): Promise<Problem> {

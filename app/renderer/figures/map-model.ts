@@ -19,6 +19,8 @@ export interface MapModel {
   readonly exclusion: Path2D | null
   readonly bands: readonly MapBand[] | null
   readonly method: string | null
+  /** The sites that a worker must join into bands first: too many to do so here. */
+  readonly toJoin: MapSites | null
   readonly dies: MapDies | null
   readonly places: MapPlaces
   readonly grid: SiteGrid
@@ -52,11 +54,9 @@ export interface MapDies {
 
 export function mapModel(pictures: LotPictures, wafer: WaferAnalysis, layer: MapLayer): MapModel {
   const places = waferPlaces(pictures, wafer, layer)
-  const { outline } = pictures.analysis
-  const surface = surfaceMaker(outline, layer.scale)(surfaceSites(places), 'large')
   return {
     ...frameOf(pictures, places),
-    ...painted(surface, layer.scale, places.value.length),
+    ...joined(pictures, places, layer.scale),
     dies: waferDies(pictures, wafer),
     places,
     grid: siteGrid(places.x_mm, places.y_mm),
@@ -68,10 +68,9 @@ export function mapModel(pictures: LotPictures, wafer: WaferAnalysis, layer: Map
 export function surfaceModel(pictures: LotPictures, x_mm: Float64Array, y_mm: Float64Array, value: Float64Array, scale: BandScale): MapModel {
   const kind = Array.from(value, (v): MarkKind => (Number.isNaN(v) ? 'not-assessed' : 'in-spec'))
   const places = { site: value.map((_, i) => i), x_mm, y_mm, value, kind, isExcluded: new Uint8Array(value.length) }
-  const surface = surfaceMaker(pictures.analysis.outline, scale)(surfaceSites(places), 'large')
   return {
     ...frameOf(pictures, places),
-    ...painted(surface, scale, value.length),
+    ...joined(pictures, places, scale),
     dies: null,
     places,
     grid: siteGrid(x_mm, y_mm),
@@ -91,6 +90,13 @@ function frameOf({ analysis }: LotPictures, { x_mm, y_mm }: MapPlaces) {
   }
 }
 
+function joined({ analysis }: LotPictures, places: MapPlaces, scale: BandScale) {
+  const sites = surfaceSites(places, 'large')
+  if (sites.value.length > MOST_SITES_HERE) return { bands: null, method: null, toJoin: sites }
+  const surface = surfaceMaker(analysis.outline, scale)(sites, 'large')
+  return { ...painted(surface, scale, places.value.length, 'large'), toJoin: null }
+}
+
 type SurfaceOf = ReturnType<typeof surfacesFor>
 const makers = new WeakMap<BandScale, { readonly outline: Outline; readonly make: SurfaceOf }>()
 
@@ -107,25 +113,28 @@ export function painted(
   surface: WaferSurface | null,
   scale: BandScale,
   count: number,
+  detail: MapDetail,
 ): Pick<MapModel, 'bands' | 'method'> {
   if (!surface) return { bands: null, method: null }
   const bands = surface.contours
     .filter(({ rings_mm }) => rings_mm.length > 0)
     .map(({ rings_mm, threshold }) => ({ path: ringPath(rings_mm), colour: scale.colours[bandOf(scale, threshold)] }))
-  const every = strideOf(count)
+  const every = strideOf(count, detail)
   return { bands, method: every === 1 ? surface.method : `${surface.method}, one of every ${every} sites` }
 }
 
-export function waferSurface(pictures: LotPictures, wafer: WaferAnalysis, layer: MapLayer, detail: MapDetail): WaferSurface | null {
-  return surfaceMaker(pictures.analysis.outline, layer.scale)(surfaceSites(waferPlaces(pictures, wafer, layer)), detail)
+export function waferSurface(pictures: LotPictures, places: MapPlaces, layer: MapLayer, detail: MapDetail): WaferSurface | null {
+  return surfaceMaker(pictures.analysis.outline, layer.scale)(surfaceSites(places, detail), detail)
 } // prettier-ignore
 
-/** More sites than this tell a raster of a map nothing new, and joining them would halt the window. */
-const MOST_SURFACE_SITES = 5000
+/** More sites than these tell a raster of a map nothing new. */
+const MOST_SURFACE_SITES: Readonly<Record<MapDetail, number>> = { large: 5000, small: 800 }
+/** Joining more of them takes longer than a person should wait for the window. */
+const MOST_SITES_HERE = 800
 
 /** Excluded sites don't shape the surface; of very many sites, every so-manieth does. */
-function surfaceSites({ x_mm, y_mm, value, isExcluded }: MapPlaces): MapSites {
-  const every = strideOf(value.length)
+function surfaceSites({ x_mm, y_mm, value, isExcluded }: MapPlaces, detail: MapDetail): MapSites {
+  const every = strideOf(value.length, detail)
   if (every === 1) return { x_mm, y_mm, value, verdict: [], excluded: isExcluded }
   const rows = Uint32Array.from({ length: Math.ceil(value.length / every) }, (_, i) => i * every)
   const pick = (column: Float64Array): Float64Array => Float64Array.from(rows, (row) => column[row])
@@ -134,24 +143,36 @@ function surfaceSites({ x_mm, y_mm, value, isExcluded }: MapPlaces): MapSites {
 }
 
 /** Odd, so that it doesn't fall in step with the rows of a lattice. */
-function strideOf(count: number): number {
-  const least = Math.ceil(count / MOST_SURFACE_SITES)
+function strideOf(count: number, detail: MapDetail): number {
+  const least = Math.ceil(count / MOST_SURFACE_SITES[detail])
   return least === 1 ? 1 : least + ((least + 1) % 2)
 }
 
 export function waferPlaces(pictures: LotPictures, wafer: WaferAnalysis, { column, isJudged }: MapLayer): MapPlaces {
   const { analysis, siteLimits, positions } = pictures
-  const pick = (from: Float64Array | undefined): Float64Array =>
-    Float64Array.from(wafer.sites, (site) => (from ? from[site] : NaN))
+  const { sites } = wafer
   const { verdict, value, flags } = analysis.sites
-  return {
-    site: wafer.sites,
-    x_mm: pick(positions?.x_mm),
-    y_mm: pick(positions?.y_mm),
-    value: pick(isJudged ? value : column),
-    kind: Array.from(wafer.sites, (site) => markOf(verdict[site], value[site], siteLimits)),
-    isExcluded: Uint8Array.from(wafer.sites, (site) => (isExcludedSite(flags[site]) ? 1 : 0)),
+  const kind: MarkKind[] = []
+  const isExcluded = new Uint8Array(sites.length)
+  for (let i = 0; i < sites.length; i++) {
+    kind.push(markOf(verdict[sites[i]], value[sites[i]], siteLimits))
+    isExcluded[i] = isExcludedSite(flags[sites[i]]) ? 1 : 0
   }
+  return {
+    site: sites,
+    x_mm: picked(positions?.x_mm, sites),
+    y_mm: picked(positions?.y_mm, sites),
+    value: picked(isJudged ? value : column, sites),
+    kind,
+    isExcluded,
+  }
+}
+
+/** A plain loop: `Float64Array.from` with a function takes ten times as long, and wafers have a hundred thousand sites. */
+function picked(column: Float64Array | undefined, sites: Uint32Array): Float64Array {
+  const out = new Float64Array(sites.length).fill(NaN)
+  if (column) for (let i = 0; i < sites.length; i++) out[i] = column[sites[i]]
+  return out
 }
 
 export function isExcludedSite(flags: number): boolean {

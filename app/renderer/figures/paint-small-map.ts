@@ -18,7 +18,7 @@ export function paintSmallMap(context: CanvasRenderingContext2D, pictures: LotPi
   const scale = (size / 2 - 1.5) / Math.max(extent.halfWidth_mm, extent.halfHeight_mm)
   const ring = outlineRing(outline, 0, SMALL_MAP_EDGES)
   const edge = ring.length > 0 ? ringPath([ring]) : null
-  const { bands } = painted(waferSurface(pictures, wafer, layer, 'small'), layer.scale, places.value.length)
+  const { bands } = painted(waferSurface(pictures, places, layer, 'small'), layer.scale, places.value.length, 'small')
   context.setTransform(1, 0, 0, 1, 0, 0)
   context.clearRect(0, 0, size, size)
   context.setTransform(scale, 0, 0, -scale, size / 2, size / 2)

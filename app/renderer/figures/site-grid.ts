@@ -18,7 +18,7 @@ const SITES_PER_CELL = 4
 
 /** Rows without a place are in no cell. */
 export function siteGrid(x_mm: ArrayLike<number>, y_mm: ArrayLike<number>): SiteGrid {
-  const placed = Array.from({ length: x_mm.length }, (_, i) => i).filter((i) => isPlaced(x_mm[i], y_mm[i]))
+  const placed = placedRows(x_mm, y_mm)
   const box = boxOf(placed, x_mm, y_mm)
   const across = Math.max(1, Math.ceil(Math.sqrt(placed.length / SITES_PER_CELL)))
   const width = Math.max(1e-9, (box.right_mm - box.left_mm) / across)
@@ -58,11 +58,14 @@ export function siteGrid(x_mm: ArrayLike<number>, y_mm: ArrayLike<number>): Site
   return { within, nearest }
 }
 
-function isPlaced(x: number, y: number): boolean {
-  return Number.isFinite(x) && Number.isFinite(y)
+function placedRows(x_mm: ArrayLike<number>, y_mm: ArrayLike<number>): Uint32Array {
+  const rows = new Uint32Array(x_mm.length)
+  let count = 0
+  for (let i = 0; i < x_mm.length; i++) if (Number.isFinite(x_mm[i]) && Number.isFinite(y_mm[i])) rows[count++] = i
+  return rows.subarray(0, count)
 }
 
-function boxOf(rows: readonly number[], x_mm: ArrayLike<number>, y_mm: ArrayLike<number>): PlaceWindow {
+function boxOf(rows: Uint32Array, x_mm: ArrayLike<number>, y_mm: ArrayLike<number>): PlaceWindow {
   let [left_mm, right_mm, bottom_mm, top_mm] = [Infinity, -Infinity, Infinity, -Infinity]
   for (const i of rows) {
     left_mm = Math.min(left_mm, x_mm[i])
@@ -74,7 +77,7 @@ function boxOf(rows: readonly number[], x_mm: ArrayLike<number>, y_mm: ArrayLike
 }
 
 /** By cell, each cell's rows from start[cell] to start[cell + 1]. */
-function sorted(rows: readonly number[], cells: number, cellOf: (i: number) => number) {
+function sorted(rows: Uint32Array, cells: number, cellOf: (i: number) => number) {
   const start = new Uint32Array(cells + 1)
   for (const i of rows) start[cellOf(i) + 1]++
   for (let cell = 0; cell < cells; cell++) start[cell + 1] += start[cell]

@@ -1,0 +1,72 @@
+/**
+ * A run through a made-up lot while nothing is open: the browser compiles what it has seen run, and the first real lot
+ * is on the screen in half the time. Nothing of it is kept or shown.
+ */
+import type { LotAnalysis } from '../../core/analysis/lot-analysis'
+import { PROCEDURE_FORMAT, type ProcedureInput } from '../../core/procedure/schema'
+import type { OpenedFile } from '../contract/host'
+import { lotAnalyzer } from './analysis'
+import { pageInks } from './composables/theme'
+import { mapLayer } from './figures/layers'
+import { lotPictures } from './figures/lot-pictures'
+import { paintSmallMap } from './figures/paint-small-map'
+
+const WAFERS = 4
+const RINGS = 4
+const CANVAS_px = 64
+
+/** Call when the window is at rest. */
+export async function rehearse(): Promise<void> {
+  const found = await lotAnalyzer.rehearse(rehearsalReadings(), rehearsalProcedure())
+  if (found?.analysis) await paintAside(found.analysis)
+}
+
+/** A wafer a turn, so that a click is not kept waiting. */
+async function paintAside(analysis: LotAnalysis): Promise<void> {
+  const pictures = lotPictures(analysis)
+  const layer = mapLayer(pictures, 'value')
+  const context = document.createElement('canvas').getContext('2d')
+  if (!layer || !context) return
+  context.canvas.width = context.canvas.height = CANVAS_px
+  for (const wafer of pictures.wafers) {
+    paintSmallMap(context, pictures, wafer, layer, pageInks())
+    await new Promise((resolve) => setTimeout(resolve))
+  }
+}
+
+export function rehearsalReadings(): OpenedFile {
+  const rows = ['wafer,site,x_mm,y_mm,current_A,voltage_V,current_rev_A,voltage_rev_V,temperature_C,time']
+  for (let wafer = 1; wafer <= WAFERS; wafer++) {
+    for (let ring = 0, site = 0; ring <= RINGS; ring++) {
+      for (let k = 0; k < Math.max(1, 8 * ring); k++) {
+        const angle = (2 * Math.PI * k) / (8 * ring || 1)
+        const [x, y] = [22 * ring * Math.cos(angle), 22 * ring * Math.sin(angle)]
+        const voltage = (0.02 * (1 + 0.002 * ring + 0.001 * Math.sin(3 * angle + wafer))).toPrecision(7)
+        const time = `2026-01-01T00:00:${String((site * 7) % 60).padStart(2, '0')}Z`
+        rows.push(`${wafer},${++site},${x.toFixed(3)},${y.toFixed(3)},1e-3,${voltage},-1e-3,-${voltage},22.9,${time}`)
+      }
+    }
+  }
+  return { name: 'rehearsal.csv', bytes: new TextEncoder().encode(rows.join('\n')) }
+}
+
+/** Of the commonest kind, with everything on. */
+export function rehearsalProcedure(): OpenedFile {
+  const procedure: ProcedureInput = {
+    format: PROCEDURE_FORMAT,
+    wafer: { diameterMm: 200, thicknessUm: 725, edgeExclusionMm: 3 },
+    probe: { spacingMm: 1 },
+    layer: {
+      kind: 'doped-layer',
+      dopant: 'boron',
+      profile: 'gaussian',
+      depthUm: 0.4,
+      background: { dopant: 'phosphorus', concentrationCm3: 1e15 },
+    },
+    temperature: { coefficientPercentPerC: 0.1 },
+    limits: { sheetResistanceOhmSq: { target: 91, lower: 85, upper: 97 }, uniformityPercent: { upper: 2 } },
+    dieGrid: { pitchXMm: 20, pitchYMm: 20 },
+    uncertainty: { currentRel: 0.0002, voltageRel: 0.0003, spacingMm: 0.005, temperatureC: 0.3, depthUm: 0.01 },
+  }
+  return { name: 'rehearsal.json', bytes: new TextEncoder().encode(JSON.stringify(procedure)) }
+}
