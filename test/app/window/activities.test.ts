@@ -1,8 +1,19 @@
-import { readFile } from 'node:fs/promises'
-import type { Browser } from 'playwright-core'
+import { mkdtemp, readFile, rm, writeFile } from 'node:fs/promises'
+import { tmpdir } from 'node:os'
+import { join } from 'node:path'
+import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { hasChromium, launchChromium } from '../browser/chromium'
-import { lotFiles, lotIsOpen, withWindow } from './open-window'
+import { drop, lotFiles, lotIsOpen, withWindow } from './open-window'
+
+/** Share of a canvas that is not white. */
+function inkOf(canvas: Element): number {
+  const { width, height } = canvas as HTMLCanvasElement
+  const { data } = (canvas as HTMLCanvasElement).getContext('2d')!.getImageData(0, 0, width, height)
+  let inked = 0
+  for (let i = 0; i < data.length; i += 4) if (data[i] + data[i + 1] + data[i + 2] < 600) inked++
+  return inked / (width * height)
+}
 
 describe.skipIf(!hasChromium())('what a person does with a lot', () => {
   let browser: Browser
@@ -19,6 +30,37 @@ describe.skipIf(!hasChromium())('what a person does with a lot', () => {
       const columns = page.getByRole('table', { name: /each column of the file/ })
       expect(await columns.getByRole('combobox', { name: 'Column for voltage_V', exact: true }).inputValue()).toBe('voltage_V')
     }))
+
+  it('brings in a folder, chosen or dropped: its readings are one lot', async () => {
+    const folder = await mkdtemp(join(tmpdir(), 'persquare-lot-'))
+    const wafer = (id: number): string => ['wafer,site,x_mm,y_mm,v_over_i_ohm', ...[0, 20, 40].map((x, k) => `${id},${k + 1},${x},0,20.${k}`)].join('\n')
+    for (const id of [1, 2, 10]) await writeFile(join(folder, `W${id}.csv`), wafer(id))
+    await writeFile(join(folder, 'notes.txt'), 'not for the lot')
+    const procedure = '{ "format": "persquare-procedure/1", "wafer": { "diameterMm": 200 }, "probe": { "spacingMm": 1 } }'
+    const wafersAre = async (page: Page): Promise<void> => {
+      await lotIsOpen(page)
+      expect(await page.getByRole('table', { name: /Statistics of every wafer/ }).getByRole('rowheader').allTextContents()).toEqual(['1', '2', '10'])
+    }
+    try {
+      await withWindow(browser, {}, async (page) => {
+        await drop(page, [{ name: 'p.json', text: procedure }])
+        const [chooser] = await Promise.all([page.waitForEvent('filechooser'), page.getByRole('button', { name: 'A folder…' }).click()])
+        await chooser.setFiles(folder)
+        await wafersAre(page)
+      })
+      await withWindow(browser, {}, async (page) => {
+        await drop(page, [{ name: 'p.json', text: procedure }])
+        await page.getByRole('heading', { level: 1, name: /readings are missing/ }).waitFor()
+        const devtools = await page.context().newCDPSession(page)
+        for (const type of ['dragEnter', 'dragOver', 'drop'] as const) {
+          await devtools.send('Input.dispatchDragEvent', { type, x: 600, y: 400, data: { items: [], files: [folder], dragOperationsMask: 1 } })
+        }
+        await wafersAre(page)
+      })
+    } finally {
+      await rm(folder, { recursive: true })
+    }
+  })
 
   it('sees the lot: every wafer, the sentence, a table that sorts, what is out', () =>
     withWindow(browser, { files: lotFiles('TB-0417') }, async (page) => {
@@ -105,7 +147,10 @@ describe.skipIf(!hasChromium())('what a person does with a lot', () => {
       await page.getByRole('radio', { name: 'Hold' }).check()
       await page.getByLabel('Name').fill('R. Aldous')
       await page.getByLabel('Comment').fill('Edge of wafer 07 to be measured again.')
-      await page.getByRole('region', { name: 'Report', exact: true }).getByText('R. Aldous').first().waitFor()
+      await page.waitForFunction(() => performance.getEntriesByName('persquare:report-page').length > 0, null, { timeout: 60_000 })
+      expect(await page.getByRole('img', { name: /^Page 1 of \d+/ }).evaluate(inkOf)).toBeGreaterThan(0.02)
+      await page.getByRole('tab', { name: 'Text' }).click()
+      await page.getByRole('tabpanel', { name: 'Text' }).getByText('R. Aldous').first().waitFor()
       const saved = async (button: string | RegExp): Promise<Buffer> => {
         const [download] = await Promise.all([page.waitForEvent('download'), page.getByRole('button', { name: button }).click()])
         return readFile(await download.path())

@@ -77,6 +77,7 @@ describe.skipIf(!hasChromium())('the keyboard alone', () => {
       await page.getByRole('dialog').waitFor({ state: 'detached' })
       await page.keyboard.press('Enter')
       await page.keyboard.press('x')
+      await page.getByRole('dialog').waitFor()
       await page.keyboard.type('scratch')
       await page.keyboard.press('Enter')
       await page.getByText('This site was excluded by a person').waitFor()
