@@ -31,7 +31,10 @@ function versionLines({ madeBy }: Verification, { program, version }: Verifier):
   return [`It was made by ${shown(madeBy.program)} ${shown(madeBy.version)}; this is ${program} ${version}.`]
 }
 
-function resultLine({ isRewritten }: Verification): string {
+function resultLine({ isRewritten, tolerance }: Verification): string {
+  if (tolerance > 0) {
+    return `Its result comes out the same to within ${tolerance} of each number; the last digits hang on the engine, and it was made by another.`
+  }
   return isRewritten
     ? 'result.json inside it: every value comes out the same, but its text was written differently.'
     : 'Every digit of its result comes out the same.'
@@ -48,6 +51,7 @@ function pageLines({ pages: { how, places }, result }: Verification): readonly s
       places.map((place) => `${place}: not as it comes out now`),
       places.length,
     )
+  if (how === 'rounding') return ['Its pages come out the same; what is drawn may lie a hair beside.']
   return how === 'bytes'
     ? ['Every byte of its pages and of all else in it comes out the same.']
     : ['All in it comes out the same, but for its compression, which this computer does in another way.']
@@ -80,7 +84,7 @@ function listed(names: readonly string[]): string {
 
 /** The object of `--json`; its keys stay, in this order. A value that is not there has no key. */
 export function verificationJson(verification: Verification, { file, program, version }: Verifier): string {
-  const { isSame, madeBy, inputs, result, isRewritten, problems, pages } = verification
+  const { isSame, madeBy, inputs, result, isRewritten, problems, tolerance, pages } = verification
   const object = {
     format: VERIFICATION_FORMAT,
     report: file,
@@ -97,6 +101,7 @@ export function verificationJson(verification: Verification, { file, program, ve
       })),
       count: result.count,
       rewritten: isRewritten,
+      tolerance,
     },
     pages: { compared: pages.how, differences: pages.places },
   }

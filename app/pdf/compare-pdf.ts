@@ -1,29 +1,36 @@
 /** Where two report files differ, in words that lead a reader to the place: a page, a file inside, a part of the structure. */
 import { isDeepStrictEqual } from 'node:util'
 import { inflateSync } from 'node:zlib'
+import { RESULT_NAME } from './attachment-names'
 import { attachmentPlaces } from './read-attachments'
-import { objectOf, streamOf, type PdfFile, type PdfObject } from './pdf-file'
+import { objectOf, streamWithin, type PdfFile, type PdfObject } from './pdf-file'
 import { PdfFault, array, dictionary, isReference, reference } from './pdf-syntax'
+
+/**
+ * `bytes`: not a byte may differ. `contents`: the same content may be compressed into different bytes. `rounding`: what
+ * is drawn may also lie a hair beside, and the attached result, which is compared by its values, may differ.
+ */
+export type PdfStrictness = 'bytes' | 'contents' | 'rounding'
 
 /**
  * In the order of the pages, then the rest; empty where there is none.
  *
  * @param remade a file that was made a moment ago; the places are found by its structure
- * @param how `bytes`: not a byte may differ; `contents`: the same content may be compressed into different bytes
  */
-export function pdfDifferences(report: PdfFile, remade: PdfFile, how: 'bytes' | 'contents'): readonly string[] {
+export function pdfDifferences(report: PdfFile, remade: PdfFile, how: PdfStrictness): readonly string[] {
   if (Buffer.compare(report.bytes, remade.bytes) === 0) return []
-  const isSame = how === 'bytes' ? haveSameBytes : haveSameContents
+  const isSame = how === 'bytes' ? haveSameBytes : haveSameStreams(how === 'contents' ? haveSameBytes : isDrawnTheSame)
   const [before, after] = [new Extents(report), new Extents(remade)]
   const different: number[] = []
   const common = Math.min(report.offsets.length, remade.offsets.length)
   for (let number = 1; number < common; number++) {
     if (!isSame(before.of(number), after.of(number), number, report, remade)) different.push(number)
   }
-  const places = [...placesOf(different, remade)]
+  const found = [...placesOf(different, remade)]
+  const places = how === 'rounding' ? found.filter((place) => place !== attachedAs(RESULT_NAME)) : found
   if (common < report.offsets.length) places.push('there is more in it than comes out')
   if (common < remade.offsets.length) places.push('there is less in it than comes out')
-  if (places.length === 0 && (how === 'bytes' || !haveSameFrames(before, after))) {
+  if (found.length === 0 && (how === 'bytes' || !haveSameFrames(before, after))) {
     places.push(`its outer structure, at byte ${firstDifference(report.bytes, remade.bytes)}`)
   }
   return places
@@ -70,24 +77,45 @@ function haveSameFrames(before: Extents, after: Extents): boolean {
   return before.frame().every((frame, k) => haveSameBytes(frame, frames[k]))
 }
 
-function haveSameContents(
-  before: Uint8Array,
-  after: Uint8Array,
-  number: number,
-  report: PdfFile,
-  remade: PdfFile,
-): boolean {
-  if (haveSameBytes(before, after)) return true
-  try {
-    const [one, other] = [objectOf(report, number), objectOf(remade, number)]
-    if (one.stream === null || other.stream === null || !isDeepStrictEqual(entriesOf(one), entriesOf(other)))
-      return false
-    const content = inflateSync(other.stream)
-    return haveSameBytes(streamOf(one, content.length), content)
-  } catch (error) {
-    if (error instanceof PdfFault) return false
-    throw error
+type SameBytes = (before: Uint8Array, after: Uint8Array) => boolean
+
+function haveSameStreams(isSame: SameBytes) {
+  return (before: Uint8Array, after: Uint8Array, number: number, report: PdfFile, remade: PdfFile): boolean => {
+    if (haveSameBytes(before, after)) return true
+    try {
+      const [one, other] = [objectOf(report, number), objectOf(remade, number)]
+      if (one.stream === null || other.stream === null || !isDeepStrictEqual(entriesOf(one), entriesOf(other)))
+        return false
+      const content = inflateSync(other.stream)
+      return isSame(streamWithin(one, content.length + ROOM_FOR_DIGITS), content)
+    } catch (error) {
+      if (error instanceof PdfFault) return false
+      throw error
+    }
   }
+}
+
+/** A number that came out a hair longer takes more digits. */
+const ROOM_FOR_DIGITS = 65_536
+const HAIR_pt = 0.002
+
+/** Word by word; numbers may lie a hair apart. */
+function isDrawnTheSame(before: Uint8Array, after: Uint8Array): boolean {
+  if (haveSameBytes(before, after)) return true
+  const [one, other] = [wordsOf(before), wordsOf(after)]
+  return one.length === other.length && one.every((word, k) => word === other[k] || isAHairApart(word, other[k]))
+}
+
+function wordsOf(content: Uint8Array): readonly string[] {
+  return Buffer.from(content).toString('latin1').split(/\s+/)
+}
+
+const NUMBER = /^[[(]?-?\d*\.?\d+[\])]?$/
+
+function isAHairApart(one: string, other: string): boolean {
+  if (!NUMBER.test(one) || !NUMBER.test(other)) return false
+  const [a, b] = [one, other].map((word) => Number(word.replace(/[[\]()]/g, '')))
+  return Math.abs(a - b) <= HAIR_pt && one.replace(/[-\d.]/g, '') === other.replace(/[-\d.]/g, '')
 }
 
 /** All that doesn't hang on how the stream is compressed. */
@@ -103,6 +131,10 @@ function placesOf(numbers: readonly number[], file: PdfFile): ReadonlySet<string
   return new Set(found.map(({ place }) => place))
 }
 
+function attachedAs(name: string): string {
+  return `the attached ${name}`
+}
+
 const PROPERTIES = 'its title, dates and program'
 
 /** Of a file of our own making, which is as we know it. */
@@ -115,8 +147,8 @@ function placesByObject(file: PdfFile): ReadonlyMap<number, string> {
     places.set(reference(page.get('Contents')), `page ${index + 1}`)
   })
   for (const { name, entry, stream } of attachmentPlaces(file)) {
-    places.set(stream, `the attached ${name}`)
-    places.set(entry, `the attached ${name}`)
+    places.set(stream, attachedAs(name))
+    places.set(entry, attachedAs(name))
   }
   const properties = dictionary(objectOf(file, file.info).value)
   for (const value of [...properties.values(), file.root.get('Metadata')]) {

@@ -109,13 +109,20 @@ export function isSize(value: unknown): value is number {
  * What a stream holds.
  * @throws PdfFault if it holds other than `size` bytes, counted no further than one beyond them
  */
-export function streamOf({ value, stream }: PdfObject, size: number): Uint8Array {
+export function streamOf(object: PdfObject, size: number): Uint8Array {
+  const bytes = streamWithin(object, size)
+  if (bytes.length !== size) throw new PdfFault('it holds something that is damaged')
+  return bytes
+}
+
+/** The same, of a stream that holds no more than `most` bytes. */
+export function streamWithin({ value, stream }: PdfObject, most: number): Uint8Array {
   const entries = dictionary(value)
   if (stream === null || nameOf(entries.get('Filter')) !== 'FlateDecode' || entries.has('DecodeParms')) {
     throw new PdfFault('it holds something that is compressed in another way')
   }
-  const { bytes, read } = inflated(stream, size + 1)
-  if (bytes.length !== size || read !== stream.length) throw new PdfFault('it holds something that is damaged')
+  const { bytes, read } = inflated(stream, most + 1)
+  if (bytes.length > most || read !== stream.length) throw new PdfFault('it holds something that is damaged')
   return bytes
 }
 

@@ -1,9 +1,8 @@
 /** What a report carries to be made again: its inputs, its result, and a list of them that says how it was made. */
-import { createHash } from 'node:crypto'
-import { deflateSync } from 'node:zlib'
 import type { Exclusion } from '../../core/analysis/exclusions'
 import { parseTime } from '../../core/ingest/parse-time'
 import { DECISIONS, type Decision } from '../../core/report/decision'
+import { arithmeticMark, compressionMark } from './making-marks'
 import { attachmentNames, MANIFEST_NAME, RESULT_NAME } from './attachment-names'
 import { PdfFault } from './pdf-syntax'
 import type { ReadAttachment } from './read-attachments'
@@ -31,8 +30,9 @@ export interface ReportMaking {
   readonly paper: 'A4' | 'Letter'
   /** Of the responsible person, where one is made. */
   readonly decision?: Decision | null
-  /** What it says of its compressor: by default the mark of our own; another's, where another's report is made again. */
+  /** What it says of the machine: by default the marks of this one; another's, where another's report is made again. */
   readonly compression?: string
+  readonly arithmetic?: string
 }
 
 export interface ReportContents extends ReportMaking {
@@ -42,6 +42,7 @@ export interface ReportContents extends ReportMaking {
   /** Text of result.json. */
   readonly result: string
   readonly compression: string
+  readonly arithmetic: string
 }
 
 /** What the analysis was made of and by, beside the files: `excluded` is the analysis's own. */
@@ -59,8 +60,10 @@ interface ManifestFile {
 
 export function reportAttachments(
   { inputs, excluded, result }: ReportSubject,
-  { program, version, date, paper, decision = null, compression = compressionMark() }: ReportMaking,
+  making: ReportMaking,
 ): readonly ReportAttachment[] {
+  const { program, version, date, paper, decision = null } = making
+  const { compression = compressionMark(), arithmetic = arithmeticMark() } = making
   const { readings, procedure, companions = [] } = inputs
   const [procedureName, ...names] = attachmentNames([procedure, ...readings, ...companions].map(({ name }) => name))
   const listed = (files: readonly NamedBytes[], from: number): readonly ManifestFile[] =>
@@ -72,6 +75,7 @@ export function reportAttachments(
     excluded: excluded.map(({ wafer, site, reason }) => ({ wafer, site, reason })),
     decision: decision && { ...decision },
     compression,
+    arithmetic,
     readings: listed(readings, 0),
     procedure: { attachment: procedureName, name: procedure.name } satisfies ManifestFile,
     companions: listed(companions, readings.length),
@@ -103,7 +107,7 @@ export function reportContents(attachments: readonly ReadAttachment[]): ReportCo
     used.add(name)
     return bytes
   }
-  const { making, excluded, compression } = manifest
+  const { making, excluded, compression, arithmetic } = manifest
   const opened = ({ attachment, name }: ManifestFile): NamedBytes => ({ name, bytes: bytesOf(attachment) })
   const inputs = {
     readings: manifest.readings.map(opened),
@@ -112,15 +116,16 @@ export function reportContents(attachments: readonly ReadAttachment[]): ReportCo
   }
   const result = textOf(bytesOf(RESULT_NAME))
   if (used.size !== byName.size) throw new PdfFault('a file was added to it')
-  return { ...making, inputs, excluded, result, compression }
+  return { ...making, inputs, excluded, result, compression, arithmetic }
 }
 
 const MAX_MANIFEST_BYTES = 16 * 2 ** 20
 
 interface Manifest {
-  readonly making: Omit<ReportMaking, 'compression'>
+  readonly making: Omit<ReportMaking, 'compression' | 'arithmetic'>
   readonly excluded: readonly Exclusion[]
   readonly compression: string
+  readonly arithmetic: string
   readonly readings: readonly ManifestFile[]
   readonly procedure: ManifestFile
   readonly companions: readonly ManifestFile[]
@@ -143,6 +148,7 @@ function parsedManifest(bytes: Uint8Array | undefined): Manifest {
     making: { program: word(program['name']), version: word(program['version']), date: dateOf(date), paper, decision },
     excluded: list(written['excluded']).map(exclusionOf),
     compression: word(written['compression']),
+    arithmetic: word(written['arithmetic']),
     readings,
     procedure: manifestFile(written['procedure']),
     companions: list(written['companions']).map(manifestFile),
@@ -215,25 +221,4 @@ function textOf(bytes: Uint8Array): string {
 
 function manifestFault(): PdfFault {
   return new PdfFault(`its ${MANIFEST_NAME} is damaged`)
-}
-
-let mark: string | null = null
-
-/**
- * Tells compressors apart. Builds of zlib may pack the same content into different bytes; where the mark is the same, the
- * same report has the same bytes, and where it isn't, reports are compared by what their streams hold.
- */
-export function compressionMark(): string {
-  return (mark ??= createHash('sha256').update(deflateSync(sampleText())).digest('hex').slice(0, 12))
-}
-
-/** 64 kB like readings: numbers, some of them again and again. */
-function sampleText(): Uint8Array {
-  const bytes = new Uint8Array(65_536)
-  let state = 1
-  for (let k = 0; k < bytes.length; k++) {
-    state = (state * 48_271) % 2_147_483_647
-    bytes[k] = k % 9 === 8 ? 44 : k % 3 === 0 ? 48 + (k % 7) : 48 + (state % 10)
-  }
-  return bytes
 }

@@ -23,6 +23,8 @@ export interface CompareOptions {
   readonly limit?: number
   /** Paths that may differ. */
   readonly except?: readonly string[]
+  /** By how much numbers may differ, relative to the larger; absent: not at all. */
+  readonly tolerance?: number
 }
 
 const LISTED = 200
@@ -39,9 +41,9 @@ interface Pair {
   readonly after: unknown
 }
 
-/** Of values as `JSON.parse` makes them. Numbers are equal when their values are, to the last digit. */
+/** Of values as `JSON.parse` makes them. Numbers are equal when their values are, to the last digit unless a tolerance is given. */
 export function compareResults(before: unknown, after: unknown, options: CompareOptions = {}): Comparison {
-  const { limit = LISTED, except = [] } = options
+  const { limit = LISTED, except = [], tolerance = 0 } = options
   const differences: Difference[] = []
   let count = 0
   // A stack of our own: how deep a foreign document goes is not for us to say.
@@ -50,13 +52,19 @@ export function compareResults(before: unknown, after: unknown, options: Compare
     const inside = childrenOf(pair)
     if (inside) {
       for (let k = inside.length - 1; k >= 0; k--) open.push(inside[k])
-    } else if (pair.before !== pair.after && !(except.length > 0 && except.includes(pathOf(pair.step)))) {
+    } else if (!isEqual(pair, tolerance) && !(except.length > 0 && except.includes(pathOf(pair.step)))) {
       count++
       const { before, after } = pair
       if (differences.length < limit) differences.push({ path: pathOf(pair.step), before, after })
     }
   }
   return { differences, count }
+}
+
+function isEqual({ before, after }: Pair, tolerance: number): boolean {
+  if (before === after) return true
+  if (tolerance === 0 || typeof before !== 'number' || typeof after !== 'number') return false
+  return Math.abs(before - after) <= tolerance * Math.max(Math.abs(before), Math.abs(after))
 }
 
 /** In document order; null where the two don't hold the same kind of thing with something inside. */

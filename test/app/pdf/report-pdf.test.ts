@@ -2,7 +2,7 @@ import { deflateSync } from 'node:zlib'
 import { afterEach, describe, expect, it } from 'vitest'
 import { openPdf } from '../../../app/pdf/pdf-file'
 import { readAttachments } from '../../../app/pdf/read-attachments'
-import { compressionMark } from '../../../app/pdf/report-contents'
+import { arithmeticMark, compressionMark } from '../../../app/pdf/making-marks'
 import { resultJson } from '../../../core/analysis/result-json'
 import { CoreError } from '../../../core/problems/problem'
 import { runText } from '../../core/analysis/lots'
@@ -27,6 +27,7 @@ describe('what a report carries', () => {
       excluded: [],
       decision: null,
       compression: compressionMark(),
+      arithmetic: arithmeticMark(),
       readings: [{ attachment: 'TB-0417.csv', name: 'TB-0417.csv' }],
       procedure: { attachment: 'procedure.json', name: 'procedure.json' },
       companions: [],

@@ -97,6 +97,7 @@ describe('a report as it was made', () => {
       result: { differences: [], count: 0 },
       isRewritten: false,
       problems: [],
+      tolerance: 0,
       pages: { how: 'bytes', places: [] },
     })
   })
@@ -354,3 +355,36 @@ describe('a report of a computer that compresses in another way', () => {
     expect(pages.how).toBe('bytes')
   })
 })
+
+describe('a report of an engine that rounds otherwise', () => {
+  const elsewhere = () => makeReport({ ...optionsOf(), arithmetic: 'elsewhere', compression: 'elsewhere' })
+  /** The first number of the kind, moved by a share of itself. */
+  const moved = (content: string, key: string, share: number): string =>
+    content.replace(new RegExp(`"${key}": ([\\d.]+)`), (_, number: string) => `"${key}": ${Number(number) * (1 + share)}`)
+
+  it('is the same to within rounding', async () => {
+    const report = repacked(await elsewhere(), (content) => moved(content, 'mean', 3e-10))
+    expect(await verify(report)).toMatchObject({ isSame: true, tolerance: 1e-7, pages: { how: 'rounding', places: [] } })
+  })
+
+  it('is found out where a number differs by more', async () => {
+    const { isSame, result } = await verify(repacked(await elsewhere(), (content) => moved(content, 'mean', 1e-6)))
+    expect(isSame).toBe(false)
+    expect(result!.differences.map(({ path }) => path)).toEqual(['lot.statistics.mean'])
+  })
+
+  it('may draw a hair beside, and no more', async () => {
+    const nudge = (by: number) => (content: string) =>
+      content.includes('BDC') ? content.replace(/(\d+\.\d+) m\b/, (_, y: string) => `${Number(y) + by} m`) : content
+    expect((await verify(repacked(await elsewhere(), nudge(0.0004)))).isSame).toBe(true)
+    const { isSame, pages } = await verify(repacked(await elsewhere(), nudge(0.5)))
+    expect([isSame, pages.places]).toEqual([false, expect.arrayContaining(['page 1'])])
+  })
+
+  it('is found out where a word of a page was changed', async () => {
+    const edit = (content: string) => (content.includes('BDC') ? content.replace(/<([0-9a-f]{4})/, (found) => found.replace(/.$/, (d) => (d === '0' ? '1' : '0'))) : content)
+    const { isSame, pages } = await verify(repacked(await elsewhere(), edit))
+    expect(isSame).toBe(false)
+    expect(pages.places).toContain('page 1')
+  })
+}) // prettier-ignore
