@@ -1,5 +1,5 @@
 /** Prints how quickly the built window opens, shows a lot's maps after a drop, and stays awake with a very large wafer. */
-import { mkdtemp, readFile, rm } from 'node:fs/promises'
+import { mkdtemp, readdir, readFile, rm, stat } from 'node:fs/promises'
 import { spawn } from 'node:child_process'
 import { once } from 'node:events'
 import { tmpdir } from 'node:os'
@@ -53,8 +53,23 @@ try {
     `${LARGE_SITES} sites, longest halt of the window`,
     large.map(({ longest }) => longest),
   )
+  await printSizes()
 } finally {
   await browser.close()
+}
+
+/** What is read before the first screen, and all else that waits until it is wanted. */
+async function printSizes() {
+  const page = join(ROOT, 'out/renderer')
+  const html = await readFile(join(page, 'index.html'), 'utf8')
+  const first = [...html.matchAll(/(?:src|href)="\.\/(assets\/[^"]+)"/g)].map(([, file]) => file)
+  const all = (await readdir(join(page, 'assets'))).map((file) => `assets/${file}`)
+  const kilobytes = async (files) => {
+    const sizes = await Promise.all(files.map(async (file) => (await stat(join(page, file))).size))
+    return Math.round(sizes.reduce((sum, size) => sum + size, 0) / 1000)
+  }
+  console.log(`read before the first screen: ${await kilobytes(first)} kB in ${first.length} files`)
+  console.log(`read when it is wanted: ${await kilobytes(all.filter((file) => !first.includes(file)))} kB`)
 }
 
 async function addressOf(child) {

@@ -22,6 +22,7 @@ const VIEW_CHECKS: Readonly<Record<string, Check>> = {
   order: oneOf(ORDERS),
   comparison: oneOf(COMPARISONS),
   theme: oneOf(THEMES),
+  hasSingleKeys: isFlag,
   showsContours: isFlag,
   showsSites: isFlag,
   showsDies: isFlag,

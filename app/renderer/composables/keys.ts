@@ -88,6 +88,8 @@ export function useKeys(): void {
   function act(event: KeyboardEvent): boolean {
     if (event.ctrlKey || event.metaKey) return !event.altKey && undoing(event)
     if (event.altKey) return false
+    // Arrows, Enter and Escape stay: they act on what is selected, as anywhere.
+    if (event.key.length === 1 && !view.hasSingleKeys) return false
     if (pageKey(event.key)) return true
     if (!lot.analysis) return event.key === '?' && run(plain['?'])
     const direction = ARROWS[event.key]

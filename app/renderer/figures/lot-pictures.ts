@@ -60,7 +60,7 @@ export function orderedRack(wafers: readonly WaferAnalysis[], order: RackOrder):
 
 /** A map narrower than its figures says too little; a wider one only takes room. */
 const LEAST_PX = 74
-const MOST_PX = 190
+const MOST_PX = 330
 
 /** How many columns make the maps of a rack largest without scrolling; where they can't all be seen, the narrowest. */
 export function rackColumns(count: number, width: number, height: number): number {

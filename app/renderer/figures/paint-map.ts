@@ -113,7 +113,9 @@ function paintSites(context: CanvasRenderingContext2D, model: MapModel, plane: S
   const { places, grid, bands, scale } = model
   const seen = grid.within(plane.window)
   const withDots = seen.length <= MOST_DOTS
-  const size = Math.min(7, Math.max(2.5, 260 / Math.sqrt(Math.max(1, seen.length))))
+  // On a very large screen marks grow with the map.
+  const most = Math.max(7, Math.min(plane.width, plane.height) / 90)
+  const size = Math.min(most, Math.max(2.5, 260 / Math.sqrt(Math.max(1, seen.length))))
   let drawn = 0
   for (const i of seen) {
     const kind = places.kind[i]

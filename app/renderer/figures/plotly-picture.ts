@@ -24,7 +24,7 @@ export function plotlyPicture(figure: CurveFigure, inks: Inks & { readonly accen
       paper_bgcolor: inks.ground,
       plot_bgcolor: inks.ground,
       font: { family: inks.text, size: size_px, color: inks.ink },
-      margin: { l: 76, r: 18, t: 12, b: 56 },
+      margin: { l: 6 * size_px, r: 1.5 * size_px, t: size_px, b: 4.8 * size_px },
       showlegend: false,
       hovermode: 'closest',
       xaxis: axis(figure.x),

@@ -61,12 +61,14 @@ export const useViewStore = defineStore('view', () => {
   const figure = ref('radial')
   const lineAngle_deg = ref(0)
   const theme = ref<Theme>('system')
+  /** Letters and digits alone command something; off for who dictates, or rests a hand on the keys. */
+  const hasSingleKeys = ref(true)
   const dialog = ref<'find' | 'help' | 'exclude' | 'findings' | null>(null)
   /** Asked for from afar, and done by the part that can; a factor of 0 is the whole wafer. */
   const zoomed = shallowRef<{ readonly factor: number } | null>(null)
   const request = ref<'save' | 'print' | null>(null)
   return {
-    page, leaf, trust, gauge, layer, order, showsContours, showsSites, showsDies, comparison, figure, lineAngle_deg, theme, dialog, zoomed,
+    page, leaf, trust, gauge, layer, order, showsContours, showsSites, showsDies, comparison, figure, lineAngle_deg, theme, hasSingleKeys, dialog, zoomed,
     request,
   } // prettier-ignore
 })

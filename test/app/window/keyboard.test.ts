@@ -86,4 +86,23 @@ describe.skipIf(!hasChromium())('the keyboard alone', () => {
       await page.keyboard.press('6')
       await page.getByRole('heading', { name: 'Your decision' }).waitFor()
     }))
+
+  it('leaves single letters alone where a person wants it so', () =>
+    withWindow(browser, { files: lotFiles('TB-0417') }, async (page) => {
+      await lotIsOpen(page)
+      await page.keyboard.press('?')
+      await page.getByRole('checkbox', { name: /by themselves are commands/ }).uncheck()
+      await page.keyboard.press('Escape')
+      await page.getByRole('dialog').waitFor({ state: 'detached' })
+      await page.keyboard.press('3')
+      await page.keyboard.press('n')
+      expect(await page.getByRole('listbox', { name: 'Cassette' }).isVisible()).toBe(true)
+      expect(await page.getByRole('heading', { name: /^Working of/ }).count()).toBe(0)
+      await page.getByRole('button', { name: /Keys/ }).click()
+      await page.getByRole('checkbox', { name: /by themselves are commands/ }).check()
+      await page.keyboard.press('Escape')
+      await page.getByRole('dialog').waitFor({ state: 'detached' })
+      await page.keyboard.press('n')
+      await page.getByRole('heading', { name: /^Working of wafer 07/ }).waitFor()
+    }))
 }) // prettier-ignore
