@@ -1,8 +1,10 @@
 /** The concentration against depth that a wafer's mean sheet resistance implies. */
-import type { WaferAnalysis } from '../../../core/analysis/lot-analysis'
+import type { LotAnalysis, WaferAnalysis } from '../../../core/analysis/lot-analysis'
+import { profileEnd, profileLines } from '../../../core/layer/depth-table'
+import type { DepthTable } from '../../../core/layer/layer-kind'
 import { layerProfile } from '../../../core/layer/profiles/registry'
 import { waferTitle } from '../../../core/report/report-context'
-import { formatConcentration } from '../../../core/units/format'
+import { formatConcentration, formatSignificant } from '../../../core/units/format'
 import type { CurveFigure, CurveRule } from './curves'
 import type { LotPictures } from './lot-pictures'
 
@@ -20,7 +22,7 @@ interface Course {
 /** Null for layers without a profile in depth. */
 export function depthFigure({ analysis }: LotPictures, wafer: WaferAnalysis): CurveFigure | null {
   const peak_cm3 = wafer.means.concentration_cm3
-  const course = peak_cm3 > 0 ? courseOf(analysis.procedure.layer, peak_cm3) : null
+  const course = peak_cm3 > 0 ? courseOf(analysis, peak_cm3) : null
   if (!course) return null
   return {
     title: `Concentration in depth, ${waferTitle(wafer.id).toLowerCase()}`,
@@ -34,8 +36,11 @@ export function depthFigure({ analysis }: LotPictures, wafer: WaferAnalysis): Cu
 
 type Layer = LotPictures['analysis']['procedure']['layer']
 
-function courseOf(layer: Layer, peak_cm3: number): Course | null {
-  if (layer.kind === 'doped-layer' && layer.profile !== 'tabulated') return dopedCourse(layer, peak_cm3)
+function courseOf({ procedure, profile }: LotAnalysis, peak_cm3: number): Course | null {
+  const { layer } = procedure
+  if (layer.kind === 'doped-layer' && layer.profile === 'tabulated')
+    return profile && tabulatedCourse(layer, profile, peak_cm3)
+  if (layer.kind === 'doped-layer') return dopedCourse(layer, peak_cm3)
   if (layer.kind === 'implant') return implantCourse(layer, peak_cm3)
   return null
 }
@@ -54,6 +59,23 @@ function dopedCourse(layer: Extract<Layer, { kind: 'doped-layer' }>, surface_cm3
       { name: `background, ${layer.background.dopant}`, axis: 'y', at: layer.background.concentrationCm3 },
     ],
     words: `${profile.title}: ${profile.formula}; surface concentration`,
+  }
+}
+
+/** The file's points, all by one factor; it ends where it last comes down to the background. */
+function tabulatedCourse(layer: Extract<Layer, { kind: 'doped-layer' }>, table: DepthTable, peak_cm3: number): Course {
+  const lines = profileLines(table)
+  const factor = peak_cm3 / lines.peak_cm3
+  const background_cm3 = layer.background.concentrationCm3
+  const end = profileEnd(lines, Math.log(background_cm3 / peak_cm3))
+  return {
+    depth_um: Array.from(table.depth_um),
+    concentration_cm3: Array.from(table.concentration_cm3, (n) => n * factor),
+    rules: [
+      ...(end.isTableEnd ? [] : [{ name: 'junction', axis: 'x', at: end.depth_um } as const]),
+      { name: `background, ${layer.background.dopant}`, axis: 'y', at: background_cm3 },
+    ],
+    words: `${layer.profileFile ?? 'The profile file'} times ${formatSignificant(factor, 4)}; peak concentration`,
   }
 }
 
