@@ -13,7 +13,7 @@ const ROOT = join(import.meta.dirname, '..')
 /** Inside core a folder imports from itself and from those before it. */
 const CORE_ORDER = [
   'units', 'problems', 'numeric', 'wafer', 'geometry', 'silicon', 'layer', 'conversion', 'statistics', 'map', 'conformity',
-  'ingest', 'procedure', 'analysis', 'report',
+  'ingest', 'procedure', 'gauge', 'check-wafer', 'analysis', 'report',
 ] as const // prettier-ignore
 
 const CORE_PACKAGES = [
@@ -33,7 +33,7 @@ const ROOMS: Readonly<Record<string, { readonly rooms: readonly string[]; readon
   'app/browser': { rooms: ['core', 'app/contract', 'app/host'], npm: ['node'] },
   'app/renderer': {
     rooms: ['core', 'app/contract'],
-    npm: ['vue', 'pinia', 'plotly.js-dist-min', 'plotly.js-cartesian-dist-min'],
+    npm: ['vue', 'pinia', 'plotly.js-dist-min', 'plotly.js-cartesian-dist-min', 'pdfjs-dist'],
   },
 }
 

@@ -79,6 +79,8 @@ const sentences: Sentences = {
   'doubled-site': ({ wafer, site, firstLine }) =>
     `Site ${quote(site)} of wafer ${quote(wafer)} was already read in line ${firstLine}. Remove one of the two, or give them different site names.`,
 
+  'bad-table': ({ line, why }) =>
+    line === undefined ? `This table can't be used: ${ended(why)}` : `This row was left out: ${ended(why)}`,
   'bad-profile': ({ why }) => `The depth profile can't be used: ${ended(why)}`,
 
   'not-json': ({ why }) => `This is no valid JSON: ${ended(why)}`,

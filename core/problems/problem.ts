@@ -5,7 +5,7 @@
  * rows or sites collects problems and goes on with what is good.
  */
 export type Problem =
-  PhysicsProblem | FileProblem | RowProblem | ProfileProblem | ProcedureProblem | AnalysisProblem | OutputProblem
+  PhysicsProblem | FileProblem | RowProblem | ProfileProblem | TableProblem | ProcedureProblem | AnalysisProblem | OutputProblem
 
 /** A broken precondition of one calculation. */
 export type PhysicsProblem =
@@ -97,6 +97,14 @@ export type RowProblem =
 /** A depth profile that the procedure names: the whole file, or one line of it. */
 export interface ProfileProblem {
   readonly kind: 'bad-profile'
+  readonly file: string
+  readonly line?: number
+  readonly why: string
+}
+
+/** A gauge study or a check wafer's history: the whole file, or one line of it. */
+export interface TableProblem {
+  readonly kind: 'bad-table'
   readonly file: string
   readonly line?: number
   readonly why: string

@@ -29,6 +29,7 @@ const examples: { readonly [Kind in ProblemKind]: Extract<Problem, { kind: Kind 
   'not-json': { kind: 'not-json', file: procedure, why: 'line 3, column 5: a comma or a closing } is missing' },
   'unknown-key': { kind: 'unknown-key', file: procedure, key: 'wafer.diametre', nearest: 'wafer.diameterMm', known: ['diameterMm'] },
   'bad-value': { kind: 'bad-value', file: procedure, key: 'wafer.shape', found: '"disk"', allowed: '"disc" or "rectangle"' },
+  'bad-table': { kind: 'bad-table', file: 'gauge.csv', line: 9, why: 'an occasion has at least one reading' },
   'bad-profile': { kind: 'bad-profile', file: 'tb-0417-profile.csv', line: 7, why: 'it has two points' },
   'missing-file': { kind: 'missing-file', file: procedure, key: 'layer.profileFile', name: 'tb-0417-profile.csv' },
   'missing-key': { kind: 'missing-key', file: procedure, key: 'layer.depthUm', why: 'the dopant is spread down to the junction' },

@@ -1,0 +1,157 @@
+import { readFileSync } from 'node:fs'
+import { join } from 'node:path'
+import { describe, expect, it } from 'vitest'
+import { checkHistory, standingAt } from '../../../core/check-wafer/check'
+import { checkObject } from '../../../core/check-wafer/check-object'
+import { readHistory, type CheckHistory } from '../../../core/check-wafer/history'
+import { movingAverage } from '../../../core/check-wafer/moving-average'
+import { brokenRules } from '../../../core/check-wafer/run-rules'
+import { CHECK_WAFER_137, EWMA_EXAMPLE } from '../../reference/nist-gauge-study'
+
+const NIST = join(import.meta.dirname, '..', '..', 'reference', 'nist')
+const fileOf = (text: string) => ({ name: 'check.csv', bytes: new TextEncoder().encode(text), sha256: '' })
+
+function historyOf(text: string): CheckHistory {
+  const { history, problems } = readHistory(fileOf(text))
+  expect(problems).toEqual([])
+  return history!
+}
+
+describe('check wafer 137 with probe 2362 (NIST/SEMATECH e-Handbook 2.6.2)', () => {
+  const history = historyOf(readFileSync(join(NIST, 'check-wafer-137.csv'), 'utf8'))
+  const result = checkHistory(history)
+
+  it('has the published limits', () => {
+    const { limits } = result
+    const near = (value: number, printed: { value: number; half: number }): void => expect(Math.abs(value - printed.value)).toBeLessThanOrEqual(printed.half)
+    near(limits.centerLine, CHECK_WAFER_137.centerLine)
+    near(limits.lowerLimit, CHECK_WAFER_137.lowerLimit)
+    near(limits.upperLimit, CHECK_WAFER_137.upperLimit)
+    near(limits.standardDeviation, CHECK_WAFER_137.standardDeviation)
+    near(limits.repeatability!, CHECK_WAFER_137.repeatability)
+    near(limits.precisionUpperLimit!, CHECK_WAFER_137.precisionUpperLimit)
+    expect([limits.degreesOfFreedom, limits.repeatabilityDegreesOfFreedom]).toEqual([24, 125])
+  })
+
+  it('finds the two values and the two spreads outside (recomputed from the data)', () => {
+    const outside = (chart: string) => result.alarms.filter((alarm) => alarm.chart === chart && alarm.rule === 'outside-limits').map(({ value }) => value)
+    expect(outside('value').sort()).toEqual([97.014, 97.016])
+    expect(outside('precision').sort()).toEqual([0.116, 0.117])
+  })
+
+  it('takes the occasions in the order of time, which is not that of the file', () => {
+    expect([...history.order]).not.toEqual([...history.order].sort((a, b) => a - b))
+    const times = [...history.order].map((row) => history.when[row])
+    expect(times).toEqual([...times].sort())
+  })
+
+  it('is written whole', () => {
+    const object = checkObject(result) as Record<string, unknown>
+    for (const key of ['centerLine', 'lowerLimit', 'upperLimit', 'precisionUpperLimit', 'alarms']) expect(object).toHaveProperty(key)
+    expect(JSON.stringify(object)).not.toContain('NaN')
+  })
+}) // prettier-ignore
+
+describe('the moving average', () => {
+  const rows = readFileSync(join(NIST, 'handbook-ewma.csv'), 'utf8').trim().split('\n').slice(2).map((row) => row.split(',').map(Number))
+  const values = rows.map(([, y]) => y)
+
+  it('is the published one (e-Handbook 6.3.2.4)', () => {
+    const { average, steadyLower, steadyUpper } = movingAverage({ values, ...EWMA_EXAMPLE })
+    rows.forEach(([, , printed], i) => expect(Math.abs(average[i] - printed)).toBeLessThanOrEqual(0.00501))
+    // The page truncates the factor root(0.3/1.7) = 0.42008 to 0.4201 and so prints 52.5884 and 47.4115.
+    expect(Math.abs(steadyUpper - EWMA_EXAMPLE.upper)).toBeLessThan(2e-4)
+    expect(Math.abs(steadyLower - EWMA_EXAMPLE.lower)).toBeLessThan(2e-4)
+  })
+
+  it('begins with the limits of a single value times lambda, and widens to the steady ones', () => {
+    const { lower, upper, steadyUpper } = movingAverage({ values, ...EWMA_EXAMPLE })
+    expect(upper[0] - 50).toBeCloseTo(3 * 2.0539 * 0.3, 12)
+    expect(50 - lower[0]).toBeCloseTo(upper[0] - 50, 12)
+    upper.forEach((limit, i) => expect(limit).toBeGreaterThan(i === 0 ? 50 : upper[i - 1]))
+    expect(upper[19]).toBeCloseTo(steadyUpper, 3)
+  })
+
+  it('with lambda 1 is the values and their own limits', () => {
+    const { average, upper } = movingAverage({ values, centre: 50, standardDeviation: 2, lambda: 1, width: 3 })
+    expect([...average]).toEqual(values)
+    expect(new Set(upper)).toEqual(new Set([56]))
+  })
+}) // prettier-ignore
+
+describe('the run rules', () => {
+  const last = (scores: number[]) => brokenRules(scores).at(-1)
+  it.each([
+    ['a point beyond three', [0, 3.1], ['beyond-3-sigma']],
+    ['on either side', [0, -3.1], ['beyond-3-sigma']],
+    ['two of three beyond two', [2.1, 0, 2.2], ['2-of-3-beyond-2-sigma']],
+    ['not on both sides', [2.1, 0, -2.2], []],
+    ['four of five beyond one', [-1.1, -1.2, 0.5, -1.3, -1.4], ['4-of-5-beyond-1-sigma']],
+    ['eight on one side', [0.1, 0.3, 0.2, 0.4, 0.1, 0.3, 0.2, 0.4], ['8-on-one-side']],
+    ['seven are none', [0.1, 0.3, 0.2, 0.4, 0.1, 0.3, 0.2], []],
+    ['six rising', [-0.5, -0.3, -0.1, 0.1, 0.3, 0.5], ['6-rising-or-falling']],
+    ['six falling', [0.5, 0.3, 0.1, -0.1, -0.3, -0.5], ['6-rising-or-falling']],
+    ['fourteen in turn', Array.from({ length: 14 }, (_, k) => (k % 2 ? 0.5 : -0.5)), ['14-alternating']],
+  ])('%s', (_, scores, broken) => expect(last(scores)).toEqual(broken))
+
+  it('alarm for a sound process about as often as their theory says: beyond three sigma once in 370', () => {
+    let state = 12345
+    const uniform = (): number => (state = (state * 48271) % 2147483647) / 2147483647
+    const scores = Array.from({ length: 40_000 }, () => Math.sqrt(-2 * Math.log(uniform())) * Math.cos(2 * Math.PI * uniform()))
+    const beyond = scores.filter((score) => Math.abs(score) > 3).length
+    expect(brokenRules(scores.slice(0, 4000)).filter((rules) => rules.includes('beyond-3-sigma')).length).toBe(scores.slice(0, 4000).filter((s) => Math.abs(s) > 3).length)
+    // Two-sided normal tail, 0.0027: 108 of 40,000 with a standard deviation of 10.
+    expect(Math.abs(beyond - 108)).toBeLessThan(42)
+  })
+}) // prettier-ignore
+
+describe('a history', () => {
+  const made = (values: readonly number[]): string =>
+    ['time,wafer,probe,value,standard_deviation,count', ...values.map((v, k) => `2026-03-${String(k + 1).padStart(2, '0')}T08:00:00Z,C1,P7,${v},0.05,6`)].join('\n')
+  const steady = [90.02, 89.97, 90.05, 89.99, 90.01, 89.95, 90.03, 89.98, 90.04, 89.96]
+
+  it('judges later occasions by the baseline, and says from when a lot is doubtful', () => {
+    const result = checkHistory(historyOf(made([...steady, 90.2, 90.25, 90.0])), { baseline: 10 })
+    const day = (n: number, hour = 12) => Date.UTC(2026, 2, n, hour)
+    expect(result.limits.baseline).toBe(10)
+    expect(new Set(result.alarms.filter(({ chart }) => chart === 'value').map(({ index }) => index))).toEqual(new Set([11, 12]))
+    expect(standingAt(result, day(10)).state).toBe('in-control')
+    expect(standingAt(result, day(11))).toMatchObject({ state: 'alarm', index: 11, byTime: true })
+    expect(standingAt(result, day(12))).toMatchObject({ state: 'alarm', index: 12 })
+    expect(standingAt(result, Date.UTC(2026, 1, 1)).state).toBe('before-history')
+    expect(standingAt(result, NaN)).toMatchObject({ index: 13, byTime: false })
+  })
+
+  it('holds an accepted value in place of the mean', () => {
+    const { limits, alarms } = checkHistory(historyOf(made(steady)), { accepted: 90.2 })
+    expect([limits.centerLine, limits.isAccepted]).toEqual([90.2, true])
+    expect(alarms.length).toBeGreaterThan(5)
+  })
+
+  it('does without standard deviations, and without times', () => {
+    const { limits } = checkHistory(historyOf(['value', ...steady].join('\n')))
+    expect([limits.precisionUpperLimit, limits.repeatability]).toEqual([null, null])
+  })
+
+  it('tells values that hang on their neighbours', () => {
+    const drifting = Array.from({ length: 30 }, (_, k) => 90 + 0.01 * k + (k % 3) * 0.001)
+    expect(checkHistory(historyOf(['value', ...drifting].join('\n'))).autocorrelation).toBeGreaterThan(0.7)
+  })
+
+  it.each([
+    ['three occasions', ['value', 90, 91, 92], /3 occasions make no limits/],
+    ['values all the same', ['value', 90, 90, 90, 90, 90], /all the same/],
+  ])('refuses %s', (_, rows, why) => {
+    expect(() => checkHistory(historyOf(rows.join('\n')))).toThrow(expect.objectContaining({ problem: expect.objectContaining({ why: expect.stringMatching(why) as string }) as object }))
+  })
+
+  it.each([
+    ['garbage', 'a;b\n1;2', /no line of it names/],
+    ['two wafers', 'wafer,value\n1,90\n2,91', /several wafers/],
+    ['a negative spread', 'value,sd\n90,-1', /negative/],
+  ])('is not %s', (_, text, why) => {
+    const { history, problems } = readHistory(fileOf(text))
+    expect(history).toBeNull()
+    expect(problems[0].why).toMatch(why)
+  })
+}) // prettier-ignore
