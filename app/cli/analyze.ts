@@ -3,11 +3,11 @@ import { parseArgs } from 'node:util'
 import type { LotAnalysis } from '../../core/analysis/lot-analysis'
 import { resultJson } from '../../core/analysis/result-json'
 import { run } from '../../core/analysis/run'
-import { explain } from '../../core/problems/explain'
-import { CoreError, type Problem } from '../../core/problems/problem'
+import { CoreError } from '../../core/problems/problem'
 import { parseTime } from '../../core/ingest/parse-time'
 import { lotTable } from './lot-table'
 import { ARTIFACTS, outputFiles, type Artifact } from './output-files'
+import { printProblems } from './print-problems'
 import { readCompanions } from './read-companions'
 import { readInput } from './read-inputs'
 import { PROGRAM, VERSION } from './version'
@@ -35,7 +35,7 @@ export async function analyzeLot(options: AnalyzeOptions): Promise<number> {
   const readings = await Promise.all(options.files.map(readInput))
   const companions = await readCompanions(options.procedure, procedure)
   const { analysis, problems } = run({ readings, procedure, companions })
-  printProblems(problems, options.output === 'none')
+  if (options.output !== 'none') printProblems(problems, ', all listed in result.json')
   if (!analysis) {
     console.error('Nothing was analysed and nothing written.')
     return EXIT.notAnalysed
@@ -56,15 +56,6 @@ function print(analysis: LotAnalysis, { output, out, write }: AnalyzeOptions): v
       ? '\nNothing written: no folder was given (--out DIR).'
       : `\nWritten to ${out}: ${write.map((id) => ARTIFACTS[id]).join(', ')}`,
   )
-}
-
-/** More of one kind than this are counted, not listed; result.json lists them all. */
-const LISTED = 12
-
-function printProblems(problems: readonly Problem[], quiet: boolean): void {
-  if (quiet) return
-  for (const problem of problems.slice(0, LISTED)) console.error(`! ${explain(problem)}`)
-  if (problems.length > LISTED) console.error(`! ... and ${problems.length - LISTED} more, all listed in result.json`)
 }
 
 function parseOptions(args: readonly string[]): AnalyzeOptions {

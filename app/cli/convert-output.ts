@@ -4,6 +4,7 @@ import type { Conversion, ConversionStep, TemperatureRow } from '../../core/conv
 import { celsius } from '../../core/conversion/silicon-steps'
 import { INTRINSIC_DENSITY_RANGE_K } from '../../core/silicon/intrinsic-density'
 import { NO_VALUE } from '../../core/units/format'
+import { aligned } from './text-table'
 
 /** The object of `--json`; its keys stay, in this order. The resistance stands only where a resistor was described. */
 export function conversionJson(conversion: Conversion, { isResistor }: { readonly isResistor: boolean }): string {
@@ -100,11 +101,4 @@ function temperatureLines(rows: readonly TemperatureRow[], model: string): reado
 
 function cellOf(value: number | null, unit: string): string {
   return value === null ? NO_VALUE : calculated(value, unit)
-}
-
-/** Columns of one width, to the right where it is said. */
-function aligned(rows: readonly (readonly string[])[], toRight: readonly boolean[]): readonly string[] {
-  const widths = toRight.map((_, column) => Math.max(...rows.map((row) => row[column].length)))
-  const pad = (cell: string, at: number) => (toRight[at] ? cell.padStart(widths[at]) : cell.padEnd(widths[at]))
-  return rows.map((row) => row.map(pad).join('  ').trimEnd())
 }

@@ -1,5 +1,6 @@
 import type { LotAnalysis, WaferAnalysis } from '../../core/analysis/lot-analysis'
 import { formatFixed, formatSignificant } from '../../core/units/format'
+import { aligned } from './text-table'
 
 /** The lot as a short table for a terminal: its sentence, a row a wafer, a row for the lot, the reasons. */
 export function lotTable(analysis: LotAnalysis): string {
@@ -32,7 +33,8 @@ export function lotTable(analysis: LotAnalysis): string {
     '',
     lot.verdict,
   ]
-  const table = aligned([header, ...rows, lotRow])
+  const toRight = header.map((_, column) => column > 0 && column < header.length - 1)
+  const table = aligned([header, ...rows, lotRow], toRight)
   const rule = '-'.repeat(Math.max(...table.map((line) => line.length)))
   const [head, ...body] = table
   return [
@@ -67,17 +69,3 @@ function waferRow(wafer: WaferAnalysis, hasDies: boolean): string[] {
 
 const four = (value: number): string => formatSignificant(value, 4)
 const two = (value: number): string => formatFixed(value, 2)
-
-/** First and last column to the left, the rest to the right. */
-function aligned(rows: readonly (readonly string[])[]): string[] {
-  const widths = rows[0].map((_, column) => Math.max(...rows.map((row) => row[column].length)))
-  const last = widths.length - 1
-  return rows.map((row) =>
-    row
-      .map((cell, column) =>
-        column === 0 || column === last ? cell.padEnd(widths[column]) : cell.padStart(widths[column]),
-      )
-      .join('  ')
-      .trimEnd(),
-  )
-}

@@ -1,4 +1,6 @@
 #!/usr/bin/env node
+import { checkCommand, CHECK_USAGE } from './check'
+import { gaugeCommand, GAUGE_USAGE } from './gauge'
 import { explain } from '../../core/problems/explain'
 import { CoreError } from '../../core/problems/problem'
 import { CONVERT_USAGE, convertCommand } from './convert'
@@ -37,6 +39,8 @@ const commands: Record<string, Command> = {
   analyze: { run: async (args) => (await import('./analyze')).analyzeCommand(args), usage: ANALYZE_USAGE },
   verify: { run: async (args) => (await import('./verify')).verifyCommand(args), usage: VERIFY_USAGE },
   convert: { run: convertCommand, usage: CONVERT_USAGE },
+  gauge: { run: gaugeCommand, usage: GAUGE_USAGE },
+  check: { run: checkCommand, usage: CHECK_USAGE },
   sites: { run: sitesCommand, usage: SITES_USAGE },
 }
 

@@ -30,9 +30,10 @@ export function checkObject({ history, options, limits, average, alarms, autocor
     },
     autocorrelation,
     inControl: isInControl,
-    alarms: alarms.map(({ index, when, time_ms, chart, rule, value, sentence, nextStep }) => ({
+    alarms: alarms.map(({ index, place, when, time_ms, chart, rule, value, sentence, nextStep }) => ({
       index,
-      line: history.line[order[index - 1]],
+      place,
+      line: history.line[index - 1],
       when,
       time: Number.isNaN(time_ms) ? null : new Date(time_ms).toISOString(),
       chart,

@@ -8,10 +8,10 @@ export const CHECK_SOURCE =
   'NIST/SEMATECH e-Handbook of Statistical Methods 2.6.2 (check wafer), 6.3.2 (run rules), 6.3.2.4 (moving average)'
 
 export interface CheckAlarm {
-  /** Place in the order of time, from 1. */
+  /** Row of the file, from 1. */
   readonly index: number
-  /** Row of the history's columns. */
-  readonly row: number
+  /** Place in the order of time, from 1. */
+  readonly place: number
   readonly when: string
   readonly time_ms: number
   readonly chart: 'value' | 'precision' | 'moving-average' | 'run'
@@ -46,7 +46,7 @@ export function checkHistory(history: CheckHistory, given: ChartOptions = {}): C
   const average = movingAverage({ values, centre, standardDeviation, lambda, width })
   const rules = brokenRules(values.map((value) => (value - centre) / standardDeviation))
   const alarms = order.flatMap((row, k) => alarmsAt({ history, limits, average, rules: rules[k], row, k }))
-  const isInControl = !alarms.some(({ index }) => index === order.length)
+  const isInControl = !alarms.some(({ place }) => place === order.length)
   return { history, options, limits, average, alarms, autocorrelation: lagOne(values), isInControl }
 }
 
@@ -66,7 +66,7 @@ const LOOK_AT_TIP =
 const LOOK_BACK = 'Look for what changed since the run began, such as a probe, a calibration or the room, and at the lots measured meanwhile.' // prettier-ignore
 
 function alarmsAt({ history, limits, average, rules, row, k }: Occasion): CheckAlarm[] {
-  const place = { index: k + 1, row, when: history.when[row], time_ms: history.time_ms[row] }
+  const place = { index: row + 1, place: k + 1, when: history.when[row], time_ms: history.time_ms[row] }
   const { lowerLimit, upperLimit, precisionUpperLimit } = limits
   const value = history.value[row]
   const spread = history.standardDeviation[row]
@@ -107,7 +107,7 @@ function lagOne(values: readonly number[]): number {
 export interface StandingCheck {
   readonly state: 'in-control' | 'alarm' | 'before-history'
   /** Place in the order of time, from 1, of the last occasion that counts; 0 for none. */
-  readonly index: number
+  readonly place: number
   readonly when: string
   /** Of that occasion. */
   readonly alarms: readonly CheckAlarm[]
@@ -122,8 +122,8 @@ export interface StandingCheck {
 export function standingAt({ history, alarms }: CheckResult, time_ms: number): StandingCheck {
   const order = [...history.order]
   const byTime = !Number.isNaN(time_ms) && order.every((row) => !Number.isNaN(history.time_ms[row]))
-  const index = byTime ? order.filter((row) => history.time_ms[row] <= time_ms).length : order.length
-  if (index === 0) return { state: 'before-history', index, when: '', alarms: [], byTime }
-  const own = alarms.filter((alarm) => alarm.index === index)
-  return { state: own.length > 0 ? 'alarm' : 'in-control', index, when: history.when[order[index - 1]], alarms: own, byTime }
+  const place = byTime ? order.filter((row) => history.time_ms[row] <= time_ms).length : order.length
+  if (place === 0) return { state: 'before-history', place, when: '', alarms: [], byTime }
+  const own = alarms.filter((alarm) => alarm.place === place)
+  return { state: own.length > 0 ? 'alarm' : 'in-control', place, when: history.when[order[place - 1]], alarms: own, byTime }
 } // prettier-ignore

@@ -37,6 +37,8 @@ describe('check wafer 137 with probe 2362 (NIST/SEMATECH e-Handbook 2.6.2)', () 
     const outside = (chart: string) => result.alarms.filter((alarm) => alarm.chart === chart && alarm.rule === 'outside-limits').map(({ value }) => value)
     expect(outside('value').sort()).toEqual([97.014, 97.016])
     expect(outside('precision').sort()).toEqual([0.116, 0.117])
+    // Rows of the file: 6, 8 and 20.
+    expect(new Set(result.alarms.map(({ index }) => index))).toEqual(new Set([6, 8, 20]))
   })
 
   it('takes the occasions in the order of time, which is not that of the file', () => {
@@ -116,10 +118,10 @@ describe('a history', () => {
     expect(result.limits.baseline).toBe(10)
     expect(new Set(result.alarms.filter(({ chart }) => chart === 'value').map(({ index }) => index))).toEqual(new Set([11, 12]))
     expect(standingAt(result, day(10)).state).toBe('in-control')
-    expect(standingAt(result, day(11))).toMatchObject({ state: 'alarm', index: 11, byTime: true })
-    expect(standingAt(result, day(12))).toMatchObject({ state: 'alarm', index: 12 })
+    expect(standingAt(result, day(11))).toMatchObject({ state: 'alarm', place: 11, byTime: true })
+    expect(standingAt(result, day(12))).toMatchObject({ state: 'alarm', place: 12 })
     expect(standingAt(result, Date.UTC(2026, 1, 1)).state).toBe('before-history')
-    expect(standingAt(result, NaN)).toMatchObject({ index: 13, byTime: false })
+    expect(standingAt(result, NaN)).toMatchObject({ place: 13, byTime: false })
   })
 
   it('holds an accepted value in place of the mean', () => {
