@@ -182,7 +182,69 @@ function startingWaferLot() {
   return lines.join('\r\n') + '\r\n'
 }
 
-const files = { 'TB-0417.csv': implantMonitorLot(), 'TB-0522.csv': startingWaferLot() }
+/**
+ * Two probes on four wafers in two runs of five days, four readings an occasion. Put in: 0.10 ohm/sq from reading to
+ * reading, 0.06 from day to day, 0.05 from run to run, and probe P7 reading 0.08 above probe P6.
+ */
+function gaugeStudy() {
+  const { normal } = dice(31)
+  const rows = [
+    `# ${MADE_BY}`,
+    '# line: Tern Bay pilot line, gauge study of station 2',
+    '',
+    'wafer,probe,run,day,operator,sheet_resistance_ohm_sq',
+  ]
+  for (const [wafer, level] of [
+    ['G1', 91.8],
+    ['G2', 92.4],
+    ['G3', 90.9],
+    ['G4', 93.1],
+  ]) {
+    for (const [probe, bias] of [
+      ['P6', -0.04],
+      ['P7', 0.04],
+    ]) {
+      for (const run of [1, 2]) {
+        const ofRun = 0.05 * normal()
+        for (let day = 1; day <= 5; day++) {
+          const ofDay = 0.06 * normal()
+          const date = `2026-0${run + 1}-${String(2 + 3 * day).padStart(2, '0')}`
+          for (let k = 0; k < 4; k++) {
+            const value = level + bias + ofRun + ofDay + 0.1 * normal()
+            rows.push([wafer, probe, run, date, day % 2 ? 'night shift' : 'day shift', value.toFixed(3)].join(','))
+          }
+        }
+      }
+    }
+  }
+  return rows.join('\n') + '\n'
+}
+
+/** One check wafer, twice a week, six readings each; from the 25th occasion on the prober reads 0.03 higher each time. */
+function checkWafer() {
+  const { normal } = dice(77)
+  const rows = [
+    `# ${MADE_BY}`,
+    '# line: Tern Bay pilot line, check wafer of station 2',
+    '',
+    'time,wafer,probe,sheet_resistance_ohm_sq,standard_deviation,count',
+  ]
+  const start = Date.UTC(2025, 10, 24, 5, 30)
+  for (let k = 0; k < 32; k++) {
+    const time = new Date(start + (k * 3.5 * 24 * 3600 + 420 * (k % 5)) * 1000).toISOString().replace('.000Z', 'Z')
+    const drift = k >= 25 ? 0.03 * (k - 24) : 0
+    const spread = 0.1 * Math.sqrt([...Array(5)].reduce((sum) => sum + normal() ** 2, 0) / 5)
+    rows.push([time, 'C1', 'P7', (92.04 + 0.05 * normal() + drift).toFixed(3), spread.toFixed(3), 6].join(','))
+  }
+  return rows.join('\n') + '\n'
+}
+
+const files = {
+  'TB-0417.csv': implantMonitorLot(),
+  'TB-0522.csv': startingWaferLot(),
+  'station-2-gauge-study.csv': gaugeStudy(),
+  'station-2-check-wafer.csv': checkWafer(),
+}
 
 if (process.argv.includes('--check')) {
   const stale = Object.keys(files).filter((name) => readFileSync(new URL(name, here), 'utf8') !== files[name])

@@ -1,5 +1,5 @@
 /** `persquare check`: the history of a check wafer. */
-import { checkHistory, type CheckResult } from '../../core/check-wafer/check'
+import { alarmedOccasions, checkHistory, type CheckResult } from '../../core/check-wafer/check'
 import { checkObject } from '../../core/check-wafer/check-object'
 import { checkWords, decimalsFor } from '../../core/check-wafer/check-words'
 import { readHistory } from '../../core/check-wafer/history'
@@ -57,12 +57,18 @@ function widthOf(text: string): number {
 }
 
 function checkText(result: CheckResult): string {
-  const { alarms, limits } = result
+  const { limits } = result
   const decimals = decimalsFor(limits.standardDeviation)
-  const number = ({ chart, value }: CheckResult['alarms'][number]): string =>
-    chart === 'precision' ? formatSignificant(value, 3) : formatFixed(value, decimals)
-  const rows = alarms.map((alarm) => [String(alarm.index), alarm.when, number(alarm), alarm.sentence])
-  const table = aligned([['row', 'when', 'value', 'alarm'], ...rows], [true, false, true, false])
-  const steps = [...new Set(alarms.map(({ nextStep }) => nextStep))]
+  const occasions = alarmedOccasions(result)
+  const rows = occasions.flatMap(({ index, when, value, standardDeviation, alarms }) =>
+    alarms.map(({ sentence }, k) =>
+      k === 0
+        ? [String(index), when, formatFixed(value, decimals), formatSignificant(standardDeviation, 3), sentence]
+        : ['', '', '', '', sentence],
+    ),
+  )
+  const toRight = [true, false, true, true, false]
+  const table = aligned([['row', 'when', 'value', 's', 'alarm'], ...rows], toRight)
+  const steps = [...new Set(occasions.flatMap(({ nextSteps }) => nextSteps))]
   return [...checkWords(result), ...(rows.length > 0 ? ['', ...table, '', ...steps] : []), ''].join('\n')
 }

@@ -1,4 +1,5 @@
 /** The one pipeline: readings and a procedure to everything that is shown of a lot. */
+import type { CheckResult } from '../check-wafer/check'
 import { fillConformanceProbability } from '../conformity/conformance-probability'
 import { judgeLot } from '../conformity/judge-lot'
 import { fillVerdicts } from '../conformity/judge-sites'
@@ -6,6 +7,7 @@ import type { WaferLimits } from '../conformity/judge-wafer'
 import type { Limits } from '../conformity/limits'
 import { lotSentence } from '../conformity/lot-sentence'
 import { verdictCode } from '../conformity/verdict'
+import type { GaugeStudy } from '../gauge/gauge-study'
 import type { DepthProfile } from '../ingest/read-profile'
 import type { Readings } from '../ingest/readings'
 import { CoreError, type Problem } from '../problems/problem'
@@ -15,6 +17,7 @@ import { componentsOfVariance } from '../statistics/components-of-variance'
 import { summarize } from '../statistics/summarize'
 import { isUsable } from '../wafer/die-grid'
 import type { Outline } from '../wafer/outline'
+import { checkOfLot, checkProblems } from './check-of-lot'
 import { correct, type Corrections } from './corrections'
 import { analyzeDies } from './dies'
 import { exclusionNotes, flagExcluded, type Exclusion } from './exclusions'
@@ -31,6 +34,7 @@ import { judgedQuantity, limitsOn } from './quantity'
 import { siteColumns } from './site-columns'
 import { sitePositions, type SitePositions } from './site-positions'
 import { contributions, propagate } from './uncertainty'
+import { repeatabilityOf, type Repeatability } from './repeatability'
 import { ratios } from './v-over-i'
 import { analyzeWafer, waferMembers, type WaferMembers } from './wafers'
 
@@ -46,6 +50,9 @@ export interface AnalysisInput {
   readonly excluded?: readonly Exclusion[]
   /** The depth profile that the procedure of a tabulated layer names. */
   readonly profile?: DepthProfile | null
+  /** The gauge study and the check wafer's history that it names. */
+  readonly gauge?: GaugeStudy | null
+  readonly check?: CheckResult | null
   readonly watch?: Watch
 }
 
@@ -56,10 +63,10 @@ export interface AnalysisInput {
  * that is missing); whatever is wrong with single sites is in the result
  */
 export function analyze(input: AnalysisInput): LotAnalysis {
-  const { readings, procedure, defaults, problems, notes, excluded = [], profile = null, watch } = input
+  const { readings, procedure, defaults, problems, notes, excluded = [], profile = null, gauge = null, watch } = input
   const enter = (stage: Stage): void => watch?.({ stage, share: 0, rows: readings.count })
   enter('correcting')
-  const measured = measure(readings, procedure, profile)
+  const measured = measure(readings, procedure, profile, gauge)
   const { sites, positions, outline, quantity } = measured
   const unmatched = flagExcluded(readings, excluded, sites.flags)
   const limits = limitsOn(quantity, procedure)
@@ -69,8 +76,10 @@ export function analyze(input: AnalysisInput): LotAnalysis {
   const dies = analyzeDies(procedure, outline, positions, inReadingOrder(members), sites, limits.site)
   enter('judging')
   const { wafers, lot } = judgeWafersAndLot({ readings, procedure, measured, limits, members, outliers, dies })
+  const check = input.check ? checkOfLot(input.check, readings) : null
   const found = [
     ...unmatched,
+    ...checkProblems(check),
     ...readingProblems({ readings, procedure, positions, outline, sites, quantity }),
     ...flagProblems(readings, sites.flags),
   ]
@@ -79,6 +88,9 @@ export function analyze(input: AnalysisInput): LotAnalysis {
     defaults,
     readings,
     profile,
+    gauge,
+    check,
+    repeatability: measured.repeatability,
     outline,
     quantity,
     sites,
@@ -90,7 +102,7 @@ export function analyze(input: AnalysisInput): LotAnalysis {
     notes: [
       ...notes,
       ...exclusionNotes(excluded),
-      ...analysisNotes({ readings, procedure, profile, ...measured, dies }),
+      ...analysisNotes({ readings, procedure, profile, gauge, check, ...measured, dies }),
     ],
   }
 }
@@ -102,10 +114,16 @@ interface Measured {
   readonly corrections: Corrections
   readonly quantity: Quantity
   readonly sites: SiteColumns
+  readonly repeatability: Repeatability | null
 }
 
 /** Every site's result with its uncertainty and flags; verdicts and probabilities are still to be filled. */
-function measure(readings: Readings, procedure: Procedure, profile: DepthProfile | null): Measured {
+function measure(
+  readings: Readings,
+  procedure: Procedure,
+  profile: DepthProfile | null,
+  gauge: GaugeStudy | null,
+): Measured {
   requireWhatReadingsNeed(readings, procedure)
   const flags = new Uint32Array(readings.count)
   const positions = sitePositions(readings, procedure)
@@ -114,11 +132,13 @@ function measure(readings: Readings, procedure: Procedure, profile: DepthProfile
   const layer = prepareLayer(procedure, profile)
   const corrections = correct(readings, procedure, setUp, positions, vOverI, flags)
   const inverted = layerResults(procedure, layer, corrections, flags)
-  const relative = propagate(contributions(procedure, profile, corrections, flags), inverted, readings.count)
+  const repeatability = procedure.uncertainty.repeatabilityRel === 'readings' ? repeatabilityOf(readings) : null
+  const parts = contributions({ procedure, profile, corrections, readings, flags, repeatability, gauge })
+  const relative = propagate(parts, inverted, readings.count)
   const quantity = judgedQuantity(procedure, readings)
   const sites = siteColumns({ corrections, layer: inverted, relative, quantity, flags })
   flagUncounted(sites.value, positions, setUp.outline, procedure, flags)
-  return { positions, setUp, outline: setUp.outline, corrections, quantity, sites }
+  return { positions, setUp, outline: setUp.outline, corrections, quantity, sites, repeatability }
 }
 
 /** Outliers are sought among what counts; where the procedure leaves them out, what counts is then fewer. */

@@ -35,6 +35,8 @@ export interface Slopes {
   readonly temperature_per_C: Float64Array
   readonly diameter_per_mm: Float64Array
   readonly position_per_mm: Float64Array
+  /** null where the direction counts as exact, or cancels. */
+  readonly orientation_per_deg: Float64Array | null
 }
 
 /** Beyond this a product of factors, or the dual relation near an edge, is flagged. */
@@ -50,10 +52,43 @@ export function correct(
   vOverI: VOverI,
   flags: Uint32Array,
 ): Corrections {
-  const reported = takeReported(readings, procedure, vOverI.a_ohm, flags)
-  const geometry = thinSheet(readings.count, setUp, positions)
-  const thickness = thicknessOf(setUp, procedure)
+  const values = correctedValues(readings, procedure, setUp, positions, vOverI, flags)
+  const { geometry, thickness, dual, temperature, reported, sheetResistance_ohm_sq } = values
   flagDomains(geometry, setUp, positions, procedure, flags)
+  return {
+    vOverI,
+    geometryFactor: geometry.factor,
+    thickness,
+    temperature,
+    reported,
+    sheetResistance_ohm_sq,
+    thicknessSlope: thickness.dLnRatio,
+    slopes: slopesOf(geometry, thicknessSpacingSlopes(setUp, procedure), dual, temperature),
+  }
+}
+
+export interface CorrectedValues {
+  readonly geometry: ThinSheetColumns
+  readonly thickness: ThicknessFactor
+  readonly dual: DualColumns | null
+  readonly temperature: TemperatureCorrection
+  readonly reported: ReportedValues | null
+  readonly sheetResistance_ohm_sq: Float64Array
+}
+
+/** The values alone, without where they hold and how each component moves them. */
+export function correctedValues(
+  readings: Readings,
+  procedure: Procedure,
+  setUp: MeasuringSetUp,
+  positions: SitePositions | null,
+  vOverI: VOverI,
+  flags: Uint32Array,
+): CorrectedValues {
+  const reported = takeReported(readings, procedure, vOverI.a_ohm, flags)
+  const withAngle = procedure.uncertainty.orientationDeg > 0
+  const geometry = thinSheet(readings.count, setUp, positions, withAngle)
+  const thickness = thicknessOf(setUp, procedure)
   const dual = setUp.isDual && vOverI.b_ohm ? dualColumns(vOverI, flags) : null
   const sheet = thinSheetResistance(vOverI, geometry, dual)
   for (let i = 0; i < sheet.length; i++) sheet[i] *= thickness.value
@@ -64,22 +99,19 @@ export function correct(
     sheet[i] =
       flags[i] & SITE_FLAGS.reported.bit ? reported!.sheetResistance_ohm_sq[i] : sheet[i] * temperature.factor[i]
   }
-  return {
-    vOverI,
-    geometryFactor: geometry.factor,
-    thickness,
-    temperature,
-    reported,
-    sheetResistance_ohm_sq: sheet,
-    thicknessSlope: thickness.dLnRatio,
-    slopes: slopesOf(geometry, thicknessSpacingSlopes(setUp, procedure), dual, temperature),
-  }
+  return { geometry, thickness, dual, temperature, reported, sheetResistance_ohm_sq: sheet }
 }
 
 /** Without positions, or without edges, every site is that of the infinite sheet. */
-function thinSheet(count: number, setUp: MeasuringSetUp, positions: SitePositions | null): ThinSheetColumns {
+function thinSheet(
+  count: number,
+  setUp: MeasuringSetUp,
+  positions: SitePositions | null,
+  withAngle: boolean,
+): ThinSheetColumns {
   const { spacings_mm, orientation, outline } = setUp
-  if (positions) return thinSheetFactors({ outline, spacings_mm, orientation, ...positions, configuration: 'A' })
+  if (positions)
+    return thinSheetFactors({ outline, spacings_mm, orientation, ...positions, configuration: 'A', withAngle })
   const nowhere = { x_mm: new Float64Array(count), y_mm: new Float64Array(count) }
   return thinSheetFactors({ outline: { shape: 'infinite' }, spacings_mm, orientation, ...nowhere, configuration: 'A' })
 }
@@ -184,5 +216,9 @@ function slopesOf(
     const { dX_per_mm, dY_per_mm } = geometry
     slopes.position_per_mm[i] = Math.sqrt(dX_per_mm[i] * dX_per_mm[i] + dY_per_mm[i] * dY_per_mm[i])
   }
-  return { ...slopes, temperature_per_C: temperature.slope_per_C }
+  return {
+    ...slopes,
+    temperature_per_C: temperature.slope_per_C,
+    orientation_per_deg: dual ? null : geometry.dAngle_per_deg,
+  }
 }

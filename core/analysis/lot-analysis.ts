@@ -3,12 +3,15 @@
  * report all read this and compute nothing of their own.
  */
 import type { Verdict } from '../conformity/verdict'
+import type { GaugeStudy } from '../gauge/gauge-study'
 import type { DepthProfile } from '../ingest/read-profile'
 import type { Readings } from '../ingest/readings'
 import type { Outline } from '../wafer/outline'
 import type { Problem } from '../problems/problem'
 import type { Procedure } from '../procedure/schema'
+import type { CheckOfLot } from './check-of-lot'
 import type { Exclusion } from './exclusions'
+import type { Repeatability } from './repeatability'
 import type { Statistics } from '../statistics/summarize'
 import type { VarianceComponents } from '../statistics/components-of-variance'
 
@@ -22,6 +25,12 @@ export interface LotAnalysis {
   readonly readings: Readings
   /** Of a tabulated layer: the profile that its procedure names. */
   readonly profile: DepthProfile | null
+  /** The gauge study that the procedure names. */
+  readonly gauge: GaugeStudy | null
+  /** The check wafer that the procedure names, as it stood when the lot was measured. */
+  readonly check: CheckOfLot | null
+  /** Where the procedure takes it from the readings. */
+  readonly repeatability: Repeatability | null
   readonly outline: Outline
   readonly quantity: Quantity
   readonly sites: SiteColumns

@@ -1,10 +1,15 @@
 /** What was assumed, taken from where, or left undone, each as a sentence that the report prints. */
+import { standingWords } from '../check-wafer/check-words'
+import type { GaugeStudy } from '../gauge/gauge-study'
 import type { DepthProfile } from '../ingest/read-profile'
 import type { Readings } from '../ingest/readings'
 import { UNCERTAINTY_COMPONENTS, type Procedure } from '../procedure/schema'
 import { layerMobility } from './prepare-layer'
 import { CELSIUS_ZERO_K } from '../units/constants'
+import { formatSignificant } from '../units/format'
+import type { CheckOfLot } from './check-of-lot'
 import type { Corrections } from './corrections'
+import type { Repeatability } from './repeatability'
 import type { DieColumns, Quantity, SiteColumns } from './lot-analysis'
 import type { MeasuringSetUp } from './measuring-set-up'
 import type { SitePositions } from './site-positions'
@@ -19,6 +24,9 @@ export interface NotesInput {
   readonly sites: SiteColumns
   readonly quantity: Quantity
   readonly dies: DieColumns | null
+  readonly gauge: GaugeStudy | null
+  readonly check: CheckOfLot | null
+  readonly repeatability: Repeatability | null
 }
 
 export function analysisNotes(input: NotesInput): string[] {
@@ -29,6 +37,7 @@ export function analysisNotes(input: NotesInput): string[] {
     ...modelNotes(input),
     ...profileNotes(input),
     ...uncertaintyNotes(input),
+    ...gaugeNotes(input),
   ]
 }
 
@@ -107,9 +116,29 @@ function profileNotes({ profile, procedure, sites }: NotesInput): string[] {
   return notes
 }
 
-function uncertaintyNotes({ procedure: { uncertainty } }: NotesInput): string[] {
-  if (UNCERTAINTY_COMPONENTS.some((component) => uncertainty[component] > 0)) return []
+function uncertaintyNotes({ procedure: { uncertainty }, repeatability, gauge }: NotesInput): string[] {
+  const { repeatabilityRel } = uncertainty
+  if (repeatabilityRel === 'readings') {
+    return repeatability
+      ? [
+          `Repeatability ${formatSignificant(100 * repeatability.relative, 2)} %, from the two polarities of the readings (${repeatability.degreesOfFreedom} degrees of freedom).`,
+        ]
+      : ['The repeatability was to be taken from the readings, which do not have both polarities: it counts as none.']
+  }
+  if (gauge || UNCERTAINTY_COMPONENTS.some((component) => Number(uncertainty[component]) > 0)) return []
   return [
     'The procedure gives no uncertainties: every result counts as exact, and probabilities to conform are 0 or 1.',
+  ]
+}
+
+function gaugeNotes({ gauge, check }: NotesInput): string[] {
+  const standing = check && check.standing.state !== 'alarm' ? standingWords(check.result, check.standing) : null
+  return [
+    ...(gauge
+      ? [
+          `The prober's own spread is that of the gauge study ${gauge.occasions.file}, as a fraction of what it measured.`,
+        ]
+      : []),
+    ...(standing ? [standing] : []),
   ]
 }

@@ -4,6 +4,7 @@ import type { LotAnalysis, WaferAnalysis } from './lot-analysis'
 import { flagNames } from './flags'
 import { mobilityComparison } from './mobility-comparison'
 import { figuresObject, patternsObject, statisticsOtherwiseObject } from './result-details'
+import { checkPart, gaugePart, uncertaintyObject } from './trust-objects'
 import { waferDetails, type WaferDetails } from './wafer-details'
 import type { VarianceComponents, VarianceComponent } from '../statistics/components-of-variance'
 import type { Statistics } from '../statistics/summarize'
@@ -44,6 +45,9 @@ export function resultObject(analysis: LotAnalysis, context: ResultContext): obj
       varianceComponents: lot.varianceComponents && componentsObject(lot.varianceComponents),
     },
     layer: layerObject(analysis),
+    uncertainty: uncertaintyObject(analysis),
+    gauge: gaugePart(analysis),
+    checkWafer: checkPart(analysis.check),
     wafers: wafers.map((wafer) => waferObject(wafer, analysis, detailsOf(wafer))),
   }
 }

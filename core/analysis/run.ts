@@ -38,7 +38,7 @@ export function run(input: RunInput): RunResult {
   const parsed = parseProcedure(decoded.text, name)
   if (!parsed.procedure) return { analysis: null, problems: parsed.problems }
   const companions = readCompanions(parsed.procedure, input.companions ?? [], name)
-  if (companions.problems.length > 0) return { analysis: null, problems: companions.problems }
+  if (companions.obstacles.length > 0) return { analysis: null, problems: companions.obstacles }
   const read = readReadings(files, parsed.procedure.readings, (share, rows) =>
     watch?.({ stage: 'reading', share, rows }),
   )
@@ -48,10 +48,12 @@ export function run(input: RunInput): RunResult {
       readings: read.readings,
       procedure: parsed.procedure,
       defaults: parsed.defaults,
-      problems: read.problems,
+      problems: [...read.problems, ...companions.problems],
       notes: [...migrationNotes(parsed.migratedFrom, name), ...read.notes],
       excluded,
       profile: companions.profile,
+      gauge: companions.gauge,
+      check: companions.check,
       ...(watch && { watch }),
     })
     return { analysis, problems: analysis.problems }

@@ -14,6 +14,7 @@ import { prepareLayer } from './prepare-layer'
 import { limitsOn } from './quantity'
 import { sitePositions } from './site-positions'
 import { contributions, onResistivity, type Contribution } from './uncertainty'
+import { expandedUncertainty } from './uncertainty-budget'
 import { ratios } from './v-over-i'
 import { VERDICTS } from '../conformity/verdict'
 import type { BudgetLine, Working, WorkingStep } from './working'
@@ -30,17 +31,20 @@ export function siteWorking(analysis: LotAnalysis, site: number): Working {
   const setUp = measuringSetUp(procedure, { hasConfigurationB: vOverI.b_ohm !== null })
   const positions = sitePositions(one, procedure)
   const corrections = correct(one, procedure, setUp, positions, vOverI, flags)
-  const parts = contributions(procedure, profile, corrections, flags)
+  const { repeatability, gauge } = analysis
+  const parts = contributions({ procedure, profile, corrections, readings: one, flags, repeatability, gauge })
   const x_mm = positions ? positions.x_mm[0] : NaN
   const y_mm = positions ? positions.y_mm[0] : NaN
   const input = { analysis, site, corrections, setUp, parts, x_mm, y_mm }
+  const budget = budgetOf(input)
   return {
     wafer: readings.wafers[readings.wafer[site]].id,
     site: readings.siteNames[readings.site[site]],
     x_mm,
     y_mm,
     steps: [...sheetSteps(input), ...layerSteps(input), ...judgementSteps(input)],
-    budget: budgetOf(input),
+    budget,
+    expanded: expandedUncertainty(budget, procedure.statistics.confidence),
   }
 }
 
@@ -101,7 +105,7 @@ function ratioStep({ analysis, site, corrections, parts }: WorkingInput): Workin
     symbol: 'V/I',
     title: forward && reverse ? 'Mean of forward and reverse' : 'Voltage over current',
     value,
-    u: value * relative(parts, 'currentRel', 'voltageRel'),
+    u: value * relative(parts, 'currentRel', 'voltageRel', 'thermalEmfUV'),
     unit: 'Ω',
     formula,
     source: REVERSAL_SOURCE,
@@ -120,7 +124,7 @@ function geometryStep({ analysis, corrections, parts, setUp, x_mm, y_mm }: Worki
     symbol: 'C',
     title: outline.shape === 'infinite' ? 'Geometry factor, infinite sheet' : `Geometry factor, ${outline.shape}`,
     value,
-    u: value * relative(parts, 'spacingMm', 'diameterMm', 'positionMm'),
+    u: value * relative(parts, 'spacingMm', 'spacingWanderMm', 'orientationDeg', 'diameterMm', 'positionMm'),
     unit: '',
     formula: `${place}; pin line ${line}; pins ${spacings_mm.join(', ')} mm`,
     source,
@@ -187,7 +191,7 @@ function temperatureSteps({ corrections: { temperature }, analysis, site, parts 
       symbol: 'F_T',
       title: 'Temperature factor',
       value,
-      u: value * relative(parts, 'temperatureC'),
+      u: value * relative(parts, 'temperatureC', 'temperatureCoefficientPercentPerC'),
       unit: '',
       formula,
       source,
@@ -244,12 +248,11 @@ function budgetOf({ analysis, corrections, parts }: WorkingInput): BudgetLine[] 
   const isResistivity = quantity.id === 'resistivity'
   const layer = layerResults(procedure, prepareLayer(procedure, profile), corrections, new Uint32Array(1))
   const sensitivity = layer.resistivitySensitivity[0]
-  const lines = parts.map((part) => ({
-    component: part.component,
-    title: part.title,
-    shared: part.shared,
-    relative: Math.abs(isResistivity ? onResistivity(part, 0, sensitivity) : part.sheetResistance(0)),
-  }))
+  const lines = parts.map((part) => {
+    const relative = Math.abs(isResistivity ? onResistivity(part, 0, sensitivity) : part.sheetResistance(0))
+    const { component, title, shared, u, unit, degreesOfFreedom, evaluation } = part
+    return { component, title, shared, u, unit, degreesOfFreedom, evaluation, sensitivity: relative / u, relative }
+  })
   const sum = lines.reduce((total, { relative: r }) => total + r * r, 0)
   return lines
     .map((line) => ({ ...line, share: sum > 0 ? line.relative ** 2 / sum : 0 }))

@@ -27,9 +27,11 @@ export function checkWords({ history, limits, alarms, autocorrelation, isInContr
   ]
 }
 
-/** Of a lot, what its check wafer says; null where there is nothing to say. */
-export function standingWords({ history }: CheckResult, standing: StandingCheck): string | null {
-  const when = standing.byTime ? `on ${standing.when}, the last before the lot` : `on ${standing.when}, its last`
+/** Of a lot, what its check wafer says. */
+export function standingWords({ history }: CheckResult, standing: StandingCheck): string {
+  const when = standing.byTime
+    ? `on ${standing.when}, its last occasion before the lot`
+    : `on ${standing.when}, its last occasion`
   switch (standing.state) {
     case 'in-control':
       return `The check wafer was in control ${when} (${history.file}).`

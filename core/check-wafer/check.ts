@@ -127,3 +127,31 @@ export function standingAt({ history, alarms }: CheckResult, time_ms: number): S
   const own = alarms.filter((alarm) => alarm.place === place)
   return { state: own.length > 0 ? 'alarm' : 'in-control', place, when: history.when[order[place - 1]], alarms: own, byTime }
 } // prettier-ignore
+
+/** The alarms of one occasion, with what they say together. */
+export interface AlarmedOccasion {
+  readonly index: number
+  readonly place: number
+  readonly when: string
+  readonly value: number
+  readonly standardDeviation: number
+  readonly alarms: readonly CheckAlarm[]
+  readonly nextSteps: readonly string[]
+}
+
+export function alarmedOccasions({ history, alarms }: CheckResult): readonly AlarmedOccasion[] {
+  const places = [...new Set(alarms.map(({ place }) => place))]
+  return places.map((place) => {
+    const own = alarms.filter((alarm) => alarm.place === place)
+    const row = history.order[place - 1]
+    return {
+      index: own[0].index,
+      place,
+      when: own[0].when,
+      value: history.value[row],
+      standardDeviation: history.standardDeviation[row],
+      alarms: own,
+      nextSteps: [...new Set(own.map(({ nextStep }) => nextStep))],
+    }
+  })
+}

@@ -110,7 +110,7 @@ function momentOf({ texts }: NamedTable<HistoryColumn>, row: number): Moment {
   if (texts.time[row] !== '') {
     const read = parseTime(texts.time[row])
     const time_ms = typeof read === 'string' ? NaN : read.time_ms
-    return { text: texts.time[row], time_ms, key: time_ms }
+    return { text: texts.time[row].replace(/^(\d{4}-\d\d-\d\d)T(\d\d:\d\d)(:00)?Z?$/, '$1 $2'), time_ms, key: time_ms }
   }
   const [year, month, day, hour, minute] = (['year', 'month', 'day', 'hour', 'minute'] as const).map((id) => texts[id][row])
   if (day === '') return { text: '', time_ms: NaN, key: NaN }

@@ -2,7 +2,7 @@ import { CoreError } from '../problems/problem'
 import type { Outline } from '../wafer/outline'
 import { createPinColumns, fourTerminalGradient, TERMINALS } from './four-terminal'
 import type { Configuration, PinColumns } from './four-terminal'
-import type { Placement } from './pin-line'
+import { pinOffsets_mm, type Placement } from './pin-line'
 import { pinPlacer, requireProbeSites } from './probe-sites'
 import type { ProbeSites } from './probe-sites'
 import { outlineGeometry } from './registry'
@@ -20,6 +20,8 @@ export interface ThinSheetColumns {
   readonly dY_per_mm: Float64Array
   /** To the diameter of a disc, or the width of a rectangle whose aspect is held; 0 for the infinite sheet. */
   readonly dSize_per_mm: Float64Array
+  /** To the direction of the pin line, turned about the site [1/deg]; null unless asked for. */
+  readonly dAngle_per_deg: Float64Array | null
   /** Of the pin nearest to the edge, negative where that pin is off; infinite without an edge. */
   readonly edgeDistance_mm: Float64Array
 }
@@ -41,7 +43,9 @@ export interface ThinSheetColumns {
  * Accuracy: exact but for rounding, 1e-12. dSize follows from the others: C depends on ratios of lengths alone.
  * Sources: those of the outline in `registry.ts`; derivation in `four-terminal.ts`.
  */
-export function thinSheetFactors(sites: ProbeSites & { readonly configuration: Configuration }): ThinSheetColumns {
+export function thinSheetFactors(
+  sites: ProbeSites & { readonly configuration: Configuration; readonly withAngle?: boolean },
+): ThinSheetColumns {
   requireProbeSites(sites)
   const geometry = outlineGeometry(sites.outline)
   const logDistance = geometry.logDistance(sites.outline)
@@ -50,7 +54,8 @@ export function thinSheetFactors(sites: ProbeSites & { readonly configuration: C
   const pins = createPinColumns()
   const direction = new Float64Array(2)
   const place = pinPlacer(sites, pins, direction)
-  const columns = createColumns(sites.x_mm.length)
+  const columns = createColumns(sites.x_mm.length, sites.withAngle ?? false)
+  const offsets_mm = pinOffsets_mm(sites.spacings_mm)
   for (let site = 0; site < sites.x_mm.length; site++) {
     const edge_mm = place(site)
     columns.edgeDistance_mm[site] = edge_mm
@@ -58,11 +63,12 @@ export function thinSheetFactors(sites: ProbeSites & { readonly configuration: C
     const sum = fourTerminalGradient(terminals, logDistance, pins)
     columns.factor[site] = (2 * Math.PI) / sum
     writeDerivatives(sites, site, sum, pins, direction, size_mm, columns)
+    if (columns.dAngle_per_deg) columns.dAngle_per_deg[site] = angleDerivative(sum, pins, direction, offsets_mm)
   }
   return columns
 }
 
-function createColumns(length: number): ThinSheetColumns {
+function createColumns(length: number, withAngle: boolean): ThinSheetColumns {
   const column = () => new Float64Array(length).fill(NaN)
   return {
     factor: column(),
@@ -72,8 +78,21 @@ function createColumns(length: number): ThinSheetColumns {
     dX_per_mm: column(),
     dY_per_mm: column(),
     dSize_per_mm: column(),
+    dAngle_per_deg: withAngle ? column() : null,
     edgeDistance_mm: column(),
   }
+}
+
+/** Turned by a small angle, a pin moves across the line by its distance from the site. */
+function angleDerivative(
+  sum: number,
+  { gx, gy }: PinColumns,
+  direction: Float64Array,
+  offsets_mm: Float64Array,
+): number {
+  let across = 0
+  for (let pin = 0; pin < 4; pin++) across += offsets_mm[pin] * (gy[pin] * direction[0] - gx[pin] * direction[1])
+  return ((-across / sum) * Math.PI) / 180
 }
 
 function writeDerivatives(

@@ -5,7 +5,14 @@
  * rows or sites collects problems and goes on with what is good.
  */
 export type Problem =
-  PhysicsProblem | FileProblem | RowProblem | ProfileProblem | TableProblem | ProcedureProblem | AnalysisProblem | OutputProblem
+  | PhysicsProblem
+  | FileProblem
+  | RowProblem
+  | ProfileProblem
+  | TableProblem
+  | ProcedureProblem
+  | AnalysisProblem
+  | OutputProblem
 
 /** A broken precondition of one calculation. */
 export type PhysicsProblem =
@@ -185,6 +192,8 @@ export type AnalysisProblem =
     }
   /** An exclusion that names no site of these readings. */
   | { readonly kind: 'no-such-site'; readonly wafer: string; readonly site: string }
+  /** The check wafer was out of control when the lot was measured. */
+  | { readonly kind: 'check-wafer-alarm'; readonly sentence: string }
   | { readonly kind: 'nothing-assessed'; readonly why: string }
 
 export type OutputProblem =

@@ -14,12 +14,14 @@ const UNIT_ENDINGS: readonly (readonly [ending: string, unit: string])[] = [
   ['Deg', '°'],
   ['Mm', 'mm'],
   ['Um', 'µm'],
+  ['UV', 'µV'],
   ['Rel', ''],
   ['C', '°C'],
 ]
 
 /** Of the key, or of the nearest key above it that names one: `limits.waferMeanOhmSq.lower` is in Ω/sq. */
 export function unitOf(path: KeyPath): string {
+  if (path.includes('degreesOfFreedom')) return ''
   for (const part of [...path].reverse()) {
     const found = UNIT_ENDINGS.find(([ending]) => typeof part === 'string' && part.endsWith(ending))
     if (found) return found[1]
@@ -59,7 +61,8 @@ function numberWords(shape: KeyShape, path: KeyPath): string {
   const unit = unitOf(path)
   const noun = shape.type === 'integer' ? 'a whole number' : 'a number'
   const words = `${noun}${rangeWords(shape)}${unit === '' ? '' : ` ${unit}`}`
-  const isFraction = path.some((part) => typeof part === 'string' && part.endsWith('Rel'))
+  const isFraction =
+    !path.includes('degreesOfFreedom') && path.some((part) => typeof part === 'string' && part.endsWith('Rel'))
   return isFraction ? `${words} (a fraction: 0.01 is 1 %)` : words
 }
 

@@ -121,8 +121,8 @@ const dieGrid = z.strictObject({
 })
 
 export const UNCERTAINTY_COMPONENTS = [
-  'currentRel', 'voltageRel', 'spacingMm', 'thicknessUm', 'temperatureC', 'diameterMm', 'positionMm', 'depthUm',
-  'mobilityRel', 'reportedRel',
+  'currentRel', 'voltageRel', 'thermalEmfUV', 'spacingMm', 'spacingWanderMm', 'orientationDeg', 'thicknessUm', 'temperatureC',
+  'temperatureCoefficientPercentPerC', 'diameterMm', 'positionMm', 'repeatabilityRel', 'depthUm', 'mobilityRel', 'reportedRel',
 ] as const // prettier-ignore
 export type UncertaintyComponent = (typeof UNCERTAINTY_COMPONENTS)[number]
 
@@ -131,13 +131,23 @@ const fraction = z.number().min(0).max(1).default(0)
 const uncertainty = z.strictObject({
   currentRel: fraction,
   voltageRel: fraction,
-  /** Of each pin spacing. */
+  /** Of stray voltages in one voltage reading; two polarities leave what changes between them. */
+  thermalEmfUV: z.number().min(0).max(1e6).default(0),
+  /** Of each pin spacing, as measured. */
   spacingMm: z.number().min(0).max(10).default(0),
+  /** Of each pin spacing, new at every touch-down. */
+  spacingWanderMm: z.number().min(0).max(10).default(0),
+  /** Of the direction of the pin line. */
+  orientationDeg: z.number().min(0).max(90).default(0),
   thicknessUm: z.number().min(0).max(1000).default(0),
   temperatureC: z.number().min(0).max(50).default(0),
+  /** Of the temperature coefficient, where a correction is made. */
+  temperatureCoefficientPercentPerC: z.number().min(0).max(10).default(0),
   diameterMm: z.number().min(0).max(50).default(0),
   /** Of the probe's place on the wafer, in x and in y. */
   positionMm: z.number().min(0).max(50).default(0),
+  /** Of a site measured again: a fraction, or "readings" to take it from the two polarities of the lot's own. */
+  repeatabilityRel: z.union([z.number().min(0).max(1), z.literal('readings')]).default(0),
   depthUm: z.number().min(0).max(1000).default(0),
   /** Spread of the mobility model about real silicon; enters the concentration alone. */
   mobilityRel: fraction,
@@ -146,7 +156,28 @@ const uncertainty = z.strictObject({
   /** The components that are the same at every site, so that averaging doesn't lessen them. */
   shared: z
     .array(z.enum(UNCERTAINTY_COMPONENTS))
-    .default(['currentRel', 'spacingMm', 'thicknessUm', 'temperatureC', 'diameterMm', 'depthUm', 'mobilityRel']),
+    .default([
+      'currentRel', 'spacingMm', 'orientationDeg', 'thicknessUm', 'temperatureC', 'temperatureCoefficientPercentPerC', 'diameterMm',
+      'depthUm', 'mobilityRel',
+    ]), // prettier-ignore
+  /** Of a component, where it is known by so few observations that it matters; absent: known well. */
+  degreesOfFreedom: z.partialRecord(z.enum(UNCERTAINTY_COMPONENTS), z.number().min(1).max(1e6)).default({}),
+})
+
+/** A study of the prober's own spread; its components enter the uncertainty of every site. */
+const gaugeStudy = z.strictObject({
+  file: z.string().max(200).regex(BARE_FILE_NAME),
+  /** The probe that the lot was measured with; absent: all probes of the study pooled. */
+  probe: z.string().min(1).max(100).optional(),
+})
+
+/** The history of a check wafer on the prober that the lot was measured with. */
+const checkWafer = z.strictObject({
+  file: z.string().max(200).regex(BARE_FILE_NAME),
+  /** How many occasions, first in time, make the limits; absent: all. */
+  baseline: z.number().int().min(4).max(1e6).optional(),
+  /** The value that the wafer is held to have; absent: the mean of the baseline. */
+  acceptedValue: z.number().gt(0).optional(),
 })
 
 const columnMapping = z.partialRecord(
@@ -174,6 +205,8 @@ export const procedureSchema = z.strictObject({
   statistics: statistics.prefault({}),
   dieGrid: dieGrid.optional(),
   uncertainty: uncertainty.prefault({}),
+  gaugeStudy: gaugeStudy.optional(),
+  checkWafer: checkWafer.optional(),
   readings: readings.prefault({}),
   /** With which constant a reported sheet resistance was made, so that V/I can be recovered and corrected anew. */
   reported: z.strictObject({ factor: z.number().min(0.01).max(100) }).optional(),

@@ -3,6 +3,7 @@ import type { Working } from '../analysis/working'
 import type { ReportDocument } from './document'
 import { detailsOnce, reportContext, type LotReportInput } from './report-context'
 import { findingsSection } from './sections/findings-section'
+import { gaugeSection } from './sections/gauge-section'
 import { inputSection } from './sections/input-section'
 import { layerSection } from './sections/layer-section'
 import { procedureSection } from './sections/procedure-section'
@@ -39,6 +40,7 @@ export function lotReport(input: LotReportInput): ReportDocument {
       ...inputSection(context),
       ...procedureSection(context),
       ...uncertaintySection(context),
+      ...gaugeSection(context),
       ...(working ? workingSection(working, context) : []),
       ...sourcesSection(context),
     ],

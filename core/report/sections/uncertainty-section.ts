@@ -1,107 +1,106 @@
-/** What the standard uncertainties are made of. */
-import type { UncertaintyComponent } from '../../procedure/schema'
-import { UNCERTAINTY_COMPONENTS } from '../../procedure/schema'
+/** What the standard uncertainties are made of, what they come to, and whether the first order is enough for them. */
+import type { BudgetLine, Working } from '../../analysis/working'
+import { expandedUncertainty, type ExpandedUncertainty } from '../../analysis/uncertainty-budget'
+import { UNCERTAINTY_COMPONENTS, type UncertaintyComponent } from '../../procedure/schema'
 import { formatFixed, formatQuantity, formatSignificant } from '../../units/format'
 import type { Block, KeyValue, TableRow } from '../document'
-import type { Working } from '../../analysis/working'
+import { budgetBars } from '../figures/budget-bars'
 import { waferTitle, type ReportContext } from '../report-context'
+import { monteCarloBlocks } from './monte-carlo-blocks'
 
-interface ComponentWords {
-  readonly title: string
-  /** '%' shows a relative uncertainty in percent. */
-  readonly unit: string
-}
-
-const COMPONENTS: Readonly<Record<UncertaintyComponent, ComponentWords>> = {
-  currentRel: { title: 'Current', unit: '%' },
-  voltageRel: { title: 'Voltage', unit: '%' },
-  spacingMm: { title: 'Each pin spacing', unit: 'mm' },
-  thicknessUm: { title: 'Wafer thickness', unit: 'µm' },
-  temperatureC: { title: 'Temperature', unit: '°C' },
-  diameterMm: { title: 'Wafer diameter', unit: 'mm' },
-  positionMm: { title: 'Place of the probe, in x and in y', unit: 'mm' },
-  depthUm: { title: 'Layer depth', unit: 'µm' },
-  mobilityRel: { title: 'Mobility model, concentration alone', unit: '%' },
-  reportedRel: { title: 'Value as the file reports it', unit: '%' },
+const COMPONENTS: Readonly<Record<UncertaintyComponent, string>> = {
+  currentRel: 'current',
+  voltageRel: 'voltage',
+  thermalEmfUV: 'stray voltages',
+  spacingMm: 'each pin spacing',
+  spacingWanderMm: 'wander of the pins',
+  orientationDeg: 'direction of the pin line',
+  thicknessUm: 'wafer thickness',
+  temperatureC: 'temperature',
+  temperatureCoefficientPercentPerC: 'temperature coefficient',
+  diameterMm: 'wafer diameter',
+  positionMm: 'place of the probe',
+  repeatabilityRel: 'repeatability',
+  depthUm: 'layer depth',
+  mobilityRel: 'mobility model',
+  reportedRel: 'value as the file reports it',
 }
 
 export function uncertaintySection(context: ReportContext): Block[] {
+  const { working } = context.input
   const { uncertainty } = context.analysis.procedure
-  const counted = UNCERTAINTY_COMPONENTS.filter((component) => uncertainty[component] > 0)
-  const exact = UNCERTAINTY_COMPONENTS.filter((component) => !(uncertainty[component] > 0))
-  const rows = counted.map((component): TableRow => {
-    const { title, unit } = COMPONENTS[component]
-    const value = unit === '%' ? 100 * uncertainty[component] : uncertainty[component]
-    const shared = uncertainty.shared.includes(component)
-    return {
-      cells: [
-        title,
-        formatSignificant(value, 2),
-        unit,
-        shared ? 'shared' : 'independent',
-        shared ? SHARED : INDEPENDENT,
-      ],
-    }
-  })
-  const exactWords = exact.map((component) => COMPONENTS[component].title.toLowerCase()).join('; ')
+  const exact = UNCERTAINTY_COMPONENTS.filter((component) => uncertainty[component] === 0)
   return [
     { kind: 'heading', level: 1, text: 'Uncertainty' },
     {
       kind: 'paragraph',
       text: 'Standard uncertainties (one sigma), combined by the law of propagation of JCGM 100:2008, 5.1.2. What all sites share stays whole in the mean of a wafer; what is independent from site to site is averaged down with the number of sites.',
     },
-    ...(rows.length > 0 ? [componentsTable(rows)] : []),
-    ...(exactWords
-      ? [{ kind: 'paragraph', text: `Taken as exactly known: ${exactWords}.`, quiet: true } as const]
+    ...(working && working.budget.length > 0 ? budgetBlocks(working, context) : []),
+    { kind: 'key-values', columns: 1, entries: [...typicalSite(context), ...expandedEntries(context)] },
+    ...(exact.length > 0
+      ? [{ kind: 'paragraph', text: `Taken as exactly known: ${exact.map((id) => COMPONENTS[id]).join('; ')}.`, quiet: true } as const]
       : []),
-    { kind: 'key-values', columns: 1, entries: typicalSite(context) },
-    ...budgetOf(context.input.working),
+    ...monteCarloBlocks(context),
   ]
-}
+} // prettier-ignore
 
-const SHARED = 'the same at every site'
-const INDEPENDENT = 'new at every site'
+/** Below this share of the variance a component is named, not listed. */
+const LEAST_SHARE = 1e-6
 
-function componentsTable(rows: readonly TableRow[]): Block {
-  return {
-    kind: 'table',
-    summary: 'Uncertainty components',
-    columns: [
-      { title: 'Component', align: 'left', share: 2.4 },
-      { title: 'u', align: 'decimal', share: 0.8 },
-      { title: 'Unit', align: 'left', share: 0.6 },
-      { title: 'Kind', align: 'left', share: 1 },
-      { title: '', align: 'left', share: 2.6, quiet: true },
-    ],
-    rows,
-  }
-}
-
-/** What one site's uncertainty is made of, largest first. */
-function budgetOf(working: Working | null): Block[] {
-  if (!working || working.budget.length === 0) return []
-  const rows = working.budget.map(({ title, shared, relative, share }): TableRow => ({
-    cells: [
-      title,
-      shared ? 'shared' : 'independent',
-      formatSignificant(100 * relative, 2),
-      formatFixed(100 * share, 1),
-    ],
-  }))
+/** One site's, largest first, as table and as picture. */
+function budgetBlocks({ site, wafer, budget, expanded }: Working, { width_pt }: ReportContext): Block[] {
+  const where = `site ${site} of ${waferTitle(wafer).toLowerCase()}`
+  const bars = budget.filter(({ share }) => share >= LEAST_SHARE)
+  const rest = budget.filter(({ share }) => !(share >= LEAST_SHARE))
+  const title = `Uncertainty budget of ${where}`
   return [
-    { kind: 'heading', level: 2, text: `Budget at site ${working.site} of ${waferTitle(working.wafer).toLowerCase()}` },
+    { kind: 'heading', level: 2, text: `Budget at ${where}` },
     {
       kind: 'table',
       summary: 'Uncertainty budget of one site',
       columns: [
-        { title: 'Component', align: 'left', share: 3 },
-        { title: 'Kind', align: 'left', share: 1.2 },
-        { title: 'Effect on the result', unit: '%', align: 'decimal', share: 1.4 },
-        { title: 'Share of the variance', unit: '%', align: 'decimal', share: 1.6 },
+        { title: 'Component', align: 'left', share: 2.7 },
+        { title: 'u', align: 'right', share: 1.1 },
+        { title: 'Type', align: 'right', share: 0.5 },
+        { title: 'Degrees of freedom', align: 'right', share: 0.9 },
+        { title: 'Sensitivity', align: 'right', share: 1.3 },
+        { title: 'Effect', unit: '%', align: 'decimal', share: 0.8 },
+        { title: 'Of variance', unit: '%', align: 'decimal', share: 0.9 },
+        { title: 'At all sites', align: 'right', share: 0.8 },
       ],
-      rows,
+      rows: [...bars.map(budgetRow), combinedRow(expanded)],
     },
+    ...(rest.length > 0
+      ? [{ kind: 'paragraph', text: `Without effect there: ${rest.map((line) => line.title).join('; ')}.`, quiet: true } as const]
+      : []),
+    { kind: 'figures', figures: [budgetBars({ title, bars, combined: expanded.standard, width_pt })] },
   ]
+} // prettier-ignore
+
+function budgetRow({ title, shared, relative, share, u, unit, degreesOfFreedom, evaluation, sensitivity }: BudgetLine): TableRow {
+  const isFraction = unit === ''
+  return {
+    cells: [
+      title,
+      isFraction ? `${formatSignificant(100 * u, 2)} %` : `${formatSignificant(u, 2)} ${unit}`,
+      evaluation,
+      freedom(degreesOfFreedom),
+      isFraction ? formatSignificant(sensitivity, 3) : `${formatSignificant(100 * sensitivity, 3)} %/${unit.replace('%/', '(%/')}${unit.startsWith('%') ? ')' : ''}`,
+      formatSignificant(100 * relative, 2),
+      formatFixed(100 * share, 1),
+      shared ? 'the same' : 'new',
+    ],
+  }
+} // prettier-ignore
+
+function combinedRow({ standard, effectiveDegreesOfFreedom }: ExpandedUncertainty): TableRow {
+  const cells = ['combined', '', '', freedom(effectiveDegreesOfFreedom), '', formatSignificant(100 * standard, 2), '', '']
+  return { cells, emphasis: 'result' }
+} // prettier-ignore
+
+function freedom(degrees: number): string {
+  return degrees >= 1e6 ? '∞' : formatFixed(degrees, 0)
 }
 
 function typicalSite({ analysis }: ReportContext): KeyValue[] {
@@ -117,6 +116,26 @@ function typicalSite({ analysis }: ReportContext): KeyValue[] {
     note: 'median over the sites',
   }))
 }
+
+/** Of the site of the budget, of the mean of its wafer, and of the lot's. */
+function expandedEntries({ analysis, input: { working } }: ReportContext): KeyValue[] {
+  if (!working || working.budget.length === 0) return []
+  const { procedure, quantity, wafers, lot } = analysis
+  const wafer = wafers.find(({ id }) => id === working.wafer)
+  const level = procedure.statistics.confidence
+  const all = wafers.reduce((sum, { statistics }) => sum + statistics.count, 0)
+  const entry = (key: string, value: number, { expanded, coverageFactor, effectiveDegreesOfFreedom }: ExpandedUncertainty): KeyValue => ({
+    key,
+    value: `± ${formatQuantity(expanded * value, quantity.unit)}`,
+    note: `${formatSignificant(100 * expanded, 2)} %; k = ${formatFixed(coverageFactor, 2)} for ${formatFixed(100 * level, level < 0.995 ? 0 : 1)} %, ${freedom(effectiveDegreesOfFreedom)} degrees of freedom`,
+  })
+  const site = wafer?.sites.find((i) => analysis.readings.siteNames[analysis.readings.site[i]] === working.site)
+  return [
+    ...(site === undefined ? [] : [entry('Expanded, of that site', analysis.sites.value[site], working.expanded)]),
+    ...(wafer ? [entry('Expanded, of the mean of its wafer', wafer.statistics.mean, expandedUncertainty(working.budget, level, wafer.statistics.count))] : []),
+    ...(wafers.length > 1 ? [entry("Expanded, of the lot's mean", lot.statistics.mean, expandedUncertainty(working.budget, level, all))] : []),
+  ]
+} // prettier-ignore
 
 function medianOf(column: Float64Array): number {
   const sorted = column.filter(Number.isFinite).sort()

@@ -46,15 +46,22 @@ describe('a good procedure', () => {
       { key: 'statistics.confidence', value: '0.95' },
       { key: 'statistics.outliers.alpha', value: '0.05' },
       { key: 'statistics.outliers.leaveOut', value: 'false' },
+      { key: 'uncertainty.thermalEmfUV', value: '0' },
+      { key: 'uncertainty.spacingWanderMm', value: '0' },
+      { key: 'uncertainty.orientationDeg', value: '0' },
+      { key: 'uncertainty.temperatureCoefficientPercentPerC', value: '0' },
       { key: 'uncertainty.diameterMm', value: '0' },
       { key: 'uncertainty.positionMm', value: '0' },
+      { key: 'uncertainty.repeatabilityRel', value: '0' },
       { key: 'uncertainty.depthUm', value: '0' },
       { key: 'uncertainty.mobilityRel', value: '0' },
       { key: 'uncertainty.reportedRel', value: '0' },
       {
         key: 'uncertainty.shared',
-        value: '["currentRel","spacingMm","thicknessUm","temperatureC","diameterMm","depthUm","mobilityRel"]',
+        value:
+          '["currentRel","spacingMm","orientationDeg","thicknessUm","temperatureC","temperatureCoefficientPercentPerC","diameterMm","depthUm","mobilityRel"]',
       },
+      { key: 'uncertainty.degreesOfFreedom', value: '{}' },
       { key: 'readings.columns', value: '{}' },
     ])
   })

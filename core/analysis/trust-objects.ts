@@ -1,0 +1,52 @@
+/** What result.json says of how far its numbers can be trusted: the budget of a site, the gauge, the check wafer. */
+import { checkObject } from '../check-wafer/check-object'
+import { gaugeObject } from '../gauge/study-object'
+import type { CheckOfLot } from './check-of-lot'
+import type { LotAnalysis } from './lot-analysis'
+import { reportSite } from './report-site'
+import { siteWorking } from './site-working'
+
+/** null where nothing is uncertain. */
+export function uncertaintyObject(analysis: LotAnalysis): object | null {
+  const site = reportSite(analysis)
+  if (site === null) return null
+  const { wafer, site: name, budget, expanded } = siteWorking(analysis, site)
+  if (budget.length === 0) return null
+  return {
+    wafer,
+    site: name,
+    relative: expanded.standard,
+    effectiveDegreesOfFreedom: finite(expanded.effectiveDegreesOfFreedom),
+    coverageProbability: expanded.level,
+    coverageFactor: expanded.coverageFactor,
+    expandedRelative: expanded.expanded,
+    budget: budget.map((line) => ({
+      component: line.component,
+      title: line.title,
+      standardUncertainty: line.u,
+      unit: line.unit,
+      evaluation: line.evaluation,
+      degreesOfFreedom: finite(line.degreesOfFreedom),
+      sensitivity: line.sensitivity,
+      relative: line.relative,
+      varianceShare: line.share,
+      shared: line.shared,
+    })),
+    source: 'JCGM 100:2008',
+  }
+}
+
+/** Infinitely many degrees of freedom are null, as JSON has no infinity. */
+function finite(degrees: number): number | null {
+  return Number.isFinite(degrees) ? degrees : null
+}
+
+export function gaugePart({ gauge }: LotAnalysis): object | null {
+  return gauge && gaugeObject(gauge)
+}
+
+export function checkPart(check: CheckOfLot | null): object | null {
+  if (!check) return null
+  const { state, when, place, byTime } = check.standing
+  return { standing: { state, when, place, byTime }, ...checkObject(check.result) }
+}
