@@ -4,7 +4,7 @@ import type { ServerResponse } from 'node:http'
 import { basename, join } from 'node:path'
 import { unpackParts } from '../contract/frame'
 import { MAX_FILES_BYTES, MAX_STATE_BYTES, type ReportRequest, type Reply } from '../contract/host'
-import { LOOPBACK_PATHS, type NamedFile } from '../contract/loopback'
+import { COUNT_HEADER, LOOPBACK_PATHS, type NamedFile } from '../contract/loopback'
 import { ARGUMENTS, reportHead } from '../contract/messages'
 import { pageFile } from '../contract/page'
 import { makeReport, type Program } from '../host/make-report'
@@ -42,8 +42,12 @@ export async function answerGet(response: ServerResponse, path: string, served: 
   const below = rest.join('/')
   if (first === LOOPBACK_PATHS.files) return sendFile(response, served.files, rest.length > 0 ? below : null)
   if (first === LOOPBACK_PATHS.demo) return sendFile(response, served.demo, rest.length > 0 ? below : null)
-  if (path === LOOPBACK_PATHS.state)
-    return reply(response, await replying('loadState', () => served.state.load()), sendJson)
+  if (path === LOOPBACK_PATHS.state) {
+    return reply(response, await replying('loadState', () => served.state.loadCounted()), (to, { state, count }) => {
+      to.setHeader(COUNT_HEADER, count)
+      sendJson(to, state)
+    })
+  }
   if (first === LOOPBACK_PATHS.kept && rest.length > 0) {
     return reply(response, await replying('keptFile', () => served.state.files.read(below)), sendBytes)
   }
@@ -71,11 +75,16 @@ export async function answerPost(
 }
 
 async function saveState(response: ServerResponse, body: Uint8Array, state: StateStore): Promise<void> {
-  const [text, kept] = unpackParts(body) ?? []
+  const [text, kept, count] = unpackParts(body) ?? []
   const args = kept && ARGUMENTS.saveState.safeParse([textOf(text), jsonOf(kept)])
-  if (!args?.success) return end(response, 400)
+  const basis = count && jsonOf(count)
+  if (!args?.success || !(basis === undefined || Number.isSafeInteger(basis))) return end(response, 400)
   const [written, tokens] = args.data
-  return reply(response, await replying('saveState', () => state.save(written, tokens)), (to) => end(to, 204))
+  const saved = await replying('saveState', () => state.save(written, tokens, basis as number | undefined))
+  return reply(response, saved, (to, now) => {
+    to.setHeader(COUNT_HEADER, now)
+    end(to, 204)
+  })
 }
 
 /** null where the frame is not what the page sends. */

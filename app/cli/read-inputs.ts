@@ -1,8 +1,6 @@
 import { createHash } from 'node:crypto'
-import { readFile } from 'node:fs/promises'
 import { basename } from 'node:path'
-import { CoreError } from '../../core/problems/problem'
-import { systemReason } from '../../core/problems/system-reason'
+import { readUnchanged } from '../host/read-unchanged'
 
 export interface InputFile {
   readonly name: string
@@ -12,10 +10,6 @@ export interface InputFile {
 
 /** @throws CoreError cannot-read */
 export async function readInput(path: string): Promise<InputFile> {
-  try {
-    const bytes = await readFile(path)
-    return { name: basename(path), bytes, sha256: createHash('sha256').update(bytes).digest('hex') }
-  } catch (error) {
-    throw new CoreError({ kind: 'cannot-read', file: path, why: systemReason(error) })
-  }
+  const bytes = await readUnchanged(path)
+  return { name: basename(path), bytes, sha256: createHash('sha256').update(bytes).digest('hex') }
 }

@@ -1,13 +1,10 @@
 /** Files of an open lot, kept beside the state under their own digest: what the state speaks of can't have changed. */
 import { createHash } from 'node:crypto'
-import { mkdir, readdir, readFile, rename, rm, stat, utimes } from 'node:fs/promises'
+import { readFile, rename, rm, stat, utimes } from 'node:fs/promises'
 import { join } from 'node:path'
 import { CoreError } from '../../core/problems/problem'
 import { MAX_FILES_BYTES } from '../contract/host'
-import { besideOf, flushFolder, PART_SUFFIX, writeFlushed } from './write-whole'
-
-/** A file is kept before the state that speaks of it is saved; until that is surely done it is not dropped. */
-const GRACE_ms = 3_600_000
+import { besideOf, dropOld, flushFolder, makeFolder, PART_SUFFIX, writeFlushed } from './write-whole'
 
 export function isToken(value: unknown): boolean {
   return typeof value === 'string' && /^[0-9a-f]{64}$/.test(value)
@@ -28,7 +25,7 @@ export class KeptFiles {
     const token = createHash('sha256').update(bytes).digest('hex')
     const path = join(this.folder, token)
     if (await this.isThere(path, bytes.length)) return token
-    await mkdir(this.folder, { recursive: true, mode: 0o700 })
+    await makeFolder(this.folder, 0o700)
     const beside = besideOf(path)
     try {
       await writeFlushed(beside, bytes, 0o600)
@@ -60,14 +57,5 @@ export class KeptFiles {
     const now = new Date()
     await utimes(path, now, now).catch(() => undefined)
     return true
-  }
-}
-
-/** Files whose time of grace is over. */
-export async function dropOld(folder: string, isUnused: (name: string) => boolean): Promise<void> {
-  const names = await readdir(folder).catch(() => [] as string[])
-  for (const name of names.filter(isUnused)) {
-    const known = await stat(join(folder, name)).catch(() => null)
-    if (known?.isFile() && Date.now() - known.mtimeMs > GRACE_ms) await rm(join(folder, name), { force: true })
   }
 }

@@ -1,10 +1,11 @@
 /** Files that the person chose, as name and bytes. */
-import { readdir, readFile, stat } from 'node:fs/promises'
+import { readdir, stat } from 'node:fs/promises'
 import { basename, join } from 'node:path'
 import { CoreError } from '../../core/problems/problem'
 import { systemReason } from '../../core/problems/system-reason'
 import { isReadingsName } from '../contract/file-kinds'
 import { MAX_FILES_BYTES, type OpenedFile } from '../contract/host'
+import { readUnchanged } from './read-unchanged'
 
 /** @throws CoreError cannot-read, naming the first file that can't be had */
 export async function openFiles(paths: readonly string[]): Promise<readonly OpenedFile[]> {
@@ -20,7 +21,8 @@ export async function openFiles(paths: readonly string[]): Promise<readonly Open
     if (!known.isFile()) refuse('it is no plain file')
     total += known.size
     if (total > MAX_FILES_BYTES) refuse(`the files together are larger than ${MAX_FILES_BYTES / 2 ** 20} MB`)
-    const bytes = await readFile(path).catch((error: unknown) => refuse(systemReason(error)))
+    const bytes = await readUnchanged(path, name, MAX_FILES_BYTES)
+    // A plain array crosses between processes; a Buffer of Node's doesn't come out the same.
     files.push({ name, bytes: new Uint8Array(bytes) })
   }
   return files

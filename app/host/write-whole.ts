@@ -1,11 +1,17 @@
 import { randomBytes } from 'node:crypto'
-import { lstat, mkdir, open, rename, rm } from 'node:fs/promises'
-import { join } from 'node:path'
+import { lstat, mkdir, open, readdir, rename, rm, stat } from 'node:fs/promises'
+import { dirname, join } from 'node:path'
 import { CoreError } from '../../core/problems/problem'
 import { systemReason } from '../../core/problems/system-reason'
 
 /** Ends the names of files that are still being written. */
 export const PART_SUFFIX = '.part'
+
+/**
+ * What a program that died may have left is removed no sooner: another may be writing it still. Nor is a kept file
+ * dropped before the state that speaks of it is surely saved.
+ */
+const GRACE_ms = 3_600_000
 
 /**
  * Writes files into a folder so that, whatever happens, each name holds either its old content or its new one, whole:
@@ -16,7 +22,7 @@ export const PART_SUFFIX = '.part'
 export async function writeWhole(folder: string, files: ReadonlyMap<string, Uint8Array | string>): Promise<void> {
   const written = new Map<string, string>()
   try {
-    await mkdir(folder, { recursive: true })
+    await makeFolder(folder)
     for (const name of files.keys()) await requireReplaceable(join(folder, name))
     for (const [name, content] of files) {
       const beside = besideOf(join(folder, name))
@@ -25,10 +31,31 @@ export async function writeWhole(folder: string, files: ReadonlyMap<string, Uint
     }
     for (const [beside, path] of written) await rename(beside, path)
     await flushFolder(folder)
+    await dropOld(folder, (name) => files.has(name.replace(/\.[0-9a-f]{12}\.part$/, '')) && name.endsWith(PART_SUFFIX))
   } catch (error) {
     await Promise.all([...written.keys()].map((path) => rm(path, { force: true })))
     if (error instanceof CoreError) throw error
     throw new CoreError({ kind: 'cannot-write', path: folder, why: systemReason(error) })
+  }
+}
+
+/**
+ * The folder, with those that it lies in. Node's own recursion never ends where a folder is there in which none can be made,
+ * as under /proc.
+ *
+ * @throws what the system says
+ */
+export async function makeFolder(folder: string, mode = 0o777): Promise<void> {
+  try {
+    await mkdir(folder, { mode })
+  } catch (error) {
+    const { code } = error as NodeJS.ErrnoException
+    const known = await stat(folder).catch(() => null)
+    if (known?.isDirectory()) return
+    const parent = dirname(folder)
+    if (code !== 'ENOENT' || parent === folder || (await stat(parent).catch(() => null))) throw error
+    await makeFolder(parent, mode)
+    await makeFolder(folder, mode)
   }
 }
 
@@ -54,6 +81,17 @@ export async function flushFolder(folder: string): Promise<void> {
   // Not every system opens or flushes a folder; the files themselves are flushed all the same.
   await handle?.sync().catch(() => undefined)
   await handle?.close()
+}
+
+/** Files whose time of grace is over. */
+export async function dropOld(folder: string, isUnused: (name: string) => boolean): Promise<void> {
+  const names = await readdir(folder).catch(() => [] as string[])
+  for (const name of names.filter(isUnused)) {
+    const known = await stat(join(folder, name)).catch(() => null)
+    if (known?.isFile() && Date.now() - known.mtimeMs > GRACE_ms) {
+      await rm(join(folder, name), { force: true }).catch(() => undefined)
+    }
+  }
 }
 
 /** Found out before anything is renamed, so that a set of files is not left half new. */

@@ -3,7 +3,7 @@ import type { Problem } from '../../core/problems/problem'
 import { FILE_CHOICES, isReadingsName, SAVE_KINDS, type SaveKind } from '../contract/file-kinds'
 import { packParts } from '../contract/frame'
 import type { FileChoice, Host, OpenedFile, Reply, ReportRequest, SavedState } from '../contract/host'
-import { LOOPBACK_PATHS, OWN_HEADER, type NamedFile } from '../contract/loopback'
+import { COUNT_HEADER, LOOPBACK_PATHS, OWN_HEADER, type NamedFile } from '../contract/loopback'
 import { readFiles } from './dropped-files'
 
 const never = (): (() => void) => () => undefined
@@ -21,15 +21,37 @@ export const browserHost: Host = {
   saveFile,
   makeReport,
   printReport: () => refused('printReport', 'a browser prints the report when it is saved and opened'),
-  loadState: () => ask<SavedState | null>(LOOPBACK_PATHS.state, (response) => response.json()),
-  saveState: (text, kept) => {
-    const body = packParts([utf8(text), utf8(JSON.stringify(kept))])
-    return ask(LOOPBACK_PATHS.state, () => 'saved' as const, body)
-  },
+  loadState,
+  saveState,
   keepFile: (bytes) => ask<string>(LOOPBACK_PATHS.kept, (response) => response.json(), bytes),
   keptFile: (token) => ask(`${LOOPBACK_PATHS.kept}/${encodeURIComponent(token)}`, bytesOf),
   onCommand: never,
   onFilesWaiting: never,
+}
+
+/** Of the state that this page loaded or saved last; null before. */
+let stateCount: number | null = null
+
+function loadState(): Promise<Reply<SavedState | null>> {
+  return ask<SavedState | null>(LOOPBACK_PATHS.state, (response) => {
+    stateCount = countIn(response)
+    return response.json()
+  })
+}
+
+function saveState(text: string, kept: readonly string[]): Promise<Reply<'saved'>> {
+  const basis = stateCount === null ? [] : [utf8(JSON.stringify(stateCount))]
+  const body = packParts([utf8(text), utf8(JSON.stringify(kept)), ...basis])
+  const take = (response: Response) => {
+    stateCount = countIn(response)
+    return 'saved' as const
+  }
+  return ask(LOOPBACK_PATHS.state, take, body)
+}
+
+function countIn({ headers }: Response): number | null {
+  const count = headers.get(COUNT_HEADER)
+  return count === null ? null : Number(count)
 }
 
 /** Each file is handed out once: what was open is restored from the state when the page is loaded again. */

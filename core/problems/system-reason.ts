@@ -1,7 +1,10 @@
 const PLAIN: Readonly<Record<string, string>> = {
   EACCES: 'permission denied',
   EADDRINUSE: 'the port is in use',
+  EDQUOT: 'the share of the disk that is yours is full',
   EEXIST: 'it exists and is not a folder',
+  EFBIG: 'a file of this size is not allowed here',
+  EIO: 'the disk did not do it',
   EISDIR: 'it is a folder',
   ENOENT: 'no such file or folder',
   ENOSPC: 'the disk is full',
