@@ -42,7 +42,7 @@ const ONLY_FROM: readonly { readonly from: string; readonly room: string; readon
   // The command line needs the browser's host to start the window, and for nothing else.
   { from: 'app/cli/start.ts', room: 'app/cli', to: /^app\/browser\// },
   // What a host does for the window is no business of a command; it shares only the way files are read and written.
-  { from: 'app/cli/start.ts', room: 'app/cli', to: /^app\/host\/(?!write-whole$)/ },
+  { from: 'app/cli/start.ts', room: 'app/cli', to: /^app\/host\/(?!(read-unchanged|write-whole)$)/ },
   // The preload passes on what it is given: what is in it is in every page, so the checks stay out of it.
   { from: 'nowhere', room: 'app/preload', to: /^app\/contract\/(?!(channels|commands|host)$)/ },
   // The bare parser is measured against; everything else reads files through core.
