@@ -1,4 +1,5 @@
 import type { LotAnalysis, WaferAnalysis } from '../../core/analysis/lot-analysis'
+import { acceptanceWords } from '../../core/conformity/acceptance'
 import { formatFixed, formatSignificant } from '../../core/units/format'
 import { aligned } from './text-table'
 
@@ -46,6 +47,7 @@ export function lotTable(analysis: LotAnalysis): string {
     rule,
     body.at(-1),
     '',
+    ...(analysis.procedure.acceptance.rule === 'simple' ? [] : [acceptanceWords(analysis.procedure.acceptance)]),
     'SUP = 100 s/mean, HLV = 200 (max - min)/(max + min): SEMI MF1618; the lot row is over wafer means',
   ].join('\n')
 }

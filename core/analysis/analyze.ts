@@ -1,8 +1,9 @@
 /** The one pipeline: readings and a procedure to everything that is shown of a lot. */
 import type { CheckResult } from '../check-wafer/check'
+import type { Acceptance } from '../conformity/acceptance'
 import { fillConformanceProbability } from '../conformity/conformance-probability'
 import { judgeLot } from '../conformity/judge-lot'
-import { fillVerdicts } from '../conformity/judge-sites'
+import { fillVerdictsBy } from '../conformity/judge-sites'
 import type { WaferLimits } from '../conformity/judge-wafer'
 import type { Limits } from '../conformity/limits'
 import { lotSentence } from '../conformity/lot-sentence'
@@ -23,6 +24,7 @@ import { analyzeDies } from './dies'
 import { exclusionNotes, flagExcluded, type Exclusion } from './exclusions'
 import { flagProblems, readingProblems } from './findings'
 import { NOT_JUDGED, SITE_FLAGS } from './flags'
+import { lotRisks } from './lot-risks'
 import { layerResults } from './layer-results'
 import type { DieColumns, LotAnalysis, Quantity, SiteColumns } from './lot-analysis'
 import { measuringSetUp, type MeasuringSetUp } from './measuring-set-up'
@@ -71,7 +73,7 @@ export function analyze(input: AnalysisInput): LotAnalysis {
   const unmatched = flagExcluded(readings, excluded, sites.flags)
   const limits = limitsOn(quantity, procedure)
   const { members, outliers } = membersAndOutliers(readings, procedure, sites)
-  judgeSites(sites, limits.site)
+  judgeSites(sites, limits.site, procedure.acceptance)
   enter('mapping')
   const dies = analyzeDies(procedure, outline, positions, inReadingOrder(members), sites, limits.site)
   enter('judging')
@@ -97,6 +99,7 @@ export function analyze(input: AnalysisInput): LotAnalysis {
     dies,
     wafers,
     lot,
+    risks: lotRisks({ procedure, sites, members, limits: limits.site }),
     excluded,
     problems: [...problems, ...found],
     notes: [
@@ -153,10 +156,10 @@ function membersAndOutliers(
   return { members: areLeftOut ? waferMembers(readings, flags) : members, outliers }
 }
 
-function judgeSites(sites: SiteColumns, limits: Limits | undefined): void {
+function judgeSites(sites: SiteColumns, limits: Limits | undefined, acceptance: Acceptance): void {
   const { value, u, conformanceProbability, verdict, flags } = sites
   fillConformanceProbability({ value, u, limits: limits ?? {} }, conformanceProbability)
-  fillVerdicts(value, limits, verdict)
+  fillVerdictsBy({ value, u }, limits, acceptance, verdict)
   const notAssessed = verdictCode('not-assessed')
   for (let i = 0; i < verdict.length; i++) if (flags[i] & NOT_JUDGED) verdict[i] = notAssessed
 }
@@ -181,7 +184,8 @@ function judgeWafersAndLot({
   const { uniformityPercent: uniformity, allowedSitesOut } = procedure.limits
   const waferLimits: WaferLimits = { site: limits.site, mean: limits.waferMean, uniformity, allowedSitesOut }
   const diesOf = (index: number) => dies && { columns: dies, rows: rowsOfWafer(dies, index, members.length) }
-  const common = { readings, positions, sites, limits: waferLimits, quantity }
+  const { acceptance } = procedure
+  const common = { readings, positions, sites, limits: waferLimits, acceptance, quantity }
   const judged = members.map((wafer, k) =>
     analyzeWafer({ ...common, members: wafer, outliers: outliers[k], dies: diesOf(wafer.index) }),
   )

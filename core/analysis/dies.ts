@@ -1,6 +1,6 @@
 /** Dies judged from the sites: from those that lie in them, else interpolated from all of the wafer's. */
 import { fillConformanceProbability } from '../conformity/conformance-probability'
-import { fillVerdicts } from '../conformity/judge-sites'
+import { fillVerdictsBy } from '../conformity/judge-sites'
 import type { Limits } from '../conformity/limits'
 import { interpolatorsFor, type Interpolator } from '../map/interpolator'
 import type { Procedure } from '../procedure/schema'
@@ -62,7 +62,7 @@ export function analyzeDies(
   })
   const { value, u } = columns
   fillConformanceProbability({ value, u, limits: limits ?? {} }, columns.conformanceProbability)
-  fillVerdicts(value, limits, columns.verdict)
+  fillVerdictsBy({ value, u }, limits, procedure.acceptance, columns.verdict)
   return columns
 }
 

@@ -11,6 +11,7 @@ import type { Problem } from '../problems/problem'
 import type { Procedure } from '../procedure/schema'
 import type { CheckOfLot } from './check-of-lot'
 import type { Exclusion } from './exclusions'
+import type { LotRisks } from './lot-risks'
 import type { Repeatability } from './repeatability'
 import type { Statistics } from '../statistics/summarize'
 import type { VarianceComponents } from '../statistics/components-of-variance'
@@ -37,6 +38,8 @@ export interface LotAnalysis {
   readonly dies: DieColumns | null
   readonly wafers: readonly WaferAnalysis[]
   readonly lot: LotSummary
+  /** Of the decision rule on such lots; null without limits, uncertainties or a spread. */
+  readonly risks: LotRisks | null
   /** Sites that a person took out, as asked for. */
   readonly excluded: readonly Exclusion[]
   /** Rejected rows and everything else that was wrong, in reading order. */

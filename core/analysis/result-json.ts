@@ -4,7 +4,7 @@ import type { LotAnalysis, WaferAnalysis } from './lot-analysis'
 import { flagNames } from './flags'
 import { mobilityComparison } from './mobility-comparison'
 import { figuresObject, patternsObject, statisticsOtherwiseObject } from './result-details'
-import { checkPart, gaugePart, uncertaintyObject } from './trust-objects'
+import { acceptanceObject, checkPart, gaugePart, uncertaintyObject } from './trust-objects'
 import { waferDetails, type WaferDetails } from './wafer-details'
 import type { VarianceComponents, VarianceComponent } from '../statistics/components-of-variance'
 import type { Statistics } from '../statistics/summarize'
@@ -46,6 +46,7 @@ export function resultObject(analysis: LotAnalysis, context: ResultContext): obj
     },
     layer: layerObject(analysis),
     uncertainty: uncertaintyObject(analysis),
+    acceptance: acceptanceObject(analysis),
     gauge: gaugePart(analysis),
     checkWafer: checkPart(analysis.check),
     wafers: wafers.map((wafer) => waferObject(wafer, analysis, detailsOf(wafer))),

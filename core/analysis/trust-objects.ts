@@ -1,8 +1,11 @@
 /** What result.json says of how far its numbers can be trusted: the budget of a site, the gauge, the check wafer. */
 import { checkObject } from '../check-wafer/check-object'
 import { gaugeObject } from '../gauge/study-object'
+import { acceptanceWords } from '../conformity/acceptance'
+import type { GlobalRisks } from '../conformity/global-risk'
 import type { CheckOfLot } from './check-of-lot'
 import type { LotAnalysis } from './lot-analysis'
+import { RISK_SOURCE } from './lot-risks'
 import { reportSite } from './report-site'
 import { siteWorking } from './site-working'
 
@@ -33,6 +36,27 @@ export function uncertaintyObject(analysis: LotAnalysis): object | null {
       shared: line.shared,
     })),
     source: 'JCGM 100:2008',
+  }
+}
+
+/** The decision rule, and what it risks on such lots. */
+export function acceptanceObject({ procedure: { acceptance }, risks }: LotAnalysis): object {
+  const shares = ({ consumer, producer, nonconforming, accepted }: GlobalRisks) => ({
+    falseAccept: consumer, falseReject: producer, nonconforming, accepted,
+  }) // prettier-ignore
+  return {
+    rule: acceptance.rule,
+    guardFactor: acceptance.guardFactor,
+    maximumFalseAcceptRisk: acceptance.maximumFalseAcceptRisk,
+    sentence: acceptanceWords(acceptance),
+    risks: risks && {
+      ...shares(risks),
+      standardUncertainty: risks.u,
+      acceptanceLimits: { lower: risks.acceptanceLimits.lower ?? null, upper: risks.acceptanceLimits.upper ?? null },
+      process: { ...risks.process, given: risks.isGiven },
+      byRule: Object.fromEntries(Object.entries(risks.byRule).map(([rule, of]) => [rule, shares(of)])),
+    },
+    source: RISK_SOURCE,
   }
 }
 

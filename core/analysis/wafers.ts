@@ -1,4 +1,5 @@
 /** From site columns to wafers: which sites belong and count, statistics, and what is needed to judge. */
+import type { Acceptance } from '../conformity/acceptance'
 import { siteFindings } from '../conformity/judge-sites'
 import { judgeWafer, type WaferJudgement, type WaferLimits } from '../conformity/judge-wafer'
 import { countVerdicts } from '../conformity/verdict'
@@ -54,14 +55,17 @@ export interface WaferToAnalyze {
   readonly dies: { readonly columns: DieColumns; readonly rows: Uint32Array } | null
   readonly outliers: Uint32Array
   readonly limits: WaferLimits
+  readonly acceptance: Acceptance
   readonly quantity: Quantity
 }
 
 export function analyzeWafer(wafer: WaferToAnalyze): { wafer: WaferAnalysis; judgement: WaferJudgement } {
-  const { members, sites, positions, limits, quantity, readings } = wafer
+  const { members, sites, positions, limits, acceptance, quantity, readings } = wafer
   const { id, slot, rejectedRows } = readings.wafers[members.index]
   const statistics = summarize(sites.value, members.counting)
-  const judgement = judgeWafer({ id, statistics, limits, unit: quantity.unit, findings: findingsOf(wafer) })
+  const uMean = uncertaintyOfMean(sites, members.counting)
+  const findings = findingsOf(wafer)
+  const judgement = judgeWafer({ id, statistics, limits, unit: quantity.unit, findings, uMean, acceptance })
   const meanOf = (column: Float64Array): number => finiteMean(column, members.counting)
   return {
     judgement,
@@ -73,7 +77,7 @@ export function analyzeWafer(wafer: WaferToAnalyze): { wafer: WaferAnalysis; jud
       statistics,
       outliers: wafer.outliers,
       statisticsOtherwise: statisticsOtherwise(wafer),
-      uMean: uncertaintyOfMean(sites, members.counting),
+      uMean,
       means: {
         resistivity_ohm_cm: meanOf(sites.resistivity_ohm_cm),
         concentration_cm3: meanOf(sites.concentration_cm3),

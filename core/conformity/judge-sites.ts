@@ -1,4 +1,5 @@
-/** Sites and dies against their limits, by simple acceptance: the value decides, its uncertainty doesn't (JCGM 106:2012, 8.2). */
+/** Sites and dies against their limits, by the procedure's decision rule. */
+import { judgeBy, type Acceptance } from './acceptance'
 import { sideOf, hasLimits, type Limits } from './limits'
 import { countVerdicts, verdictCode, type Verdict, type VerdictCounts } from './verdict'
 
@@ -12,7 +13,19 @@ export function judgeValue(value: number, limits: Limits | undefined): Verdict {
   return side === 'inside' ? 'in-spec' : 'out-of-spec'
 }
 
-/** As `judgeValue`, a column at a time, into codes in the order of VERDICTS. */
+/** As `judgeBy`, a column at a time, into codes in the order of VERDICTS. */
+export function fillVerdictsBy(
+  { value, u }: { readonly value: Float64Array; readonly u: Float64Array },
+  limits: Limits | undefined,
+  acceptance: Acceptance,
+  out: Uint8Array,
+): Uint8Array {
+  if (acceptance.rule === 'simple') return fillVerdicts(value, limits, out)
+  for (let i = 0; i < value.length; i++) out[i] = verdictCode(judgeBy(value[i], u[i], limits, acceptance))
+  return out
+}
+
+/** By simple acceptance: the value decides, its uncertainty doesn't (JCGM 106:2012, 8.2). */
 export function fillVerdicts(value: Float64Array, limits: Limits | undefined, out: Uint8Array): Uint8Array {
   const inSpec = verdictCode('in-spec')
   const outOfSpec = verdictCode('out-of-spec')
@@ -48,10 +61,11 @@ export interface JudgedSites {
 }
 
 export function siteFindings({ value, verdict, x_mm, y_mm, sites, limits }: JudgedSites): SiteFindings {
+  const outOfSpec = verdictCode('out-of-spec')
   let above = 0
   let below = 0
   for (const site of sites) {
-    const side = limits ? sideOf(value[site], limits) : null
+    const side = limits && verdict[site] === outOfSpec ? sideOf(value[site], limits) : null
     if (side === 'above') above++
     if (side === 'below') below++
   }

@@ -2,11 +2,13 @@
 import type { NonuniformityId } from '../statistics/nonuniformity'
 import type { Statistics } from '../statistics/summarize'
 import type { SiteFindings } from './judge-sites'
+import { acceptanceLimits, judgeBy, SIMPLE, type Acceptance } from './acceptance'
 import { hasLimits, sideOf, type Limits } from './limits'
 import {
   NO_LIMITS,
   judgedSites,
   meanReason,
+  meanUndecidedReason,
   missingSitesReason,
   sitesReason,
   undecidedSitesReason,
@@ -31,6 +33,9 @@ export interface WaferToJudge {
   readonly statistics: Statistics
   readonly limits: WaferLimits
   readonly unit: string
+  /** Standard uncertainty of the mean; absent or NaN: the mean is judged simply. */
+  readonly uMean?: number
+  readonly acceptance?: Acceptance
 }
 
 /** One thing that was judged, and how it came out. */
@@ -57,6 +62,8 @@ export function hasAnyLimit(limits: WaferLimits): boolean {
 }
 
 /**
+ * The uniformity is judged simply whatever the rule: its uncertainty is that of so few sites, not of the measurement.
+ *
  * Out of spec where anything judged is; else undecided where anything is; else in spec. Not assessed without limits or
  * without a single site that counts. Sites without a reading are said, and decide nothing while others are judged.
  */
@@ -89,11 +96,18 @@ function judgeSites({ findings, limits, unit }: WaferToJudge): Finding | null {
   return { about: 'sites', verdict: 'undecided', reason: undecidedSitesReason(undecided, judgedSites(findings)) }
 }
 
-function judgeMean({ statistics, limits, unit }: WaferToJudge): Finding | null {
+function judgeMean({ statistics, limits, unit, uMean = NaN, acceptance = SIMPLE }: WaferToJudge): Finding | null {
   if (!hasLimits(limits.mean)) return null
-  const side = sideOf(statistics.mean, limits.mean)
-  const reason = meanReason(statistics.mean, side, limits.mean, unit)
-  return { about: 'mean', verdict: side === 'inside' ? 'in-spec' : 'out-of-spec', reason }
+  const { mean } = statistics
+  const verdict = judgeBy(mean, uMean, limits.mean, acceptance)
+  if (verdict === 'undecided') {
+    const accepted = acceptanceLimits(limits.mean, uMean, acceptance)
+    return { about: 'mean', verdict, reason: meanUndecidedReason(mean, accepted, limits.mean, unit) }
+  }
+  const side = sideOf(mean, limits.mean)
+  const isTolerated = verdict === 'in-spec' && side !== 'inside'
+  const reason = meanReason(mean, side, limits.mean, unit)
+  return { about: 'mean', verdict, reason: isTolerated ? `${reason}, within its guard band` : reason }
 }
 
 function judgeUniformity({ statistics, limits }: WaferToJudge): Finding | null {

@@ -54,6 +54,19 @@ export function meanReason(
   return `mean ${apartFrom(limit, mean, unit)} ${unit} ${side} the limit of ${asWritten(limit)} ${unit}`
 }
 
+/** "mean 94.61 Ω/sq in the guard band: inside 89 to 95 Ω/sq, and accepted only inside 89.42 to 94.58 Ω/sq". */
+export function meanUndecidedReason(mean: number, accepted: Limits, limits: Limits, unit: string): string {
+  const { lower = -Infinity, upper = Infinity } = accepted
+  const only =
+    lower > upper ? 'too uncertain to be accepted anywhere' : `accepted only inside ${shortLimits(accepted, unit)}`
+  return `mean ${formatNumber(mean, unit)} ${unit} in the guard band: inside ${limitsText(limits, unit)}, and ${only}`
+}
+
+function shortLimits({ lower, upper }: Limits, unit: string): string {
+  const short = (limit: number | undefined) => (limit === undefined ? undefined : Number(limit.toPrecision(4)))
+  return limitsText({ lower: short(lower), upper: short(upper) }, unit)
+}
+
 /** "non-uniformity 2.41 % above the limit of 1.5 % (100 s / mean)". */
 export function uniformityReason(percent: number, upper: number, formula: string): string {
   const limit = `limit of ${asWritten(upper)} % (${formula})`
@@ -66,7 +79,7 @@ export function uniformityUnknownReason(sites: number, formula: string): string 
 }
 
 export function undecidedSitesReason(undecided: number, judged: number): string {
-  return `${undecided} of ${plural(judged, 'site')} undecided`
+  return `${undecided} of ${plural(judged, 'site')} undecided, in the guard band`
 }
 
 /** "1 of 49 sites has no usable reading". */

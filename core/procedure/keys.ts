@@ -104,6 +104,13 @@ const MEANINGS: Readonly<Record<string, string>> = {
   'limits.uniformityPercent.upper': 'greatest non-uniformity of a wafer in spec',
   'limits.uniformityPercent.definition': 'formula of the non-uniformity',
   'limits.allowedSitesOut': 'how many sites of a wafer may lie outside the site limits before the wafer does',
+  'acceptance.rule':
+    'how uncertainty enters a verdict: not at all, inside a guard band, outside one, or by the risk of a false acceptance',
+  'acceptance.guardFactor': 'width of the guard band over U = 2u, of the rules "stringent" and "relaxed"',
+  'acceptance.maximumFalseAcceptRisk':
+    'of the rule "risk": how probable it may be that an accepted value truly lies outside its limits',
+  'acceptance.process.mean': 'mean of what is made, for the risks of a lot; from the lot itself without it',
+  'acceptance.process.standardDeviation': 'standard deviation of the true values of what is made',
   'statistics.confidence': 'level of every confidence interval',
   'statistics.outliers.alpha': 'chance of finding an outlier on a wafer that has none',
   'statistics.outliers.leaveOut':
@@ -159,6 +166,8 @@ const SECTION_MEANINGS: Readonly<Record<string, string>> = {
   'limits.resistivityOhmCm': 'limits of a site',
   'limits.waferMeanOhmCm': "limits of a wafer's mean",
   'limits.uniformityPercent': 'limit of the non-uniformity of a wafer',
+  acceptance: 'how far inside its limits a value must lie to be accepted',
+  'acceptance.process': 'what is made, as known before this lot',
   statistics: 'how certain an interval is, and what is done with outliers',
   'statistics.outliers': 'sites that a normal sample would hardly hold (generalized ESD test)',
   dieGrid: 'the dies of a wafer; without it none are judged',

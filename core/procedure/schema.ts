@@ -3,6 +3,7 @@
  * ranges and safe defaults are written; what a person reads of a wrong key is made in `parse-procedure.ts`.
  */
 import { z } from 'zod'
+import { ACCEPTANCE_RULES } from '../conformity/acceptance'
 import { COLUMN_IDS } from '../ingest/readings'
 import { DOPANTS } from '../silicon/dopants'
 import { mobilityIds } from '../silicon/mobility/registry'
@@ -180,6 +181,17 @@ const checkWafer = z.strictObject({
   acceptedValue: z.number().gt(0).optional(),
 })
 
+/** How far inside its limits a value must lie to be accepted (JCGM 106:2012, 8). */
+const acceptance = z.strictObject({
+  rule: z.enum(ACCEPTANCE_RULES).default('simple'),
+  /** Guard band over U = 2u, of the rules "stringent" and "relaxed". */
+  guardFactor: z.number().min(0).max(5).default(1),
+  /** Of the rule "risk". */
+  maximumFalseAcceptRisk: z.number().min(1e-6).max(0.5).default(0.05),
+  /** True values of what is made, for the lot's risks; absent: taken from the lot. */
+  process: z.strictObject({ mean: z.number().gt(0), standardDeviation: z.number().gt(0) }).optional(),
+})
+
 const columnMapping = z.partialRecord(
   z.enum(COLUMN_IDS),
   z.union([z.string().min(1), z.strictObject({ header: z.string().min(1), unit: z.string().optional() })]),
@@ -202,6 +214,7 @@ export const procedureSchema = z.strictObject({
   layer: layer.default({ kind: 'sheet' }),
   temperature: temperature.prefault({}),
   limits: procedureLimits.prefault({}),
+  acceptance: acceptance.prefault({}),
   statistics: statistics.prefault({}),
   dieGrid: dieGrid.optional(),
   uncertainty: uncertainty.prefault({}),

@@ -8,6 +8,7 @@ import { inputSection } from './sections/input-section'
 import { layerSection } from './sections/layer-section'
 import { procedureSection } from './sections/procedure-section'
 import { statisticsUses } from './sections/statistics-sources'
+import { riskSection } from './sections/risk-section'
 import { sourcesSection } from './sections/sources-section'
 import { summarySection } from './sections/summary-section'
 import { uncertaintySection } from './sections/uncertainty-section'
@@ -39,6 +40,7 @@ export function lotReport(input: LotReportInput): ReportDocument {
       ...layerSection(context),
       ...inputSection(context),
       ...procedureSection(context),
+      ...riskSection(context),
       ...uncertaintySection(context),
       ...gaugeSection(context),
       ...(working ? workingSection(working, context) : []),

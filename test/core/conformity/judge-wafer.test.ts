@@ -61,7 +61,10 @@ describe('the verdict on a wafer', () => {
       const findings = { counts, above: out, below: 0, outOnlyAtEdge: false }
       return judgeWafer({ id: '3', findings, statistics, limits: { ...LIMITS, allowedSitesOut }, unit: 'Ω/sq' })
     }
-    expect(withSites(0, 2, 0)).toMatchObject({ verdict: 'undecided', reasons: ['wafer 3: 2 of 49 sites undecided'] })
+    expect(withSites(0, 2, 0)).toMatchObject({
+      verdict: 'undecided',
+      reasons: ['wafer 3: 2 of 49 sites undecided, in the guard band'],
+    })
     expect(withSites(0, 2, 2).verdict).toBe('in-spec')
     expect(withSites(1, 2, 2).verdict).toBe('undecided')
     expect(withSites(3, 2, 2).verdict).toBe('out-of-spec')
