@@ -3,6 +3,7 @@ import { fillConformanceProbability } from '../conformity/conformance-probabilit
 import { fillVerdictsBy } from '../conformity/judge-sites'
 import type { Limits } from '../conformity/limits'
 import { interpolatorsFor, type Interpolator } from '../map/interpolator'
+import { processFitter, type ProcessSurface } from '../map/process-surface'
 import type { Procedure } from '../procedure/schema'
 import { dieAt, dieLookup, usableDies, type DieGrid, type Dies } from '../wafer/die-grid'
 import type { Outline } from '../wafer/outline'
@@ -52,12 +53,18 @@ export function analyzeDies(
   const dies = usableDies({ outline, edgeExclusion_mm: procedure.wafer.edgeExclusionMm }, grid)
   const columns = emptyColumns(dies, wafers.length)
   const interpolatorAt = interpolatorsFor(dies)
+  const fitAt = procedure.map.interpolation === 'gaussian-process' ? processFitter() : null
   const rowOf = dieLookup(dies)
   wafers.forEach(({ counting }, wafer) => {
     const start = wafer * dies.count
     const x_mm = pick(positions.x_mm, counting)
     const y_mm = pick(positions.y_mm, counting)
-    if (counting.length > 0) interpolate(interpolatorAt(x_mm, y_mm), counting, sites, columns, start)
+    if (counting.length > 0) {
+      const interpolator = interpolatorAt(x_mm, y_mm)
+      const surface = fitAt?.(x_mm, y_mm, pick(sites.value, counting), pick(sites.uIndependent, counting)) ?? null
+      if (surface) predictDies(surface, dies, interpolator, counting, sites, columns, start)
+      else interpolate(interpolator, counting, sites, columns, start)
+    }
     measure(grid, rowOf, counting, { x_mm, y_mm }, sites, columns, start)
   })
   const { value, u } = columns
@@ -107,6 +114,27 @@ function interpolate(
     if (!interpolator.inside[die] || !(estimate[die] > 0)) continue
     columns.value[start + die] = estimate[die]
     columns.u[start + die] = Math.hypot(shared[die], independent[die], interpolation)
+  }
+}
+
+/** The likeliest surface with its standard error, and the part of the uncertainty that all sites share. */
+function predictDies(
+  surface: ProcessSurface,
+  dies: Dies,
+  { inside, evaluate }: Interpolator,
+  counting: Uint32Array,
+  sites: SiteValues,
+  columns: DieColumns,
+  start: number,
+): void {
+  const value = new Float64Array(dies.count)
+  const standardError = new Float64Array(dies.count)
+  surface.at(dies, { value, standardError })
+  const shared = evaluate(pick(sites.uShared, counting))
+  for (let die = 0; die < dies.count; die++) {
+    if (!inside[die] || !(value[die] > 0)) continue
+    columns.value[start + die] = value[die]
+    columns.u[start + die] = Math.hypot(shared[die], standardError[die])
   }
 }
 

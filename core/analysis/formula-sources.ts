@@ -5,6 +5,7 @@ import { THICKNESS_SOURCE } from '../geometry/thickness'
 import { JUNCTION_SOURCE } from '../layer/junction-depth'
 import { layerKind } from '../layer/registry'
 import { layerProfile } from '../layer/profiles/registry'
+import { GAUSSIAN_PROCESS_SOURCE } from '../map/gaussian-process'
 import { METHOD_TITLES } from '../map/interpolator'
 import type { Procedure } from '../procedure/schema'
 import { TEMPERATURE_SOURCE } from '../silicon/temperature'
@@ -43,7 +44,13 @@ export function formulaSources(analysis: LotAnalysis): FormulaSource[] {
     entry('uncertainty', 'Propagation of uncertainty', 'JCGM 100:2008, 5.1.2'),
     entry('conformance', 'Probability to conform', 'JCGM 106:2012, clause 7'),
     ...(analysis.dies
-      ? [entry('dies', `Dies between sites: ${METHOD_TITLES['thin-plate-spline']}`, THIN_PLATE_SOURCE)]
+      ? [
+          entry(
+            'dies',
+            `Dies between sites: ${METHOD_TITLES[procedure.map.interpolation]}`,
+            SURFACE_SOURCES[procedure.map.interpolation],
+          ),
+        ]
       : []),
   ]
 }
@@ -52,5 +59,8 @@ function profileSource({ profile, profileFile }: Extract<Procedure['layer'], { k
   return profile === 'tabulated' ? `the file ${profileFile}` : layerProfile(profile).source
 }
 
-const THIN_PLATE_SOURCE =
-  'J. Duchon, in: Constructive Theory of Functions of Several Variables, Springer (1977) 85 (from memory)'
+const SURFACE_SOURCES = {
+  'thin-plate-spline':
+    'J. Duchon, in: Constructive Theory of Functions of Several Variables, Springer (1977) 85 (from memory)',
+  'gaussian-process': GAUSSIAN_PROCESS_SOURCE,
+} as const

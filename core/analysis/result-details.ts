@@ -70,3 +70,21 @@ export function patternsObject(
     sentences: words.map(({ sentence, mayPointTo }) => ({ sentence, mayPointTo })),
   }
 }
+
+/** How the surface between the sites was made, and how well it is known; the Gaussian process stands beside the plain one. */
+export function mapObject({ map }: WaferDetails): object | null {
+  if (!map) return null
+  const { interpolation, plainLeaveOneOut, process } = map
+  return {
+    interpolation,
+    plainLeaveOneOutRms: plainLeaveOneOut,
+    gaussianProcess: process && {
+      trendDegree: process.surface.degree,
+      lengthScale_mm: process.surface.lengthScale_mm,
+      standardDeviation: process.surface.standardDeviation,
+      nugget: process.surface.nugget,
+      leaveOneOutRms: process.leaveOneOut,
+      coverage95: process.coverage,
+    },
+  }
+}

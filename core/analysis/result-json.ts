@@ -3,7 +3,7 @@ import { explain, placeOf } from '../problems/explain'
 import type { LotAnalysis, WaferAnalysis } from './lot-analysis'
 import { flagNames } from './flags'
 import { mobilityComparison } from './mobility-comparison'
-import { figuresObject, patternsObject, statisticsOtherwiseObject } from './result-details'
+import { figuresObject, mapObject, patternsObject, statisticsOtherwiseObject } from './result-details'
 import { acceptanceObject, checkPart, gaugePart, uncertaintyObject } from './trust-objects'
 import { waferDetails, type WaferDetails } from './wafer-details'
 import type { VarianceComponents, VarianceComponent } from '../statistics/components-of-variance'
@@ -94,6 +94,7 @@ function waferObject(wafer: WaferAnalysis, analysis: LotAnalysis, details: Wafer
     statisticsOtherwise: statisticsOtherwiseObject(analysis, wafer),
     figures: figuresObject(analysis, wafer, details.figures),
     patterns: patternsObject(analysis, wafer, details),
+    map: mapObject(details),
   }
 }
 

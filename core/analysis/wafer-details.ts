@@ -5,6 +5,7 @@ import { patternWords, type PatternWords } from '../map/pattern-words'
 import { CoreError } from '../problems/problem'
 import { siteStatistics, type SiteStatistics } from '../statistics/site-statistics'
 import type { LotAnalysis, WaferAnalysis } from './lot-analysis'
+import { mapFit, type MapFit } from './map-fit'
 import { limitsOn } from './quantity'
 import { sitePositions, type SitePositions } from './site-positions'
 import { countingSites } from './wafers'
@@ -15,6 +16,8 @@ export interface WaferDetails {
   /** null where sites have no places, are too few, or lie on a line. */
   readonly patterns: PatternFindings | null
   readonly words: readonly PatternWords[]
+  /** null without places. */
+  readonly map: MapFit | null
 }
 
 /** Sites a wafer needs before a pattern is looked for: a plane and something left to judge it by. */
@@ -35,7 +38,12 @@ export function waferDetails(analysis: LotAnalysis, wafer: WaferAnalysis): Wafer
     confidence: procedure.statistics.confidence,
   })
   const patterns = positions && patternsOf(analysis, positions, counting)
-  return { figures, patterns, words: patterns ? patternWords(patterns, quantity.unit) : [] }
+  return {
+    figures,
+    patterns,
+    words: patterns ? patternWords(patterns, quantity.unit) : [],
+    map: mapFit(analysis, wafer),
+  }
 }
 
 function patternsOf(analysis: LotAnalysis, positions: SitePositions, counting: Uint32Array): PatternFindings | null {

@@ -9,11 +9,14 @@ import { evaluateTriangles, triangleWeights } from './linear-interpolation'
 import { thinPlateSpline, type Targets } from './thin-plate-spline'
 
 export type InterpolationMethod = 'thin-plate-spline' | 'linear' | 'mean'
+/** As a procedure may choose. */
+export type SurfaceMethod = InterpolationMethod | 'gaussian-process'
 
 /** More distinct sites than this are joined linearly: solving for the spline grows with the cube of their number. */
 export const MAX_SPLINE_SITES = 700
 
-export const METHOD_TITLES: Readonly<Record<InterpolationMethod, string>> = {
+export const METHOD_TITLES: Readonly<Record<SurfaceMethod, string>> = {
+  'gaussian-process': 'Gaussian process about a trend surface',
   'thin-plate-spline': 'thin-plate spline through the sites',
   linear: 'linear between the sites (Delaunay triangles)',
   mean: 'mean of the sites: too few, or all on one line',

@@ -119,6 +119,8 @@ const MEANINGS: Readonly<Record<string, string>> = {
   'dieGrid.pitchYMm': 'die height',
   'dieGrid.offsetXMm': 'shift of the die grid from the wafer centre, along x',
   'dieGrid.offsetYMm': 'shift of the die grid from the wafer centre, along y',
+  'map.interpolation':
+    'what the surface between the sites is: a spline through them, or the likeliest surface with its standard error',
   'uncertainty.currentRel': 'standard uncertainty of the current, relative',
   'uncertainty.voltageRel': 'standard uncertainty of the voltage, relative',
   'uncertainty.thermalEmfUV':
@@ -171,6 +173,7 @@ const SECTION_MEANINGS: Readonly<Record<string, string>> = {
   statistics: 'how certain an interval is, and what is done with outliers',
   'statistics.outliers': 'sites that a normal sample would hardly hold (generalized ESD test)',
   dieGrid: 'the dies of a wafer; without it none are judged',
+  map: 'how the surface between the sites is made',
   uncertainty: 'standard uncertainties of what goes into the results',
   gaugeStudy: 'a study of how far the prober itself spreads',
   checkWafer: 'a wafer measured again and again to see whether the prober still reads as it did',

@@ -165,6 +165,11 @@ const uncertainty = z.strictObject({
   degreesOfFreedom: z.partialRecord(z.enum(UNCERTAINTY_COMPONENTS), z.number().min(1).max(1e6)).default({}),
 })
 
+/** How a wafer's surface between its sites is made, for maps and for dies without a site. */
+const map = z.strictObject({
+  interpolation: z.enum(['thin-plate-spline', 'gaussian-process']).default('thin-plate-spline'),
+})
+
 /** A study of the prober's own spread; its components enter the uncertainty of every site. */
 const gaugeStudy = z.strictObject({
   file: z.string().max(200).regex(BARE_FILE_NAME),
@@ -217,6 +222,7 @@ export const procedureSchema = z.strictObject({
   acceptance: acceptance.prefault({}),
   statistics: statistics.prefault({}),
   dieGrid: dieGrid.optional(),
+  map: map.prefault({}),
   uncertainty: uncertainty.prefault({}),
   gaugeStudy: gaugeStudy.optional(),
   checkWafer: checkWafer.optional(),

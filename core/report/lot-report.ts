@@ -6,6 +6,7 @@ import { findingsSection } from './sections/findings-section'
 import { gaugeSection } from './sections/gauge-section'
 import { inputSection } from './sections/input-section'
 import { layerSection } from './sections/layer-section'
+import { mapErrorSection } from './sections/map-error-section'
 import { procedureSection } from './sections/procedure-section'
 import { statisticsUses } from './sections/statistics-sources'
 import { riskSection } from './sections/risk-section'
@@ -37,6 +38,7 @@ export function lotReport(input: LotReportInput): ReportDocument {
       ...summarySection(context),
       ...findingsSection(context),
       ...context.wafers.flatMap((wafer) => waferSection(wafer, context)),
+      ...mapErrorSection(context),
       ...layerSection(context),
       ...inputSection(context),
       ...procedureSection(context),

@@ -73,6 +73,7 @@ export function reportContext(input: LotReportInput, sources: SourceList): Repor
       x_mm: Float64Array.from(sites, (i) => x[i]),
       y_mm: Float64Array.from(sites, (i) => y[i]),
       value: Float64Array.from(sites, (i) => value[i]),
+      u: Float64Array.from(sites, (i) => analysis.sites.uIndependent[i]),
       verdict: Uint8Array.from(sites, (i) => verdict[i]),
       excluded: Uint8Array.from(sites, (i) => (flags[i] & LEFT_OUT ? 1 : 0)),
     }),
@@ -80,7 +81,7 @@ export function reportContext(input: LotReportInput, sources: SourceList): Repor
     hasPositions: positions !== null,
     positions,
     scale,
-    surfaceOf: surfacesFor(analysis.outline, scale),
+    surfaceOf: surfacesFor(analysis.outline, scale, analysis.procedure.map.interpolation),
     sources,
   }
 }

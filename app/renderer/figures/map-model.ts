@@ -7,6 +7,7 @@ import { markOf, type MarkKind } from '../../../core/report/figures/marks'
 import { drawnExtent, outlineRing, type Extent } from '../../../core/report/figures/outline-path'
 import type { MapSites } from '../../../core/report/figures/wafer-map'
 import { surfacesFor, type MapDetail, type WaferSurface } from '../../../core/report/surface'
+import type { Procedure } from '../../../core/procedure/schema'
 import type { Outline } from '../../../core/wafer/outline'
 import type { MapLayer } from './layers'
 import type { LotPictures } from './lot-pictures'
@@ -38,6 +39,8 @@ export interface MapPlaces {
   readonly x_mm: Float64Array
   readonly y_mm: Float64Array
   readonly value: Float64Array
+  /** Standard uncertainty that each site has to itself. */
+  readonly u: Float64Array
   readonly kind: readonly MarkKind[]
   readonly isExcluded: Uint8Array
 }
@@ -67,7 +70,7 @@ export function mapModel(pictures: LotPictures, wafer: WaferAnalysis, layer: Map
 /** A surface of values that belong to no single wafer: a difference, or the mean of a lot. */
 export function surfaceModel(pictures: LotPictures, x_mm: Float64Array, y_mm: Float64Array, value: Float64Array, scale: BandScale): MapModel {
   const kind = Array.from(value, (v): MarkKind => (Number.isNaN(v) ? 'not-assessed' : 'in-spec'))
-  const places = { site: value.map((_, i) => i), x_mm, y_mm, value, kind, isExcluded: new Uint8Array(value.length) }
+  const places = { site: value.map((_, i) => i), x_mm, y_mm, value, u: new Float64Array(value.length), kind, isExcluded: new Uint8Array(value.length) }
   return {
     ...frameOf(pictures, places),
     ...joined(pictures, places, scale),
@@ -93,19 +96,23 @@ function frameOf({ analysis }: LotPictures, { x_mm, y_mm }: MapPlaces) {
 function joined({ analysis }: LotPictures, places: MapPlaces, scale: BandScale) {
   const sites = surfaceSites(places, 'large')
   if (sites.value.length > MOST_SITES_HERE) return { bands: null, method: null, toJoin: sites }
-  const surface = surfaceMaker(analysis.outline, scale)(sites, 'large')
+  const surface = surfaceMaker(analysis.outline, scale, analysis.procedure.map.interpolation)(sites, 'large')
   return { ...painted(surface, scale, places.value.length, 'large'), toJoin: null }
 }
 
 type SurfaceOf = ReturnType<typeof surfacesFor>
-const makers = new WeakMap<BandScale, { readonly outline: Outline; readonly make: SurfaceOf }>()
+type Interpolation = Procedure['map']['interpolation']
+const makers = new WeakMap<
+  BandScale,
+  { readonly outline: Outline; readonly interpolation: Interpolation; readonly make: SurfaceOf }
+>()
 
 /** One a scale, so that the interpolation of a site pattern is prepared once and serves every wafer. */
-export function surfaceMaker(outline: Outline, scale: BandScale): SurfaceOf {
+export function surfaceMaker(outline: Outline, scale: BandScale, interpolation: Interpolation): SurfaceOf {
   const known = makers.get(scale)
-  if (known?.outline === outline) return known.make
-  const make = surfacesFor(outline, scale)
-  makers.set(scale, { outline, make })
+  if (known?.outline === outline && known.interpolation === interpolation) return known.make
+  const make = surfacesFor(outline, scale, interpolation)
+  makers.set(scale, { outline, interpolation, make })
   return make
 }
 
@@ -124,7 +131,8 @@ export function painted(
 }
 
 export function waferSurface(pictures: LotPictures, places: MapPlaces, layer: MapLayer, detail: MapDetail): WaferSurface | null {
-  return surfaceMaker(pictures.analysis.outline, layer.scale)(surfaceSites(places, detail), detail)
+  const { outline, procedure } = pictures.analysis
+  return surfaceMaker(outline, layer.scale, procedure.map.interpolation)(surfaceSites(places, detail), detail)
 } // prettier-ignore
 
 /** More sites than these tell a raster of a map nothing new. */
@@ -133,13 +141,13 @@ const MOST_SURFACE_SITES: Readonly<Record<MapDetail, number>> = { large: 5000, s
 const MOST_SITES_HERE = 800
 
 /** Excluded sites don't shape the surface; of very many sites, every so-manieth does. */
-function surfaceSites({ x_mm, y_mm, value, isExcluded }: MapPlaces, detail: MapDetail): MapSites {
+function surfaceSites({ x_mm, y_mm, value, u, isExcluded }: MapPlaces, detail: MapDetail): MapSites {
   const every = strideOf(value.length, detail)
-  if (every === 1) return { x_mm, y_mm, value, verdict: [], excluded: isExcluded }
+  if (every === 1) return { x_mm, y_mm, value, u, verdict: [], excluded: isExcluded }
   const rows = Uint32Array.from({ length: Math.ceil(value.length / every) }, (_, i) => i * every)
   const pick = (column: Float64Array): Float64Array => Float64Array.from(rows, (row) => column[row])
   const excluded = Uint8Array.from(rows, (row) => isExcluded[row])
-  return { x_mm: pick(x_mm), y_mm: pick(y_mm), value: pick(value), verdict: [], excluded }
+  return { x_mm: pick(x_mm), y_mm: pick(y_mm), value: pick(value), u: pick(u), verdict: [], excluded }
 }
 
 /** Odd, so that it doesn't fall in step with the rows of a lattice. */
@@ -163,6 +171,7 @@ export function waferPlaces(pictures: LotPictures, wafer: WaferAnalysis, { colum
     x_mm: picked(positions?.x_mm, sites),
     y_mm: picked(positions?.y_mm, sites),
     value: picked(isJudged ? value : column, sites),
+    u: picked(isJudged ? analysis.sites.uIndependent : undefined, sites),
     kind,
     isExcluded,
   }

@@ -5,6 +5,7 @@
 import type { MapDetail, WaferSurface } from '../../../core/report/surface'
 import type { BandScale } from '../../../core/report/figures/band-scale'
 import type { MapSites } from '../../../core/report/figures/wafer-map'
+import type { Procedure } from '../../../core/procedure/schema'
 import type { Outline } from '../../../core/wafer/outline'
 
 /** Input and output of each; both are copied between the page and the worker, so they are plain data. */
@@ -15,6 +16,7 @@ export interface Tasks {
       readonly scale: BandScale
       readonly sites: MapSites
       readonly detail: MapDetail
+      readonly interpolation: Procedure['map']['interpolation']
     }
     readonly output: WaferSurface | null
   }
@@ -32,6 +34,7 @@ type Work<Name extends TaskName> = (input: TaskInput<Name>, tell: TellShare) => 
 export const TASKS: { readonly [Name in TaskName]: () => Promise<Work<Name>> } = {
   'wafer-surface': async () => {
     const { surfacesFor } = await import('../../../core/report/surface')
-    return ({ outline, scale, sites, detail }) => surfacesFor(outline, scale)(sites, detail)
+    return ({ outline, scale, sites, detail, interpolation }) =>
+      surfacesFor(outline, scale, interpolation)(sites, detail)
   },
 }

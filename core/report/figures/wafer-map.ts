@@ -13,6 +13,8 @@ import { siteDecimals, siteValues, type MarkedSite } from './site-values'
 import { niceTicks } from './ticks'
 
 export interface MapSites {
+  /** Standard uncertainty that each site has to itself; absent: none. */
+  readonly u?: ArrayLike<number>
   readonly x_mm: ArrayLike<number>
   readonly y_mm: ArrayLike<number>
   readonly value: ArrayLike<number>

@@ -1,6 +1,7 @@
 /** One page for one wafer: its map, how its values run and spread, its statistics, and what they imply for the layer. */
 import type { WaferAnalysis } from '../../analysis/lot-analysis'
 import { COLUMN_GAP_PT, columnWidths_pt, type Block, type ColumnsBlock, type KeyValue } from '../document'
+import { formatQuantity } from '../../units/format'
 import { labelWidth_pt } from '../drawing'
 import { reasonsOf, VERDICT_WORDS, waferMarkOf, waferTitle, type ReportContext } from '../report-context'
 import { histogramFigure, radialFigure, waferMapFigure } from './wafer-figures'
@@ -70,16 +71,23 @@ function figures(wafer: WaferAnalysis, heights: FigureHeights, context: ReportCo
   }
   return [
     { ...columns, columns: [[{ kind: 'figures', figures: [drawn.map] }], counts] },
-    caption(drawn.method),
+    caption(drawn.method, wafer, context),
     { kind: 'figures', figures: [radialFigure(wafer, chart, context), spread] },
   ]
 }
 
-function caption(method: string | null): Block {
+function caption(method: string | null, wafer: WaferAnalysis, context: ReportContext): Block {
   const map = method
-    ? `Colours between the sites: ${method}; extrapolated beyond the outermost. Printed values are those of the sites. `
+    ? `Colours between the sites: ${method}; extrapolated beyond the outermost${leftOutWords(wafer, context)}. Printed values are those of the sites. `
     : ''
   return { kind: 'paragraph', text: `${map}Radial profile: ring means ± standard error.`, quiet: true }
+}
+
+/** How far off the surface is where a site is left out of it. */
+function leftOutWords(wafer: WaferAnalysis, { detailsOf, analysis: { quantity } }: ReportContext): string {
+  const fit = detailsOf(wafer).map
+  const rms = fit?.interpolation === 'gaussian-process' ? fit.process!.leaveOneOut : (fit?.plainLeaveOneOut ?? NaN)
+  return Number.isFinite(rms) ? `; a site left out is missed by ${formatQuantity(rms, quantity.unit)} rms` : ''
 }
 
 function countStack(wafer: WaferAnalysis): Block[] {

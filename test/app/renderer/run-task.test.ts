@@ -40,6 +40,7 @@ const input: TaskInput<'wafer-surface'> = {
     verdict: [],
   },
   detail: 'small',
+  interpolation: 'thin-plate-spline',
 }
 
 describe('the task runner', () => {

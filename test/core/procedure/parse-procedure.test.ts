@@ -49,6 +49,7 @@ describe('a good procedure', () => {
       { key: 'statistics.confidence', value: '0.95' },
       { key: 'statistics.outliers.alpha', value: '0.05' },
       { key: 'statistics.outliers.leaveOut', value: 'false' },
+      { key: 'map.interpolation', value: '"thin-plate-spline"' },
       { key: 'uncertainty.thermalEmfUV', value: '0' },
       { key: 'uncertainty.spacingWanderMm', value: '0' },
       { key: 'uncertainty.orientationDeg', value: '0' },
