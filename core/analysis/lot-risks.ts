@@ -36,13 +36,13 @@ export function lotRisks({
   if (!hasLimits(limits)) return null
   const { acceptance } = procedure
   const u = typical(sites.u, members)
-  const process = acceptance.process ?? processOf(sites, members)
-  if (!(u > 0) || !(process.standardDeviation > 0)) return null
-  const risksUnder = (rule: AcceptanceRule): GlobalRisks => globalRisks(limits, u, process, { ...acceptance, rule })
+  const production = acceptance.process ?? processOf(sites, members)
+  if (!(u > 0) || !(production.standardDeviation > 0)) return null
+  const risksUnder = (rule: AcceptanceRule): GlobalRisks => globalRisks(limits, u, production, { ...acceptance, rule })
   const byRule = Object.fromEntries(ACCEPTANCE_RULES.map((rule) => [rule, risksUnder(rule)])) as LotRisks['byRule']
   return {
     ...byRule[acceptance.rule],
-    process,
+    process: production,
     isGiven: acceptance.process !== undefined,
     u,
     limits,

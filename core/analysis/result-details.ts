@@ -74,17 +74,17 @@ export function patternsObject(
 /** How the surface between the sites was made, and how well it is known; the Gaussian process stands beside the plain one. */
 export function mapObject({ map }: WaferDetails): object | null {
   if (!map) return null
-  const { interpolation, plainLeaveOneOut, process } = map
+  const { interpolation, plainLeaveOneOut, process: fit } = map
   return {
     interpolation,
     plainLeaveOneOutRms: plainLeaveOneOut,
-    gaussianProcess: process && {
-      trendDegree: process.surface.degree,
-      lengthScale_mm: process.surface.lengthScale_mm,
-      standardDeviation: process.surface.standardDeviation,
-      nugget: process.surface.nugget,
-      leaveOneOutRms: process.leaveOneOut,
-      coverage95: process.coverage,
+    gaussianProcess: fit && {
+      trendDegree: fit.surface.degree,
+      lengthScale_mm: fit.surface.lengthScale_mm,
+      standardDeviation: fit.surface.standardDeviation,
+      nugget: fit.surface.nugget,
+      leaveOneOutRms: fit.leaveOneOut,
+      coverage95: fit.coverage,
     },
   }
 }

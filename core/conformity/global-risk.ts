@@ -39,10 +39,10 @@ const PANELS = 60
  * @param u  standard uncertainty of measurement, > 0
  * @throws CoreError out-of-range unless u and the process's standard deviation are positive
  */
-export function globalRisks(limits: Limits, u: number, process: Process, acceptance: Acceptance): GlobalRisks {
+export function globalRisks(limits: Limits, u: number, production: Process, acceptance: Acceptance): GlobalRisks {
   requireRange('standard uncertainty', u, '', Number.MIN_VALUE, 1e300)
-  requireRange('standard deviation of the process', process.standardDeviation, '', Number.MIN_VALUE, 1e300)
-  const { mean, standardDeviation: s } = process
+  requireRange('standard deviation of the process', production.standardDeviation, '', Number.MIN_VALUE, 1e300)
+  const { mean, standardDeviation: s } = production
   const { lower = -Infinity, upper = Infinity } = limits
   const { lower: from = -Infinity, upper: to = Infinity } = acceptanceLimits(limits, u, acceptance)
   const isEmpty = !(from < to)

@@ -20,7 +20,7 @@ export function riskSection({ analysis }: ReportContext): Block[] {
 }
 
 function riskBlocks(risks: LotRisks, unit: string, rule: keyof LotRisks['byRule']): Block[] {
-  const { process, isGiven, u, limits, acceptanceLimits } = risks
+  const { process: production, isGiven, u, limits, acceptanceLimits } = risks
   return [
     {
       kind: 'key-values',
@@ -30,7 +30,7 @@ function riskBlocks(risks: LotRisks, unit: string, rule: keyof LotRisks['byRule'
         { key: 'A typical site is accepted', value: acceptedText(acceptanceLimits, unit), note: `u ${formatQuantity(u, unit)}` },
         {
           key: 'Process',
-          value: `${formatQuantity(process.mean, unit)}, s ${formatQuantity(process.standardDeviation, unit)}`,
+          value: `${formatQuantity(production.mean, unit)}, s ${formatQuantity(production.standardDeviation, unit)}`,
           note: isGiven ? 'as the procedure gives it' : "this lot's own, less the error of measurement; taken for normal",
         },
       ],

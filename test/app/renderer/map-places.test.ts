@@ -86,7 +86,7 @@ describe('the rack', () => {
   it('shows 25 wafers without scrolling where it can', () => {
     expect(rackColumns(25, 540, 510)).toBe(7)
     expect(rackColumns(25, 900, 860)).toBe(6)
-    expect(rackColumns(1, 540, 510)).toBe(2)
+    expect(rackColumns(1, 540, 510)).toBe(1)
     expect(rackColumns(200, 300, 300)).toBe(4)
   })
 })
