@@ -34,12 +34,15 @@ export interface LoopbackHost {
 
 const LOOPBACK = '127.0.0.1'
 
+/** On one computer a request is there at once. One that trickles in, byte by byte, is given up all the same. */
+const PATIENCE = { headersTimeout: 5000, requestTimeout: 60_000, connectionsCheckingInterval: 1000 } as const
+
 /** @throws what the system says when the port can't be had */
 export async function startLoopbackHost(settings: LoopbackSettings): Promise<LoopbackHost> {
   const { port, root, files, demo, program } = settings
   const secret = randomBytes(24).toString('base64url')
   const served: Served = { root, files, demo, program, state: new StateStore(settings.stateFolder) }
-  const server = createServer((request, response) => {
+  const server = createServer(PATIENCE, (request, response) => {
     answer(request, response, secret, served, authorityOf(server)).catch(() => end(response, 500))
   })
   await listen(server, port)

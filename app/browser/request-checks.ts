@@ -8,11 +8,12 @@ import { OWN_HEADER } from '../contract/loopback'
  * come from our own page beyond doubt: with its origin, and with a header that no form and no other site can set.
  */
 export function refusalOf(
-  { headers, method }: Pick<IncomingMessage, 'headers' | 'method'>,
+  { headers, headersDistinct, method }: Pick<IncomingMessage, 'headers' | 'headersDistinct' | 'method'>,
   authority: string,
 ): number | null {
   const origin = `http://${authority}`
-  if (headers.host !== authority) return 403
+  // Of two names the first would be taken here, the second perhaps on the way.
+  if (headers.host !== authority || headersDistinct['host']?.length !== 1) return 403
   if (headers.origin !== undefined && headers.origin !== origin) return 403
   const site = headers['sec-fetch-site']
   if (site !== undefined && site !== 'same-origin' && site !== 'none') return 403

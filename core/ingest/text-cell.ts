@@ -1,10 +1,10 @@
 /**
- * Text cells on their way out and in. A spreadsheet takes a cell that begins with = + - @, tab or carriage return for
- * a formula; an apostrophe before it makes it plain text, and reading takes that apostrophe off again. Text that
- * already looks so guarded gets one more, so that the two undo each other always.
+ * Text cells on their way out and in. A spreadsheet takes a cell that begins with = + - @, their full-width forms, tab or a
+ * line break for a formula (OWASP, CSV Injection). An apostrophe before it makes it plain text, and reading takes that
+ * apostrophe off again. Text that already looks so guarded gets one more, so that the two undo each other always.
  */
-const GUARDED = /^'*[=+\-@\t\r]/
-const TO_UNDO = /^'+[=+\-@\t\r]/
+const GUARDED = /^'*[=+\-@＝＋－＠\t\r\n]/
+const TO_UNDO = /^'+[=+\-@＝＋－＠\t\r\n]/
 
 export function guardTextCell(text: string): string {
   return GUARDED.test(text) ? `'${text}` : text

@@ -48,8 +48,8 @@ const silicon = {
 }
 const background = z.strictObject({ dopant: z.enum(DOPANTS), concentrationCm3: z.number().min(1e10).max(1e20) })
 
-/** A file beside the procedure: no folder, no way out of the folder. */
-export const BARE_FILE_NAME = /^(?!.*\.\.)[^\p{Cc}/\\:]+$/u
+/** A file beside the procedure: no folder, the one it lies in included, and no way out of it. */
+export const BARE_FILE_NAME = /^(?!\.$)(?!.*\.\.)[^\p{Cc}/\\:]+$/u
 
 const layer = z.discriminatedUnion('kind', [
   z.strictObject({ kind: z.literal('sheet') }),
