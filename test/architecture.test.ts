@@ -13,7 +13,7 @@ const ROOT = join(import.meta.dirname, '..')
 /** Inside core a folder imports from itself and from those before it. */
 const CORE_ORDER = [
   'units', 'problems', 'numeric', 'wafer', 'geometry', 'silicon', 'layer', 'conversion', 'statistics', 'map', 'conformity',
-  'ingest', 'procedure', 'gauge', 'check-wafer', 'analysis', 'monte-carlo', 'report',
+  'ingest', 'procedure', 'gauge', 'check-wafer', 'health', 'analysis', 'monte-carlo', 'report',
 ] as const // prettier-ignore
 
 const CORE_PACKAGES = [

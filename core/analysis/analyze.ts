@@ -36,6 +36,7 @@ import { judgedQuantity, limitsOn } from './quantity'
 import { siteColumns } from './site-columns'
 import { sitePositions, type SitePositions } from './site-positions'
 import { contributions, propagate } from './uncertainty'
+import { healthNotes, healthProblems, readingHealth } from './reading-health'
 import { repeatabilityOf, type Repeatability } from './repeatability'
 import { ratios } from './v-over-i'
 import { analyzeWafer, waferMembers, type WaferMembers } from './wafers'
@@ -78,10 +79,12 @@ export function analyze(input: AnalysisInput): LotAnalysis {
   const dies = analyzeDies(procedure, outline, positions, inReadingOrder(members), sites, limits.site)
   enter('judging')
   const { wafers, lot } = judgeWafersAndLot({ readings, procedure, measured, limits, members, outliers, dies })
+  const health = readingHealth({ readings, procedure, ...measured, members })
   const check = input.check ? checkOfLot(input.check, readings) : null
   const found = [
     ...unmatched,
     ...checkProblems(check),
+    ...healthProblems(health, readings, sites.flags),
     ...readingProblems({ readings, procedure, positions, outline, sites, quantity }),
     ...flagProblems(readings, sites.flags),
   ]
@@ -93,6 +96,7 @@ export function analyze(input: AnalysisInput): LotAnalysis {
     gauge,
     check,
     repeatability: measured.repeatability,
+    health,
     outline,
     quantity,
     sites,
@@ -105,6 +109,7 @@ export function analyze(input: AnalysisInput): LotAnalysis {
     notes: [
       ...notes,
       ...exclusionNotes(excluded),
+      ...healthNotes(health, readings.count),
       ...analysisNotes({ readings, procedure, profile, gauge, check, ...measured, dies }),
     ],
   }

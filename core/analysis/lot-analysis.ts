@@ -5,6 +5,7 @@
 import type { Verdict } from '../conformity/verdict'
 import type { GaugeStudy } from '../gauge/gauge-study'
 import type { DepthProfile } from '../ingest/read-profile'
+import type { HealthFinding } from '../health/finding'
 import type { Readings } from '../ingest/readings'
 import type { Outline } from '../wafer/outline'
 import type { Problem } from '../problems/problem'
@@ -30,6 +31,8 @@ export interface LotAnalysis {
   readonly gauge: GaugeStudy | null
   /** The check wafer that the procedure names, as it stood when the lot was measured. */
   readonly check: CheckOfLot | null
+  /** What a look at the readings themselves brought up, worst first. */
+  readonly health: readonly HealthFinding[]
   /** Where the procedure takes it from the readings. */
   readonly repeatability: Repeatability | null
   readonly outline: Outline

@@ -4,7 +4,7 @@ import type { LotAnalysis, WaferAnalysis } from './lot-analysis'
 import { flagNames } from './flags'
 import { mobilityComparison } from './mobility-comparison'
 import { figuresObject, mapObject, patternsObject, statisticsOtherwiseObject } from './result-details'
-import { acceptanceObject, checkPart, gaugePart, uncertaintyObject } from './trust-objects'
+import { acceptanceObject, checkPart, gaugePart, healthObject, uncertaintyObject } from './trust-objects'
 import { waferDetails, type WaferDetails } from './wafer-details'
 import type { VarianceComponents, VarianceComponent } from '../statistics/components-of-variance'
 import type { Statistics } from '../statistics/summarize'
@@ -34,6 +34,7 @@ export function resultObject(analysis: LotAnalysis, context: ResultContext): obj
     excluded: excluded.map(({ wafer, site, reason }) => ({ wafer, site, reason })),
     problems: problems.map((problem) => ({ ...problem, sentence: explain(problem), place: placeOf(problem) })),
     notes,
+    health: healthObject(analysis),
     quantity: { id: quantity.id, title: quantity.title, unit: quantity.asciiUnit },
     lot: {
       name: lot.name,

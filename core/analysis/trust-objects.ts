@@ -74,3 +74,17 @@ export function checkPart(check: CheckOfLot | null): object | null {
   const { state, when, place, byTime } = check.standing
   return { standing: { state, when, place, byTime }, ...checkObject(check.result) }
 }
+
+/** What a look at the readings brought up; sites by their names. */
+export function healthObject({ health, readings }: LotAnalysis): readonly object[] {
+  return health.map(({ check, severity, sentence, nextStep, wafers, site, evidence, source }) => ({
+    check,
+    severity,
+    sentence,
+    nextStep,
+    wafers,
+    site: site === null ? null : readings.siteNames[readings.site[site]],
+    evidence,
+    source,
+  }))
+}

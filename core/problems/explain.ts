@@ -106,6 +106,7 @@ const sentences: Sentences = {
     `${count(sites, 'site')} on ${wafers.length === 1 ? 'wafer' : 'wafers'} ${quotedList(wafers)}: each ${ended(sentence)}`,
   'no-such-site': ({ wafer, site }) =>
     `Site ${quote(site)} of wafer ${quote(wafer)} was to be excluded, but these readings have no such site. Take the exclusion back, or check the wafer's and site's names.`,
+  'suspicious-readings': ({ sentence, nextStep }) => `${sentence} ${nextStep}`,
   'check-wafer-alarm': ({ sentence }) => sentence,
   'nothing-assessed': ({ why }) => `Nothing could be judged: ${ended(why)}`,
 

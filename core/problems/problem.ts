@@ -192,6 +192,16 @@ export type AnalysisProblem =
     }
   /** An exclusion that names no site of these readings. */
   | { readonly kind: 'no-such-site'; readonly wafer: string; readonly site: string }
+  /** The readings themselves look suspicious; `wafer` and `site` where one shows it. */
+  | {
+      readonly kind: 'suspicious-readings'
+      readonly check: string
+      readonly severity: 'stops' | 'look'
+      readonly sentence: string
+      readonly nextStep: string
+      readonly wafer?: string
+      readonly site?: string
+    }
   /** The check wafer was out of control when the lot was measured. */
   | { readonly kind: 'check-wafer-alarm'; readonly sentence: string }
   | { readonly kind: 'nothing-assessed'; readonly why: string }

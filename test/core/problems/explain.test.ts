@@ -40,6 +40,13 @@ const examples: { readonly [Kind in ProblemKind]: Extract<Problem, { kind: Kind 
   'swapped-columns': { kind: 'swapped-columns', file, asRead: 0.0493, swapped: 20.3, unit: 'Ω' },
   'flagged-sites': { kind: 'flagged-sites', flag: 'reported', count: 2, wafers: ['1', '7'], sentence: 'is taken as the file reports it' },
   'no-such-site': { kind: 'no-such-site', wafer: '7', site: '99' },
+  'suspicious-readings': {
+    kind: 'suspicious-readings',
+    check: 'units',
+    severity: 'stops',
+    sentence: 'The lot reads a thousand times off.',
+    nextStep: 'Check the units of the columns.',
+  },
   'check-wafer-alarm': { kind: 'check-wafer-alarm', sentence: 'The check wafer raised an alarm on 2026-03-15, the last before the lot.' },
   'nothing-assessed': { kind: 'nothing-assessed', why: 'the procedure has no limits' },
   'cannot-write': { kind: 'cannot-write', path: 'out/sites.csv', why: 'the folder is read-only' },

@@ -1,0 +1,83 @@
+/** Forward against reverse: a difference that is everywhere the same has a cause that every reading shares. */
+import { formatFixed, formatSignificant } from '../units/format'
+import { medianOf, robustDeviation, type HealthCheck, type HealthFinding, type HealthInput } from './finding'
+
+/** SEMI MF1529-1104, 13.1.3: forward and reverse must agree within 5 % of the larger. */
+const LARGE = 0.05
+/** Below this a shared difference is of no account. Common practice, no source. */
+const SMALL = 0.005
+/** Of the median, over its standard error. */
+const SURE = 6
+const LEAST_SITES = 8
+
+export const polarity: HealthCheck = { id: 'polarity', title: 'Forward against reverse current', look }
+
+function look({ readings, wafers }: HealthInput): readonly HealthFinding[] {
+  const { voltage_V, current_A, voltageReverse_V, currentReverse_A } = readings
+  if (!voltage_V || !current_A || !voltageReverse_V || !currentReverse_A) return []
+  const rows = wafers.flatMap((wafer) => sampled(wafer.rows))
+  const difference = rows.map((i) => {
+    const [forward, reverse] = [voltage_V[i] / current_A[i], voltageReverse_V[i] / currentReverse_A[i]]
+    return (2 * (forward - reverse)) / (forward + reverse)
+  })
+  const known = difference.filter(Number.isFinite)
+  if (known.length < LEAST_SITES) return []
+  const median = medianOf(known)
+  const error = (1.2533 * robustDeviation(known, median)) / Math.sqrt(known.length)
+  if (Math.abs(median) < SMALL || Math.abs(median) < SURE * error) return []
+  const emf = rows.map((i) => (1e6 * (voltage_V[i] + voltageReverse_V[i])) / 2).filter(Number.isFinite)
+  const stray_uV = medianOf(emf)
+  const cause = causeOf(
+    rows.map((i) => Math.abs(voltage_V[i])),
+    known,
+    emf,
+  )
+  const { words, nextStep } = CAUSES[cause]
+  const amount = formatFixed(100 * Math.abs(median), 1)
+  return [
+    {
+      check: 'polarity',
+      severity: Math.abs(median) >= LARGE || cause === 'contact' ? 'look' : 'note',
+      sentence: `Forward and reverse readings differ by ${amount} % throughout, ${median > 0 ? 'forward' : 'reverse'} being higher. ${words.replace('#', formatSignificant(stray_uV, 3))}`,
+      nextStep,
+      wafers: [],
+      site: null,
+      evidence: { medianDifference: median, standardError: error, strayVoltage_uV: stray_uV },
+      source: 'SEMI MF1529-1104, 13.1.3 (agreement within 5 %)',
+    },
+  ]
+}
+
+type Cause = 'stray-voltage' | 'contact' | 'open'
+
+const CAUSES: Readonly<Record<Cause, { readonly words: string; readonly nextStep: string }>> = {
+  'stray-voltage': {
+    words: 'The difference is a voltage of # µV whatever the site reads: a thermal EMF or an offset of the meter, which the mean of both cancels.',
+    nextStep: 'Let the prober come to temperature and zero the meter before the next lot.',
+  },
+  contact: {
+    words: 'It grows with the voltage, as a rectifying contact or a leaking junction makes it; the mean of both does not cancel that.',
+    nextStep: 'Measure a site again at half the current and in the dark; if it changes, look at the contacts and at the junction before the lot is judged.',
+  },
+  open: {
+    words: 'The voltages are too alike to tell a stray voltage (# µV, which the mean of both cancels) from a rectifying contact (which it does not).',
+    nextStep: 'Measure a site again at half the current: a stray voltage doubles its share, a contact does not.',
+  },
+} // prettier-ignore
+
+/** Voltages must differ by so much, one robust standard deviation, before a difference can be told from a proportion. */
+const TELLING = 0.04
+
+function causeOf(voltage_V: readonly number[], difference: readonly number[], emf_uV: readonly number[]): Cause {
+  if (robustDeviation(voltage_V) < TELLING * medianOf(voltage_V)) return 'open'
+  const spread = (values: readonly number[]): number => robustDeviation(values) / Math.abs(medianOf(values))
+  return spread(emf_uV) < spread(difference) ? 'stray-voltage' : 'contact'
+}
+
+/** More sites tell nothing more of a median. */
+const MOST_ROWS = 2000
+
+function sampled(rows: Uint32Array): number[] {
+  const every = Math.max(1, Math.ceil(rows.length / MOST_ROWS))
+  return Array.from({ length: Math.ceil(rows.length / every) }, (_, k) => rows[k * every])
+}

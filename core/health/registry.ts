@@ -1,0 +1,25 @@
+/** Every look at the readings, one line each: the report, the window and the result read them from here. */
+import { configurationRatio } from './configuration-ratio'
+import { currentLevel } from './current-level'
+import { drift } from './drift'
+import { SEVERITIES, type HealthCheck, type HealthFinding, type HealthInput } from './finding'
+import { polarity } from './polarity'
+import { standingOut } from './standing-out'
+import { stuckReadings } from './stuck-readings'
+import { unitSuspicion } from './units'
+
+export const HEALTH_CHECKS: readonly HealthCheck[] = [
+  unitSuspicion,
+  configurationRatio,
+  polarity,
+  currentLevel,
+  stuckReadings,
+  standingOut,
+  drift,
+]
+
+/** Worst first. They change no number and no verdict; a person is told. */
+export function lookAtReadings(input: HealthInput): readonly HealthFinding[] {
+  const found = HEALTH_CHECKS.flatMap((check) => check.look(input))
+  return found.sort((a, b) => SEVERITIES.indexOf(a.severity) - SEVERITIES.indexOf(b.severity))
+}
