@@ -12,7 +12,7 @@ const ROOT = join(import.meta.dirname, '..')
 
 /** Inside core a folder imports from itself and from those before it. */
 const CORE_ORDER = [
-  'units', 'problems', 'numeric', 'wafer', 'geometry', 'silicon', 'layer', 'conversion', 'statistics', 'map', 'conformity',
+  'units', 'problems', 'numeric', 'wafer', 'plan', 'geometry', 'silicon', 'layer', 'conversion', 'statistics', 'map', 'conformity',
   'ingest', 'procedure', 'gauge', 'check-wafer', 'health', 'analysis', 'monte-carlo', 'report',
 ] as const // prettier-ignore
 

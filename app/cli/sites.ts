@@ -1,5 +1,12 @@
-/** `persquare sites`: a site plan of SEMI MF1618 as CSV. */
+/** `persquare sites`: a site plan as CSV, or what plans see of an effect. */
 import { writeCsv } from '../../core/ingest/write-csv'
+import { assess, candidatePlans, recommended, type Assessed, type Need } from '../../core/plan/candidates'
+import { EFFECT_IDS, EFFECTS, type EffectId } from '../../core/plan/effects'
+import { POWER_SOURCE } from '../../core/plan/power'
+import { formatFixed, formatSignificant } from '../../core/units/format'
+import { diePlan, equalAreaPlan, onWafer, type DiePlan } from '../../core/wafer/area-plans'
+import { usableDies, type DieGrid } from '../../core/wafer/die-grid'
+import type { Outline } from '../../core/wafer/outline'
 import {
   cartesianPlan,
   concentricPlan,
@@ -9,22 +16,36 @@ import {
   type SitePlan,
 } from '../../core/wafer/site-patterns'
 import { namedOptions, numberOf, refuse } from './convert-arguments'
+import { jsonText } from './json-text'
+import { alignedNumbers } from './text-table'
 
 export const SITES_USAGE = `usage: persquare sites (one plan) --diameter-mm MM --edge-exclusion-mm MM [options]
 
   --circles K               concentric: the centre and K circles, 1 + 4 K (K + 1) sites
   --rows N                  Cartesian: a square lattice of N rows, N odd, cut to the circle
   --diameter-sites N        N sites along one diameter
+  --equal-area K            the centre and K rings, each site in the middle of an equal share of the usable area
+  --dies N                  N die centres, spread evenly; needs --pitch-mm X,Y and takes --offset-mm X,Y
   --spot-mm MM              the outermost spots, so wide, touch the edge exclusion from inside (method A);
                             without it the outermost sites lie on it (method B)
-  --start +x|+y             with --circles: where every circle begins (default: +x)
+  --start +x|+y             with --circles or --equal-area: where every circle begins (default: +x)
   --angle-deg DEG           with --diameter-sites: its direction, anticlockwise from +x (default: 0)
+  --flat-mm MM              a flat of this length at the bottom: sites on it are left out, and said
 
-Plans of SEMI MF1618, as CSV: site, x_mm, y_mm, r_mm, theta_deg from the centre, the notch or flat at the bottom (-y).
+Plans of SEMI MF1618 and beside them, as CSV: site, x_mm, y_mm, r_mm, theta_deg from the centre, the notch or flat at the
+bottom (-y); with --dies also die_x, die_y.
 
-exit status: 0 planned; 2 not planned`
+  --effect SHAPE            tilt, bowl, edge, two-fold or spot: prints what the plan sees of it, or without a plan which of
+                            the usual plans do
+  --size-percent S          the size of the effect that is to be seen
+  --repeatability-percent R how far a single site spreads
+  --power P                 how surely it is to be seen (default: 0.9)
+  --alpha A                 chance of seeing it where it isn't (default: 0.05)
+  --json                    with --effect: print one object instead of the table
 
-const PLANS = ['circles', 'rows', 'diameter-sites'] as const
+exit status: 0 planned; 1 no plan sees the effect so surely; 2 not planned`
+
+const PLANS = ['circles', 'rows', 'diameter-sites', 'equal-area', 'dies'] as const
 
 const OPTIONS = {
   circles: { type: 'string' },
@@ -35,25 +56,105 @@ const OPTIONS = {
   'spot-mm': { type: 'string' },
   start: { type: 'string' },
   'angle-deg': { type: 'string' },
+  'equal-area': { type: 'string' },
+  dies: { type: 'string' },
+  'pitch-mm': { type: 'string' },
+  'offset-mm': { type: 'string' },
+  'flat-mm': { type: 'string' },
+  effect: { type: 'string' },
+  'size-percent': { type: 'string' },
+  'repeatability-percent': { type: 'string' },
+  power: { type: 'string' },
+  alpha: { type: 'string' },
+  json: { type: 'boolean' },
 } as const
 
 type Given = ReturnType<typeof namedOptions<typeof OPTIONS>>
 
 export async function sitesCommand(args: readonly string[]): Promise<number> {
-  process.stdout.write(sitesCsv(args))
+  const given = namedOptions(args, OPTIONS)
+  if (given.effect !== undefined) return askPlans(given)
+  const { text, said } = planText(given)
+  if (said) console.error(said)
+  process.stdout.write(text)
   return 0
 }
 
 /** What is printed. @throws CoreError bad-argument, out-of-range */
 export function sitesCsv(args: readonly string[]): string {
-  return planCsv(planOf(namedOptions(args, OPTIONS)))
+  return planText(namedOptions(args, OPTIONS)).text
 }
+
+function planText(given: Given): { readonly text: string; readonly said: string | null } {
+  const { plan, leftOut } = onWafer(planOf(given), outlineOf(given), 0)
+  const said = leftOut > 0 ? `! ${leftOut} ${leftOut === 1 ? 'site lies' : 'sites lie'} on the flat and ${leftOut === 1 ? 'was' : 'were'} left out.` : null
+  return { text: planCsv(plan), said }
+} // prettier-ignore
+
+/** The plan given, or else the usual ones, asked whether they see an effect. */
+function askPlans(given: Given): number {
+  const usable_mm = usableRadius(given)
+  const need = needOf(given)
+  const hasPlan = PLANS.some((name) => given[name] !== undefined)
+  const candidates = hasPlan
+    ? [{ id: 'given', title: 'the plan given', plan: onWafer(planOf(given), outlineOf(given), 0).plan, source: '' }]
+    : candidatePlans(usable_mm, outlineOf(given), 0)
+  const assessed = assess(candidates, usable_mm, need)
+  const best = recommended(assessed)
+  process.stdout.write(given.json ? jsonText(planObject(assessed, best, need)) : planWords(assessed, best, need))
+  return best ? 0 : 1
+}
+
+function needOf(given: Given): Need {
+  const { effect } = given
+  if (!EFFECT_IDS.some((id) => id === effect)) refuse('--effect', `it is ${EFFECT_IDS.join(', ')}, not "${effect}"`)
+  const percent = (name: 'size-percent' | 'repeatability-percent', what: string): number => {
+    const value = numberOf(name, given[name] ?? refuse(`--${name}`, `give ${what}`)) / 100
+    return value > 0 ? value : refuse(`--${name}`, 'it lies above 0')
+  }
+  return {
+    effect: effect as EffectId,
+    size: percent('size-percent', 'the size of the effect that is to be seen'),
+    repeatability: percent('repeatability-percent', 'how far a single site spreads'),
+    power: numberOf('power', given.power ?? '0.9'),
+    alpha: numberOf('alpha', given.alpha ?? '0.05'),
+  }
+}
+
+function planObject(assessed: readonly Assessed[], best: Assessed | null, need: Need): object {
+  return {
+    format: 'persquare-site-plan/1',
+    need,
+    recommended: best && best.id,
+    plans: assessed.map(({ id, title, plan, detection, smallest, bias, isEnough, source }) => ({
+      id, title, sites: plan.count, power: detection, smallestDetectable: smallest, meanBias: bias * need.size, enough: isEnough, source,
+    })),
+    source: POWER_SOURCE,
+  }
+} // prettier-ignore
+
+function planWords(assessed: readonly Assessed[], best: Assessed | null, { effect, size, repeatability, power, alpha }: Need): string {
+  const percent = (share: number): string => formatSignificant(100 * share, 3)
+  const { title, size: words } = EFFECTS[effect]
+  const rows = assessed.map((entry) => [
+    `${entry === best ? '> ' : '  '}${entry.title}`, String(entry.plan.count), formatFixed(100 * entry.detection, 1),
+    percent(entry.smallest), percent(entry.bias * size),
+  ])
+  return [
+    `A ${title} of ${percent(size)} % (${words}), sites that spread by ${percent(repeatability)} %, ${formatFixed(100 * power, 0)} % sure at ${formatFixed(100 * alpha, 0)} % false alarms:`,
+    best ? `${best.title} (${best.plan.count} sites) sees it.` : 'no plan here sees it so surely.',
+    '',
+    ...alignedNumbers([['  plan', 'sites', 'power %', 'smallest %', 'mean off by %'], ...rows]),
+    '',
+  ].join('\n')
+} // prettier-ignore
 
 function planOf(given: Given): SitePlan {
   const [plan, second] = PLANS.filter((name) => given[name] !== undefined)
-  if (plan === undefined) refuse('sites', 'name one plan: --circles K, --rows N or --diameter-sites N')
+  if (plan === undefined) refuse('sites', `name one plan: ${PLANS.map((name) => `--${name}`).join(', ')}`)
   if (second !== undefined) refuse(`--${second}`, `--${plan} is given already; one plan at a time`)
-  if (given.start !== undefined && plan !== 'circles') refuse('--start', 'only the circles of --circles have a start')
+  if (given.start !== undefined && plan !== 'circles' && plan !== 'equal-area')
+    refuse('--start', 'only circles have a start')
   if (given['angle-deg'] !== undefined && plan !== 'diameter-sites') {
     refuse('--angle-deg', 'only the line of --diameter-sites has a direction')
   }
@@ -68,7 +169,46 @@ function planOf(given: Given): SitePlan {
       return cartesianPlan({ rows: count, ...outer })
     case 'diameter-sites':
       return diameterPlan({ count, angle_deg: numberOf('angle-deg', given['angle-deg'] ?? '0'), ...outer })
+    case 'equal-area':
+      return equalAreaPlan({ circles: count, usableRadius_mm: usableRadius(given), startAngle_deg: startOf(given) })
+    case 'dies':
+      return diePlan(
+        usableDies({ outline: outlineOf(given), edgeExclusion_mm: exclusionOf(given) }, gridOf(given)),
+        count,
+      )
   }
+}
+
+function gridOf(given: Given): DieGrid {
+  const pair = (name: 'pitch-mm' | 'offset-mm', text: string): readonly [number, number] => {
+    const [x, y, more] = text.split(/[,;]/).map((part) => numberOf(name, part.trim()))
+    return y === undefined || more !== undefined ? refuse(`--${name}`, 'it is two numbers, such as 10,8') : [x, y]
+  }
+  const [pitchX_mm, pitchY_mm] = pair('pitch-mm', given['pitch-mm'] ?? refuse('--pitch-mm', 'give width and height of a die, such as 10,8'))
+  const [offsetX_mm, offsetY_mm] = pair('offset-mm', given['offset-mm'] ?? '0,0')
+  if (!(pitchX_mm > 0 && pitchY_mm > 0)) refuse('--pitch-mm', 'both lie above 0')
+  return { pitchX_mm, pitchY_mm, offsetX_mm, offsetY_mm }
+} // prettier-ignore
+
+function outlineOf(given: Given): Outline {
+  const diameter_mm = numberOf('diameter-mm', given['diameter-mm'] ?? refuse('--diameter-mm', 'give the diameter of the wafer'))
+  const flat = given['flat-mm']
+  return { shape: 'disc', diameter_mm, ...(flat === undefined ? { fiducial: 'notch' } : { fiducial: 'flat', flatLength_mm: numberOf('flat-mm', flat) }) }
+} // prettier-ignore
+
+function exclusionOf(given: Given): number {
+  const what = 'the width of the ring along the edge that is left out, 0 for none'
+  return numberOf('edge-exclusion-mm', given['edge-exclusion-mm'] ?? refuse('--edge-exclusion-mm', `give ${what}`))
+}
+
+function usableRadius(given: Given): number {
+  return outerRadius_mm({
+    diameter_mm: numberOf(
+      'diameter-mm',
+      given['diameter-mm'] ?? refuse('--diameter-mm', 'give the diameter of the wafer'),
+    ),
+    edgeExclusion_mm: exclusionOf(given),
+  })
 }
 
 function radiusOf(given: Given): number {
@@ -88,9 +228,10 @@ function startOf({ start = '+x' }: Given): number {
   return refuse('--start', `it is +x or +y, not "${start}"`)
 }
 
-function planCsv(plan: SitePlan): string {
+function planCsv(plan: SitePlan & Partial<Pick<DiePlan, 'dieX' | 'dieY'>>): string {
   const { count, x_mm, y_mm, r_mm, theta_deg } = roundedSites(plan)
-  const column = (name: string, values: Float64Array) => ({ name, cell: (row: number) => values[row] })
+  const column = (name: string, values: Float64Array | Int32Array) => ({ name, cell: (row: number) => values[row] })
+  const { dieX, dieY } = plan
   return writeCsv(
     [
       { name: 'site', cell: (row) => row + 1 },
@@ -98,6 +239,7 @@ function planCsv(plan: SitePlan): string {
       column('y_mm', y_mm),
       column('r_mm', r_mm),
       column('theta_deg', theta_deg),
+      ...(dieX && dieY ? [column('die_x', dieX), column('die_y', dieY)] : []),
     ],
     count,
   )

@@ -7,6 +7,7 @@ import { gaugeSection } from './sections/gauge-section'
 import { inputSection } from './sections/input-section'
 import { layerSection } from './sections/layer-section'
 import { mapErrorSection } from './sections/map-error-section'
+import { planSection } from './sections/plan-section'
 import { procedureSection } from './sections/procedure-section'
 import { statisticsUses } from './sections/statistics-sources'
 import { riskSection } from './sections/risk-section'
@@ -39,6 +40,7 @@ export function lotReport(input: LotReportInput): ReportDocument {
       ...findingsSection(context),
       ...context.wafers.flatMap((wafer) => waferSection(wafer, context)),
       ...mapErrorSection(context),
+      ...planSection(context),
       ...layerSection(context),
       ...inputSection(context),
       ...procedureSection(context),

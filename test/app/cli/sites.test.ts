@@ -120,3 +120,41 @@ describe('run as a program', () => {
     }
   })
 })
+
+describe('plans beside those of the standard', () => {
+  it('equal areas, dies with their numbers, and what lies on a flat left out and said', () => {
+    expect(plan('--equal-area', '3', ...WAFER)).toHaveLength(49)
+    const dies = sitesCsv(['--dies', '9', '--pitch-mm', '10,8', ...WAFER])
+      .trimEnd()
+      .split('\n')
+    expect(dies[0]).toBe('site,x_mm,y_mm,r_mm,theta_deg,die_x,die_y')
+    expect(dies).toHaveLength(10)
+    const { status, stdout, stderr } = persquare('sites', '--circles', '3', '--diameter-mm', '150', '--edge-exclusion-mm', '1', '--flat-mm', '57.5') // prettier-ignore
+    expect(status).toBe(0)
+    expect(stderr).toMatch(/^! \d+ sites? lies? on the flat/)
+    expect(stdout.trimEnd().split('\n').length - 1).toBeLessThan(49)
+  })
+
+  it('recommend the smallest that sees an effect, as a table and as JSON', () => {
+    const asked = ['--effect', 'edge', '--size-percent', '1', '--repeatability-percent', '0.2', ...WAFER]
+    const { status, stdout } = persquare('sites', ...asked)
+    expect(status).toBe(0)
+    expect(stdout).toMatch(/\(9 sites\) sees it\./)
+    const json = JSON.parse(persquare('sites', ...asked, '--json').stdout) as { recommended: string; plans: { id: string; power: number; enough: boolean }[] } // prettier-ignore
+    const best = json.plans.find(({ id }) => id === json.recommended)!
+    expect(best.power).toBeGreaterThanOrEqual(0.9)
+    expect(persquare('sites', '--circles', '1', '--effect', 'tilt', '--size-percent', '0.01', '--repeatability-percent', '1', ...WAFER).status).toBe(1) // prettier-ignore
+  })
+
+  it.each([
+    [['--effect', 'wave', '--size-percent', '1', '--repeatability-percent', '1'], /tilt, bowl, edge/],
+    [['--effect', 'tilt', '--repeatability-percent', '1'], /give the size/],
+    [['--effect', 'tilt', '--size-percent', '-1', '--repeatability-percent', '1'], /above 0/],
+    [['--dies', '9'], /--pitch-mm/],
+    [['--dies', '9', '--pitch-mm', '10'], /two numbers/],
+  ])('refuse %j', (args, why) => {
+    const { status, stdout, stderr } = persquare('sites', ...args, ...WAFER)
+    expect([status, stdout]).toEqual([2, ''])
+    expect(stderr).toMatch(why)
+  })
+})
