@@ -8,7 +8,7 @@
 import { createHash } from 'node:crypto'
 import { link, readFile, rename, rm } from 'node:fs/promises'
 import { join } from 'node:path'
-import { CoreError, type Problem } from '../../core/problems/problem'
+import { CoreError } from '../../core/problems/problem'
 import { MAX_STATE_BYTES, type SavedState } from '../contract/host'
 import { isToken, KeptFiles } from './kept-files'
 import { withLock } from './state-lock'
@@ -31,12 +31,6 @@ type Found = Generation | 'damaged' | null
 export interface Loaded {
   readonly state: SavedState | null
   readonly count: number
-}
-
-const ANOTHER_WINDOW: Problem = {
-  kind: 'not-applicable',
-  what: 'keeping the session',
-  why: 'another window has kept its own since. What is done in this one stays until it is closed; to keep it again, close the other and load this one anew',
 }
 
 export class StateStore {
@@ -77,7 +71,7 @@ export class StateStore {
    * @param basis  the count of the state that this one takes the place of; the one last loaded or saved here, where the
    *               host has one window
    * @returns the count of the state that is now there
-   * @throws CoreError bad-argument where it is too large, not-applicable where another window saved one since; what the
+   * @throws CoreError bad-argument where it is too large, kept-elsewhere where another window saved one since; what the
    *         system says where it can't be written
    */
   save(text: string, kept: readonly string[], basis?: number): Promise<number> {
@@ -106,7 +100,7 @@ export class StateStore {
     const current = countOf(before, previous)
     // Asked for again after an answer that got lost, it is there already.
     if (basis !== null && basis !== current && !(isWhole(before) && before.text === text)) {
-      throw new CoreError(ANOTHER_WINDOW)
+      throw new CoreError({ kind: 'kept-elsewhere' })
     }
     const last = join(this.folder, LAST)
     const [beside, linked] = [besideOf(last), besideOf(last)]

@@ -53,6 +53,8 @@ const sentences: Sentences = {
       : `The ${quantity} is ${value}${asUnit(unit)}; it must be ${rangeOf(min, max, unit)}.`,
   'unknown-id': ({ family, id, known }) => `There is no ${family} ${quote(id)}. Known are ${quotedList(known)}.`,
   'not-applicable': ({ what, why }) => `${capital(what)} does not apply here: ${ended(why)}`,
+  'kept-elsewhere': () =>
+    'Another window keeps its own lot now. Hand over what you did in this one, or export it, before you close it.',
 
   'cannot-read': ({ why }) => `The file can't be read: ${ended(why)}`,
   'empty-file': () => 'The file is empty. Export the readings again.',

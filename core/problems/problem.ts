@@ -31,6 +31,8 @@ export type PhysicsProblem =
       readonly known: readonly string[]
     }
   | { readonly kind: 'not-applicable'; readonly what: string; readonly why: string }
+  /** Another window keeps its open lot where this one kept its own. */
+  | { readonly kind: 'kept-elsewhere' }
 
 /** A whole file that can't be read as readings. */
 export type FileProblem =

@@ -20,7 +20,7 @@ afterAll(() => rm(base, { recursive: true }))
 let folder: string
 beforeEach(async () => (folder = await mkdtemp(join(base, 'state-'))))
 
-const TOLD = { problem: { kind: 'not-applicable', what: 'keeping the session' } }
+const TOLD = { problem: { kind: 'kept-elsewhere' } }
 
 describe('two programs', () => {
   it('the first to save goes on, the other is told and overwrites nothing', async () => {
@@ -67,7 +67,7 @@ describe('two programs', () => {
     const saved = [a, b].flatMap((said, who) =>
       said.filter((line) => !line.startsWith('told')).map((line) => ({ who: 'ab'[who], count: Number(line.split(' ')[0]), n: Number(line.split(' ')[1]) })),
     ) // prettier-ignore
-    for (const line of [...a, ...b]) if (line.startsWith('told')) expect(line).toContain('another window')
+    for (const line of [...a, ...b]) if (line.startsWith('told')) expect(line).toContain('kept-elsewhere')
     const counts = saved.map(({ count }) => count).sort((x, y) => x - y)
     expect(counts).toEqual(counts.map((_, at) => at + 1))
     const { text } = (await new StateStore(join(folder, 'state')).load())!
@@ -117,7 +117,7 @@ describe('two pages of one program', () => {
     expect((await one.save('"one"')).status).toBe(204)
     const told = await other.save('"other"')
     expect(told.status).toBe(409)
-    expect(explain((await told.json()) as Problem)).toContain('another window has kept its own since')
+    expect(explain((await told.json()) as Problem)).toContain('Another window keeps its own lot now')
     expect((await one.save('"one again"')).status).toBe(204)
     expect((await page()).state).toEqual({ text: '"one again"', generation: 'last' })
   })

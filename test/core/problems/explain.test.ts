@@ -13,6 +13,7 @@ const examples: { readonly [Kind in ProblemKind]: Extract<Problem, { kind: Kind 
   'out-of-range': { kind: 'out-of-range', quantity: 'probe spacing', value: -1, unit: 'mm', min: 0, max: Infinity },
   'unknown-id': { kind: 'unknown-id', family: 'mobility model', id: 'x', known: ['arora', 'masetti'] },
   'not-applicable': { kind: 'not-applicable', what: 'the thickness factor', why: 'the layer is isolated' },
+  'kept-elsewhere': { kind: 'kept-elsewhere' },
   'cannot-read': { kind: 'cannot-read', file, why: 'there is no such file' },
   'empty-file': { kind: 'empty-file', file },
   'not-text': { kind: 'not-text', file, looksLike: 'a ZIP archive' },
