@@ -151,7 +151,8 @@ function planWords(assessed: readonly Assessed[], best: Assessed | null, { effec
 
 function planOf(given: Given): SitePlan {
   const [plan, second] = PLANS.filter((name) => given[name] !== undefined)
-  if (plan === undefined) refuse('sites', `name one plan: ${PLANS.map((name) => `--${name}`).join(', ')}`)
+  if (plan === undefined)
+    refuse('sites', `name one plan: --circles K, --rows N, --diameter-sites N, --equal-area K or --dies N`)
   if (second !== undefined) refuse(`--${second}`, `--${plan} is given already; one plan at a time`)
   if (given.start !== undefined && plan !== 'circles' && plan !== 'equal-area')
     refuse('--start', 'only circles have a start')

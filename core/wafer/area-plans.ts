@@ -1,8 +1,8 @@
 /** Site plans by area and by die, beside those of SEMI MF1618: every site stands for as much of the wafer as any other. */
 import { CoreError, requireRange } from '../problems/problem'
-import { edgeDistance_mm, type Outline } from './outline'
+import type { Outline } from './outline'
 import type { SitePlan } from './site-patterns'
-import type { Dies } from './die-grid'
+import { isUsable, type Dies } from './die-grid'
 
 /**
  * The centre and K rings of 8 k sites, each site in the middle of its own N-th of the usable area, N = 1 + 4 K (K + 1).
@@ -99,7 +99,7 @@ function farthest(distance: Float64Array, fromMiddle: Float64Array): number {
 
 /** Sites whose probe stands whole on the wafer and outside the edge exclusion, and how many were left out. */
 export function onWafer<Plan extends SitePlan>(plan: Plan, outline: Outline, margin_mm: number): { readonly plan: Plan; readonly leftOut: number } {
-  const rows = Array.from(plan.x_mm.keys()).filter((i) => edgeDistance_mm(outline, plan.x_mm[i], plan.y_mm[i]) >= margin_mm - SAME_mm)
+  const rows = Array.from(plan.x_mm.keys()).filter((i) => isUsable({ outline, edgeExclusion_mm: margin_mm - SAME_mm }, plan.x_mm[i], plan.y_mm[i]))
   const picked = Object.fromEntries(
     Object.entries(plan).map(([name, column]) => [name, pick(column as unknown, rows)]),
   ) as unknown as Plan
