@@ -1,20 +1,23 @@
 /** The decision rule in words, the limits it makes, and what it risks. */
-import { ACCEPTANCE_RULES, acceptanceWords } from '../../conformity/acceptance'
+import { ACCEPTANCE_RULES, acceptanceWords, type Acceptance } from '../../conformity/acceptance'
 import { limitsText } from '../../conformity/reasons'
 import { RISK_SOURCE, type LotRisks } from '../../analysis/lot-risks'
 import { formatQuantity, formatSignificant } from '../../units/format'
 import type { Block, TableRow } from '../document'
+import { riskCurve, riskPoints } from '../figures/risk-curve'
 import type { ReportContext } from '../report-context'
 
 export const RULE_TITLES = { simple: 'simple', stringent: 'stringent', relaxed: 'relaxed', risk: 'by risk' } as const
 
-export function riskSection({ analysis }: ReportContext): Block[] {
+export function riskSection({ analysis, width_pt }: ReportContext): Block[] {
   const { risks, procedure } = analysis
   const { acceptance } = procedure
   return [
     { kind: 'heading', level: 1, text: 'Decision rule and risks' },
     { kind: 'paragraph', text: acceptanceWords(acceptance) },
-    ...(risks ? riskBlocks(risks, analysis.quantity.unit, acceptance.rule) : []),
+    ...(risks
+      ? [...riskBlocks(risks, analysis.quantity.unit, acceptance.rule), riskFigure(risks, acceptance, width_pt)]
+      : []),
     { kind: 'paragraph', text: `Uniformity is judged simply under every rule. Source: ${RISK_SOURCE}.`, quiet: true },
   ]
 }
@@ -51,6 +54,19 @@ function riskBlocks(risks: LotRisks, unit: string, rule: keyof LotRisks['byRule'
     },
   ]
 } // prettier-ignore
+
+function riskFigure(
+  { limits, u, process: production }: LotRisks,
+  { rule, guardFactor }: Acceptance,
+  width_pt: number,
+): Block {
+  const here = rule === 'stringent' ? guardFactor : rule === 'relaxed' ? -guardFactor : 0
+  const points = riskPoints(limits, u, production)
+  return {
+    kind: 'figures',
+    figures: [riskCurve({ points, guardFactor: here, width_pt: 0.75 * width_pt, height_pt: 150 })],
+  }
+}
 
 export function acceptedText(limits: LotRisks['acceptanceLimits'], unit: string): string {
   const { lower = -Infinity, upper = Infinity } = limits

@@ -27,6 +27,11 @@ const COMPONENTS: Readonly<Record<UncertaintyComponent, string>> = {
 }
 
 export function uncertaintySection(context: ReportContext): Block[] {
+  return [...uncertaintyBlocks(context), ...monteCarloBlocks(context)]
+}
+
+/** Without the Monte Carlo calculation, which takes its time. */
+export function uncertaintyBlocks(context: ReportContext): Block[] {
   const { working } = context.input
   const { uncertainty } = context.analysis.procedure
   const exact = UNCERTAINTY_COMPONENTS.filter((component) => uncertainty[component] === 0)
@@ -41,7 +46,6 @@ export function uncertaintySection(context: ReportContext): Block[] {
     ...(exact.length > 0
       ? [{ kind: 'paragraph', text: `Taken as exactly known: ${exact.map((id) => COMPONENTS[id]).join('; ')}.`, quiet: true } as const]
       : []),
-    ...monteCarloBlocks(context),
   ]
 } // prettier-ignore
 
