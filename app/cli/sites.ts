@@ -1,10 +1,10 @@
 /** `persquare sites`: a site plan as CSV, or what plans see of an effect. */
-import { writeCsv } from '../../core/ingest/write-csv'
 import { assess, candidatePlans, recommended, type Assessed, type Need } from '../../core/plan/candidates'
 import { EFFECT_IDS, EFFECTS, type EffectId } from '../../core/plan/effects'
+import { planCsv } from '../../core/plan/plan-csv'
 import { POWER_SOURCE } from '../../core/plan/power'
 import { formatFixed, formatSignificant } from '../../core/units/format'
-import { diePlan, equalAreaPlan, onWafer, type DiePlan } from '../../core/wafer/area-plans'
+import { diePlan, equalAreaPlan, onWafer } from '../../core/wafer/area-plans'
 import { usableDies, type DieGrid } from '../../core/wafer/die-grid'
 import type { Outline } from '../../core/wafer/outline'
 import {
@@ -12,7 +12,6 @@ import {
   concentricPlan,
   diameterPlan,
   outerRadius_mm,
-  roundedSites,
   type SitePlan,
 } from '../../core/wafer/site-patterns'
 import { namedOptions, numberOf, refuse } from './convert-arguments'
@@ -227,21 +226,4 @@ function startOf({ start = '+x' }: Given): number {
   if (start === '+x') return 0
   if (start === '+y') return 90
   return refuse('--start', `it is +x or +y, not "${start}"`)
-}
-
-function planCsv(plan: SitePlan & Partial<Pick<DiePlan, 'dieX' | 'dieY'>>): string {
-  const { count, x_mm, y_mm, r_mm, theta_deg } = roundedSites(plan)
-  const column = (name: string, values: Float64Array | Int32Array) => ({ name, cell: (row: number) => values[row] })
-  const { dieX, dieY } = plan
-  return writeCsv(
-    [
-      { name: 'site', cell: (row) => row + 1 },
-      column('x_mm', x_mm),
-      column('y_mm', y_mm),
-      column('r_mm', r_mm),
-      column('theta_deg', theta_deg),
-      ...(dieX && dieY ? [column('die_x', dieX), column('die_y', dieY)] : []),
-    ],
-    count,
-  )
 }

@@ -3,6 +3,7 @@ import type { LotAnalysis } from '../../core/analysis/lot-analysis'
 import { run, type RunInput } from '../../core/analysis/run'
 import { partBrought } from '../contract/brought-files'
 import type { FileUse, Job, Rehearsal, Report } from './analysis-messages'
+import { sha256 } from './formats/files'
 
 interface KeptFile {
   readonly bytes: Uint8Array
@@ -47,11 +48,6 @@ function named({ id, name }: FileUse): KeptFile & { readonly name: string } {
   const file = kept.get(id)
   if (!file) throw new Error(`the worker was never given "${name}"`)
   return { name, ...file }
-}
-
-async function sha256(bytes: Uint8Array): Promise<string> {
-  const digest = new Uint8Array(await crypto.subtle.digest('SHA-256', new Uint8Array(bytes)))
-  return Array.from(digest, (byte) => byte.toString(16).padStart(2, '0')).join('')
 }
 
 /** The memory of every column: it is handed over, not copied. */

@@ -2,12 +2,16 @@ import { onBeforeUnmount, onMounted, ref } from 'vue'
 import type { Ref } from 'vue'
 import { droppedFiles, readFiles } from '../dropped-files'
 import { useHost } from '../host-key'
+import { useGaugeStore } from '../stores/gauge'
 import { useLotStore } from '../stores/lot'
+import { useViewStore } from '../stores/view'
 
 /** Takes files and folders that are dropped anywhere on the window; true while something is held over it. */
 export function useDrop(): Ref<boolean> {
   const host = useHost()
   const lot = useLotStore()
+  const view = useViewStore()
+  const gauge = useGaugeStore()
   const dragging = ref(false)
 
   function over(event: DragEvent): void {
@@ -24,7 +28,10 @@ export function useDrop(): Ref<boolean> {
     performance.mark('persquare:dropped')
     if (!event.dataTransfer) return
     const files = await droppedFiles(event.dataTransfer)
-    lot.take(await readFiles(files))
+    const read = await readFiles(files)
+    // On the prober's own page a file is a record of the prober.
+    if (view.page === 'gauge') return gauge.take(view.gauge, read)
+    lot.take(read)
     await host.rememberDropped(files)
   }
   onMounted(() => {

@@ -9,6 +9,12 @@ export function bytesOf(text: string): Uint8Array {
   return new TextEncoder().encode(text)
 }
 
+/** As hexadecimal digits. */
+export async function sha256(bytes: Uint8Array): Promise<string> {
+  const digest = new Uint8Array(await crypto.subtle.digest('SHA-256', new Uint8Array(bytes)))
+  return Array.from(digest, (byte) => byte.toString(16).padStart(2, '0')).join('')
+}
+
 export function sizeWords(bytes: number): string {
   if (bytes < 1000) return `${bytes} B`
   return bytes < 1e6 ? `${formatFixed(bytes / 1e3, 1)} kB` : `${formatFixed(bytes / 1e6, 1)} MB`

@@ -1,5 +1,5 @@
 /** The first-order budget held against a Monte Carlo calculation of the same site. */
-import { checkSite, DEFAULT_SEED, type SiteCheck } from '../../monte-carlo/check-site'
+import { checkSite, type SiteCheck } from '../../monte-carlo/check-site'
 import { CoreError } from '../../problems/problem'
 import { formatFixed, formatQuantity, formatSignificant } from '../../units/format'
 import type { LotAnalysis } from '../../analysis/lot-analysis'
@@ -13,7 +13,10 @@ export function monteCarloBlocks({ analysis, input: { working } }: ReportContext
   const site = working && rowOf(analysis, working.wafer, working.site)
   if (site === null) return []
   const check = checked(analysis, site)
-  if (!check) return []
+  return check ? siteCheckBlocks(check) : []
+} // prettier-ignore
+
+export function siteCheckBlocks(check: SiteCheck): Block[] {
   const { firstOrder, monteCarlo: found, agreement, unit } = check
   const quantity = (value: number): string => formatQuantity(value, unit)
   const row = (name: string, mean: number, u: number, low: number, high: number): TableRow => ({
@@ -39,7 +42,7 @@ export function monteCarloBlocks({ analysis, input: { working } }: ReportContext
     },
     {
       kind: 'paragraph',
-      text: `${agreement.sentence} Numerical tolerance ${quantity(agreement.tolerance)}, with ${quantity(agreement.noise)} left to chance; the ends differ by ${formatSignificant(agreement.lowerDifference, 2)} and ${formatSignificant(agreement.upperDifference, 2)} ${unit}. Coverage ${formatFixed(100 * found.level, 0)} %, seed ${DEFAULT_SEED}, normal distributions throughout (JCGM 101:2008, clause 8).`,
+      text: `${agreement.sentence} Numerical tolerance ${quantity(agreement.tolerance)}, with ${quantity(agreement.noise)} left to chance; the ends differ by ${formatSignificant(agreement.lowerDifference, 2)} and ${formatSignificant(agreement.upperDifference, 2)} ${unit}. Coverage ${formatFixed(100 * found.level, 0)} %, seed ${found.seed}, normal distributions throughout (JCGM 101:2008, clause 8).`,
       quiet: true,
     },
   ]
