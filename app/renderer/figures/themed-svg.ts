@@ -8,7 +8,7 @@ const PAGE_INKS: readonly (readonly [paper: string, page: string])[] = [
   [FAINT, 'var(--blank)'],
   [PAPER, 'var(--ground)'],
   [ALERT, 'var(--out)'],
-  ['#a9a59c', 'var(--quiet)'],
+  ['#a9a59c', 'color-mix(in srgb, var(--quiet) 55%, var(--ground))'],
 ]
 
 /** Only whole attributes change, so that no text can be mistaken for an ink. */

@@ -37,7 +37,7 @@ export function siteCheckBlocks(check: SiteCheck): Block[] {
       ],
       rows: [
         row('first order', value, firstOrder.standardUncertainty, value - expanded, value + expanded),
-        row(`Monte Carlo, ${found.trials} trials`, found.mean, found.standardUncertainty, found.interval.lower, found.interval.upper),
+        row(`Monte Carlo, ${formatFixed(found.trials, 0)} trials`, found.mean, found.standardUncertainty, found.interval.lower, found.interval.upper),
       ],
     },
     {

@@ -4,7 +4,7 @@ import type { AxeResults } from 'axe-core'
 import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { hasChromium, launchChromium } from '../browser/chromium'
-import { lotFiles, lotIsOpen, withWindow } from './open-window'
+import { lotFiles, lotIsOpen, trustFiles, withWindow } from './open-window'
 
 const AXE = createRequire(import.meta.url).resolve('axe-core/axe.min.js')
 
@@ -25,7 +25,7 @@ describe.skipIf(!hasChromium())('accessibility', () => {
   }
 
   it.each(['light', 'dark'] as const)('finds no violation on any page, %s', (colorScheme) =>
-    withWindow(browser, { files: lotFiles('TB-0417'), context: { colorScheme, reducedMotion: 'reduce', viewport: { width: 1280, height: 720 } } }, async (page) => {
+    withWindow(browser, { files: trustFiles(), context: { colorScheme, reducedMotion: 'reduce', viewport: { width: 1280, height: 720 } } }, async (page) => {
       await lotIsOpen(page)
       expect(await page.evaluate(() => document.documentElement.dataset['theme'])).toBe(colorScheme)
       expect(await violations(page), 'lot').toEqual([])
@@ -47,6 +47,25 @@ describe.skipIf(!hasChromium())('accessibility', () => {
       expect(await violations(page), 'hand over').toEqual([])
       await page.getByRole('tab', { name: 'Text' }).click()
       expect(await violations(page), 'text of the report').toEqual([])
+      await page.keyboard.press('5')
+      await page.getByRole('button', { name: 'Draw' }).click()
+      await page.getByRole('img', { name: /draws of site/ }).waitFor()
+      expect(await violations(page), 'uncertainty').toEqual([])
+      for (const tab of ['Risk', 'Readings']) {
+        await page.getByRole('tab', { name: tab }).click()
+        expect(await violations(page), tab).toEqual([])
+      }
+      await page.getByRole('tab', { name: 'Map' }).click()
+      await page.getByRole('img', { name: /^Standard error of the map/ }).waitFor()
+      expect(await violations(page), 'map').toEqual([])
+      await page.keyboard.press('7')
+      await page.getByRole('heading', { name: 'Gauge study' }).waitFor()
+      expect(await violations(page), 'gauge study').toEqual([])
+      await page.getByRole('tab', { name: 'Check wafer' }).click()
+      expect(await violations(page), 'check wafer').toEqual([])
+      await page.keyboard.press('8')
+      await page.getByRole('table', { name: /what each sees/ }).waitFor()
+      expect(await violations(page), 'plan').toEqual([])
       await page.keyboard.press('1')
       await page.getByRole('heading', { name: 'Columns' }).waitFor()
       expect(await violations(page), 'files').toEqual([])

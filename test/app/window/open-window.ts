@@ -12,6 +12,10 @@ const ROOT = join(import.meta.dirname, '..', '..', '..')
 export const sample = (name: string): string => join(ROOT, 'sample-data', name)
 export const lotFiles = (lot: string): readonly string[] => [sample(`${lot}.csv`), sample(`${lot}.procedure.json`)]
 
+/** The lot with its uncertainties, its gauge study and its check wafer. */
+export const trustFiles = (): readonly string[] =>
+  ['TB-0417.csv', 'TB-0417-trust.procedure.json', 'station-2-gauge-study.csv', 'station-2-check-wafer.csv'].map(sample)
+
 /** Where violations of the security policy are kept, in the page. */
 interface Watched {
   violations: string[]
@@ -54,7 +58,8 @@ export async function withWindow(browser: Browser, opening: Opening, look: (page
   } finally {
     await context.close()
     await host.close()
-    await rm(stateFolder, { recursive: true, force: true })
+    // A last state may still be on its way.
+    await rm(stateFolder, { recursive: true, force: true, maxRetries: 5, retryDelay: 100 })
   }
 } // prettier-ignore
 
