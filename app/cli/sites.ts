@@ -1,7 +1,7 @@
 /** `persquare sites`: a site plan as CSV, or what plans see of an effect. */
 import { assess, candidatePlans, recommended, type Assessed, type Need } from '../../core/plan/candidates'
 import { EFFECT_IDS, EFFECTS, type EffectId } from '../../core/plan/effects'
-import { planCsv } from '../../core/plan/plan-csv'
+import { planCsv } from '../../core/analysis/plan-csv'
 import { POWER_SOURCE } from '../../core/plan/power'
 import { formatFixed, formatSignificant } from '../../core/units/format'
 import { diePlan, equalAreaPlan, onWafer } from '../../core/wafer/area-plans'

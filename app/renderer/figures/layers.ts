@@ -3,8 +3,10 @@ import type { LotAnalysis } from '../../../core/analysis/lot-analysis'
 import { colorScale, type ColorMapId } from '../../../core/map/color-scale'
 import { bandScale, type BandScale } from '../../../core/report/figures/band-scale'
 import { concentrationTitle } from '../../../core/report/sections/layer-words'
+import type { MapDetail, WaferSurface } from '../../../core/report/surface'
 import { capital } from '../formats/words'
 import type { LotPictures } from './lot-pictures'
+import { mapErrorLayer } from './map-error-layer'
 
 export const LAYER_IDS = [
   'value',
@@ -14,6 +16,7 @@ export const LAYER_IDS = [
   'thickness',
   'probability',
   'uncertainty',
+  'map-error',
 ] as const
 export type LayerId = (typeof LAYER_IDS)[number]
 
@@ -26,6 +29,8 @@ export interface MapLayer {
   readonly scale: BandScale
   /** Whether its values are those that the site limits are on. */
   readonly isJudged: boolean
+  /** Where a layer knows itself between the sites: the surface of the wafer that a row of the lot's sites lies on. */
+  readonly betweenSites?: (row: number, detail: MapDetail) => WaferSurface | null
 }
 
 const BANDS = 18
@@ -54,6 +59,8 @@ export function mapLayer(pictures: LotPictures, id: LayerId): MapLayer | null {
       return probabilityLayer(analysis)
     case 'uncertainty':
       return spanned(id, 'Standard uncertainty', quantity.unit, sites.u, 'cividis')
+    case 'map-error':
+      return mapErrorLayer(pictures)
   }
 }
 
@@ -91,7 +98,7 @@ function spanned(id: LayerId, title: string, unit: string, column: Float64Array,
   return { id, title, unit, column, scale: recoloured(bandScale(min, max, BANDS), map), isJudged: false }
 }
 
-function recoloured(scale: BandScale, map: ColorMapId): BandScale {
+export function recoloured(scale: BandScale, map: ColorMapId): BandScale {
   const { color } = colorScale(map, { min: 0, max: scale.colours.length })
   return { ...scale, colours: scale.colours.map((_, i) => color(i + 0.5)) }
 }

@@ -59,7 +59,7 @@ export function mapModel(pictures: LotPictures, wafer: WaferAnalysis, layer: Map
   const places = waferPlaces(pictures, wafer, layer)
   return {
     ...frameOf(pictures, places),
-    ...joined(pictures, places, layer.scale),
+    ...joined(pictures, places, layer.scale, layer),
     dies: waferDies(pictures, wafer),
     places,
     grid: siteGrid(places.x_mm, places.y_mm),
@@ -93,7 +93,10 @@ function frameOf({ analysis }: LotPictures, { x_mm, y_mm }: MapPlaces) {
   }
 }
 
-function joined({ analysis }: LotPictures, places: MapPlaces, scale: BandScale) {
+function joined({ analysis }: LotPictures, places: MapPlaces, scale: BandScale, layer?: MapLayer) {
+  if (layer?.betweenSites && places.site.length > 0) {
+    return { ...painted(layer.betweenSites(places.site[0], 'large'), scale, 0, 'large'), toJoin: null }
+  }
   const sites = surfaceSites(places, 'large')
   if (sites.value.length > MOST_SITES_HERE) return { bands: null, method: null, toJoin: sites }
   const surface = surfaceMaker(analysis.outline, scale, analysis.procedure.map.interpolation)(sites, 'large')
@@ -131,6 +134,7 @@ export function painted(
 }
 
 export function waferSurface(pictures: LotPictures, places: MapPlaces, layer: MapLayer, detail: MapDetail): WaferSurface | null {
+  if (layer.betweenSites) return places.site.length > 0 ? layer.betweenSites(places.site[0], detail) : null
   const { outline, procedure } = pictures.analysis
   return surfaceMaker(outline, layer.scale, procedure.map.interpolation)(surfaceSites(places, detail), detail)
 } // prettier-ignore

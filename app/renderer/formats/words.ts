@@ -2,6 +2,9 @@
 import type { Verdict } from '../../../core/analysis/lot-analysis'
 import type { MarkKind } from '../../../core/report/figures/marks'
 
+/** "wafer 07", the same as in every sentence of core. */
+export { waferName } from '../../../core/conformity/reasons'
+
 export const VERDICT_WORDS: Readonly<Record<Verdict, string>> = {
   'in-spec': 'in spec',
   'out-of-spec': 'out of spec',
@@ -15,11 +18,6 @@ export const MARK_WORDS: Readonly<Record<MarkKind, string>> = {
   below: 'below its limit',
   undecided: 'undecided',
   'not-assessed': 'not assessed',
-}
-
-/** "wafer 07"; a label that says "wafer" already is left as it is. */
-export function waferName(id: string): string {
-  return /^wafer\b/i.test(id) ? id : `wafer ${id}`
 }
 
 /** "1 site", "12 sites". */

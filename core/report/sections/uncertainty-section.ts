@@ -1,11 +1,12 @@
 /** What the standard uncertainties are made of, what they come to, and whether the first order is enough for them. */
+import { waferName } from '../../conformity/reasons'
 import type { BudgetLine, Working } from '../../analysis/working'
 import { expandedUncertainty, type ExpandedUncertainty } from '../../analysis/uncertainty-budget'
 import { UNCERTAINTY_COMPONENTS, type UncertaintyComponent } from '../../procedure/schema'
 import { formatFixed, formatQuantity, formatSignificant } from '../../units/format'
 import type { Block, KeyValue, TableRow } from '../document'
 import { budgetBars } from '../figures/budget-bars'
-import { waferTitle, type ReportContext } from '../report-context'
+import type { ReportContext } from '../report-context'
 import { monteCarloBlocks } from './monte-carlo-blocks'
 
 const COMPONENTS: Readonly<Record<UncertaintyComponent, string>> = {
@@ -54,7 +55,7 @@ const LEAST_SHARE = 1e-6
 
 /** One site's, largest first, as table and as picture. */
 function budgetBlocks({ site, wafer, budget, expanded }: Working, { width_pt }: ReportContext): Block[] {
-  const where = `site ${site} of ${waferTitle(wafer).toLowerCase()}`
+  const where = `site ${site} of ${waferName(wafer)}`
   const bars = budget.filter(({ share }) => share >= LEAST_SHARE)
   const rest = budget.filter(({ share }) => !(share >= LEAST_SHARE))
   const title = `Uncertainty budget of ${where}`

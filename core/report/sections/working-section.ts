@@ -1,4 +1,5 @@
 /** One site's result set out like a calculation by hand: a step a line, each with its formula, its number and its source. */
+import { waferName } from '../../conformity/reasons'
 import type { Working, WorkingStep } from '../../analysis/working'
 import { formatMm, formatWithUncertainty } from '../../units/format'
 import type { Block, TableRow } from '../document'
@@ -17,7 +18,7 @@ export function workingSection(working: Working, { sources }: ReportContext): Bl
     { kind: 'heading', level: 1, text: 'Working of one site', aside: `${waferTitle(wafer)}, site ${site}` },
     {
       kind: 'paragraph',
-      text: `From the readings at site ${site} of ${waferTitle(wafer).toLowerCase()}${place}, step by step. The number at the right names the source of the formula.`,
+      text: `From the readings at site ${site} of ${waferName(wafer)}${place}, step by step. The number at the right names the source of the formula.`,
       quiet: true,
     },
     {
