@@ -104,13 +104,14 @@ function fitted(pattern: Pattern, values: Float64Array, u: Float64Array): Proces
   const spread = means.reduce((most, value) => Math.max(most, Math.abs(value - means[0])), 0)
   if (!(spread > 1e-10 * Math.abs(means[0]))) return null
   const repeatability = repeatabilityOf(distinct, u)
-  const best = bestOnGrid(
+  const tried = triedOnGrid(
     pattern,
     Float64Array.from(rows, (i) => means[i]),
-    repeatability,
   )
+  const least = leastNugget(tried, repeatability)
+  const best = bestOf(tried, least)
   if (!best) return null
-  const hyper = refined(pattern, means, best, repeatability)
+  const hyper = refined(pattern, means, best, least)
   const whole = factored(sites, degree, hyper)
   return whole && surfaceOf(pattern, whole, solved(whole, means), repeatability)
 }
@@ -122,33 +123,49 @@ function repeatabilityOf({ distinctOf, multiplicity }: DistinctSites, u: Float64
   return u.length > 0 ? sum / u.length : 0
 }
 
-/** A nugget below what the sites repeat by is none that could be. A quarter is let pass, as u itself is not known better. */
-function isAllowed(noiseRatio: number, amplitude: number, repeatability: number): boolean {
-  return noiseRatio * amplitude >= 0.25 * repeatability
+interface Tried {
+  readonly entry: Factored
+  readonly deviance: number
+  /** As a variance. */
+  readonly nugget: number
 }
 
-function bestOnGrid({ grid }: Pattern, means: Float64Array, repeatability: number): Factored | null {
-  let best: { readonly entry: Factored; readonly deviance: number } | null = null
-  for (const entry of grid) {
-    if (!entry) continue
+function triedOnGrid({ grid }: Pattern, means: Float64Array): readonly Tried[] {
+  return grid.flatMap((entry) => {
+    if (!entry) return []
     const { amplitude, deviance } = solved(entry, means)
-    if (!(amplitude > 0) || !isAllowed(entry.hyper.noiseRatio, amplitude, repeatability)) continue
-    if (!best || deviance < best.deviance) best = { entry, deviance }
-  }
-  return best?.entry ?? null
+    return amplitude > 0 ? [{ entry, deviance, nugget: entry.hyper.noiseRatio * amplitude }] : []
+  })
+}
+
+/**
+ * A nugget below what the sites repeat by is none that could be. A quarter is let pass, as u itself is not known better.
+ * Where the sites scatter less about every surface than they are said to repeat by, they have the word.
+ */
+function leastNugget(tried: readonly Tried[], repeatability: number): number {
+  const most = tried.reduce((largest, { nugget }) => Math.max(largest, nugget), 0)
+  return 0.25 * Math.min(repeatability, most)
+}
+
+function bestOf(tried: readonly Tried[], least: number): Factored | null {
+  const allowed = tried.filter(({ nugget }) => nugget >= least)
+  return (
+    allowed.reduce<Tried | null>((best, one) => (best && best.deviance <= one.deviance ? best : one), null)?.entry ??
+    null
+  )
 }
 
 /** Up to so many sites the best of the grid is looked at again with all of them. */
 const REFINED_SITES = 400
 
 /** Steps of halving size about the best of the grid, a few dozen evaluations. */
-function refined({ sites, degree }: Pattern, means: Float64Array, from: Factored, repeatability: number): Hyperparameters {
+function refined({ sites, degree }: Pattern, means: Float64Array, from: Factored, leastAllowed: number): Hyperparameters {
   if (sites.count > REFINED_SITES) return from.hyper
   const devianceAt = (hyper: Hyperparameters): number => {
     const entry = factored(sites, degree, hyper)
     if (!entry) return Infinity
     const { amplitude, deviance } = solved(entry, means)
-    return amplitude > 0 && isAllowed(hyper.noiseRatio, amplitude, repeatability) ? deviance : Infinity
+    return amplitude > 0 && hyper.noiseRatio * amplitude >= leastAllowed ? deviance : Infinity
   }
   let here = from.hyper
   let least = devianceAt(here)

@@ -1,5 +1,5 @@
 /** How far the map itself may be off between the sites: the standard error of the Gaussian process, as a layer. */
-import { bandScale } from '../../../core/report/figures/band-scale'
+import { bandScale, type BandScale } from '../../../core/report/figures/band-scale'
 import { contoursOf, mapRaster, type MapDetail, type WaferSurface } from '../../../core/report/surface'
 import type { ProcessSurface } from '../../../core/map/process-surface'
 import type { Targets } from '../../../core/map/thin-plate-spline'
@@ -56,20 +56,27 @@ function errorsOf(pictures: LotPictures): Errors {
   const { analysis, positions, wafers } = pictures
   const column = new Float64Array(analysis.sites.count).fill(NaN)
   const { targets } = mapRaster(analysis.outline, 'small')
-  let max = 0
-  let min = Infinity
+  const ranges: { readonly min: number; readonly max: number }[] = []
   for (const wafer of wafers) {
     const surface = surfaceFor(pictures, wafer)
     if (!surface) continue
     const pick = (from: Float64Array): Float64Array => Float64Array.from(wafer.sites, (row) => from[row])
     const here = errorAt(surface, { x_mm: pick(positions!.x_mm), y_mm: pick(positions!.y_mm) })
     wafer.sites.forEach((row, k) => (column[row] = here[k]))
-    const range = extremes(errorAt(surface, targets))
-    min = Math.min(min, range.min)
-    max = Math.max(max, range.max)
+    ranges.push(extremes(errorAt(surface, targets)))
   }
-  const scale = max > 0 ? bandScale(min, max, BANDS) : bandScale(0, 1, BANDS)
-  return { column, scale: recoloured(scale, 'cividis') }
+  return { column, scale: recoloured(scaleOf(ranges), 'cividis') }
+}
+
+/** A wafer with a stray site is known so much worse than the others that its own range would flatten theirs. */
+const FAR = 4
+
+function scaleOf(ranges: readonly { readonly min: number; readonly max: number }[]): BandScale {
+  if (ranges.length === 0) return bandScale(0, 1, BANDS)
+  const largest = ranges.map(({ max }) => max).sort((a, b) => a - b)
+  const max = largest.filter((one) => one <= FAR * largest[largest.length >> 1]).at(-1)!
+  const min = Math.min(...ranges.map((range) => range.min))
+  return { ...bandScale(min, max, BANDS), goesOn: { below: false, above: largest[largest.length - 1] > max } }
 }
 
 function surfaceOf(pictures: LotPictures, { scale }: Errors, row: number, detail: MapDetail): WaferSurface | null {

@@ -186,6 +186,14 @@ describe('a fitted surface', () => {
     expect(Math.abs(covered - 0.95)).toBeLessThan(0.03)
   })
 
+  it('believes the sites where they scatter less than they are said to repeat by', () => {
+    const values = simulated(4, 0.05, smooth)
+    const surface = processFitter()(plan.x_mm, plan.y_mm, values, new Float64Array(plan.count).fill(1))!
+    // Half of what they are said to repeat by is the least that the claim alone would let pass.
+    expect(surface.nugget).toBeLessThan(0.5)
+    expect(surface.nugget).toBeGreaterThan(0.05)
+  })
+
   it('is refused where nothing can be fitted', () => {
     const fit = processFitter()
     const u = new Float64Array(plan.count)
