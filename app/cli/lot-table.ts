@@ -1,4 +1,5 @@
 import type { LotAnalysis, WaferAnalysis } from '../../core/analysis/lot-analysis'
+import { mapFit, type MapFit } from '../../core/analysis/map-fit'
 import { acceptanceWords } from '../../core/conformity/acceptance'
 import { formatFixed, formatSignificant } from '../../core/units/format'
 import { aligned } from './text-table'
@@ -15,11 +16,12 @@ export function lotTable(analysis: LotAnalysis): string {
     'HLV %',
     'min',
     'max',
+    'left out',
     'sites out',
     'dies out',
     'verdict',
   ]
-  const rows = wafers.map((wafer) => waferRow(wafer, dies !== null))
+  const rows = wafers.map((wafer) => waferRow(wafer, leftOut(mapFit(analysis, wafer)), dies !== null))
   const { statistics } = lot
   const lotRow = [
     'lot',
@@ -30,6 +32,7 @@ export function lotTable(analysis: LotAnalysis): string {
     two(statistics.rangePercent),
     four(statistics.min),
     four(statistics.max),
+    '',
     '',
     '',
     lot.verdict,
@@ -49,10 +52,18 @@ export function lotTable(analysis: LotAnalysis): string {
     '',
     ...(analysis.procedure.acceptance.rule === 'simple' ? [] : [acceptanceWords(analysis.procedure.acceptance)]),
     'SUP = 100 s/mean, HLV = 200 (max - min)/(max + min): SEMI MF1618; the lot row is over wafer means',
+    `left out = root mean square of each site less what the ${SURFACES[analysis.procedure.map.interpolation]} through the others says`,
   ].join('\n')
 }
 
-function waferRow(wafer: WaferAnalysis, hasDies: boolean): string[] {
+const SURFACES = { 'thin-plate-spline': 'spline', 'gaussian-process': 'Gaussian process' } as const
+
+/** Of the surface that the maps are drawn by. */
+function leftOut(fit: MapFit | null): number {
+  return fit?.process?.leaveOneOut ?? fit?.plainLeaveOneOut ?? NaN
+}
+
+function waferRow(wafer: WaferAnalysis, missed: number, hasDies: boolean): string[] {
   const { statistics, dieCounts } = wafer
   return [
     wafer.id,
@@ -63,6 +74,7 @@ function waferRow(wafer: WaferAnalysis, hasDies: boolean): string[] {
     two(statistics.rangePercent),
     four(statistics.min),
     four(statistics.max),
+    formatSignificant(missed, 2),
     String(wafer.sitesOut),
     hasDies && dieCounts ? String(dieCounts['out-of-spec']) : '',
     wafer.verdict,

@@ -27,6 +27,18 @@ const VERIFY_USAGE = `usage: persquare verify REPORT.pdf [--json]
 
 exit status: 0 the report is what comes out of its inputs; 1 something in it differs; 2 it is no report that can be read`
 
+const UNCERTAINTY_USAGE = `usage: persquare uncertainty FILE --procedure FILE [options]
+
+  FILE                 the lot's CSV
+  --procedure FILE     the procedure (JSON), with the components of uncertainty
+  --wafer NAME         the wafer (default: the one whose working the report sets out)
+  --site NAME          its site (default: the one of the report, or the wafer's first)
+  --trials N           draws of the Monte Carlo calculation, 1000 to 2000000 (default: 100000)
+  --seed N             of its draws (default: 20260316)
+  --json               print one object instead of the tables
+
+exit status: 0 the first-order budget is enough there; 1 it is not; 2 not done`
+
 interface Command {
   /** Exit status: 0 done, and in spec where something was judged; 1 judged and not in spec throughout; 2 not done. */
   readonly run: (args: readonly string[]) => Promise<number>
@@ -41,6 +53,10 @@ const commands: Record<string, Command> = {
   convert: { run: convertCommand, usage: CONVERT_USAGE },
   gauge: { run: gaugeCommand, usage: GAUGE_USAGE },
   check: { run: checkCommand, usage: CHECK_USAGE },
+  uncertainty: {
+    run: async (args) => (await import('./uncertainty')).uncertaintyCommand(args),
+    usage: UNCERTAINTY_USAGE,
+  },
   sites: { run: sitesCommand, usage: SITES_USAGE },
 }
 

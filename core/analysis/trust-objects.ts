@@ -8,16 +8,20 @@ import type { LotAnalysis } from './lot-analysis'
 import { RISK_SOURCE } from './lot-risks'
 import { reportSite } from './report-site'
 import { siteWorking } from './site-working'
+import type { Working } from './working'
 
 /** null where nothing is uncertain. */
 export function uncertaintyObject(analysis: LotAnalysis): object | null {
   const site = reportSite(analysis)
   if (site === null) return null
-  const { wafer, site: name, budget, expanded } = siteWorking(analysis, site)
-  if (budget.length === 0) return null
+  const working = siteWorking(analysis, site)
+  return working.budget.length === 0 ? null : budgetObject(working)
+}
+
+export function budgetObject({ wafer, site, budget, expanded }: Working): object {
   return {
     wafer,
-    site: name,
+    site,
     relative: expanded.standard,
     effectiveDegreesOfFreedom: finite(expanded.effectiveDegreesOfFreedom),
     coverageProbability: expanded.level,

@@ -14,6 +14,16 @@ export interface ExpandedUncertainty {
   readonly level: number
 }
 
+/** Below this share of the variance a component is named, not listed. */
+const LEAST_SHARE = 1e-6
+
+export function splitByEffect<Line extends Pick<BudgetLine, 'share'>>(
+  budget: readonly Line[],
+): { readonly listed: readonly Line[]; readonly idle: readonly Line[] } {
+  const isListed = ({ share }: Line): boolean => share >= LEAST_SHARE
+  return { listed: budget.filter(isListed), idle: budget.filter((line) => !isListed(line)) }
+}
+
 /** Beyond, Student's t is the normal distribution to every digit that is shown. */
 const MANY = 1e6
 

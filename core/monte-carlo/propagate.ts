@@ -121,12 +121,16 @@ export function agreement({ value, expandedUncertainty, standardUncertainty }: F
   const lowerDifference = Math.abs(value - expandedUncertainty - found.interval.lower)
   const upperDifference = Math.abs(value + expandedUncertainty - found.interval.upper)
   const noise = 2 * endDeviation(found)
-  const isFirstOrderEnough = Math.max(lowerDifference, upperDifference) <= tolerance + noise && found.failed < 0.001 * found.trials
-  const sentence = isFirstOrderEnough
-    ? 'The first-order budget agrees with the Monte Carlo calculation within its numerical tolerance: it is enough here.'
-    : found.failed >= 0.001 * found.trials
-      ? `${found.failed} of ${found.trials} draws gave no result (a pin off the wafer, or no such layer): the first-order budget does not tell of that.`
-      : 'The first-order budget does not agree with the Monte Carlo calculation within its numerical tolerance: take the interval of the latter.'
+  const difference = Math.max(lowerDifference, upperDifference)
+  const hasFailed = found.failed >= 0.001 * found.trials
+  const isFirstOrderEnough = difference <= tolerance + noise && !hasFailed
+  const sentence = hasFailed
+    ? `${found.failed} of ${found.trials} draws gave no result (a pin off the wafer, or no such layer): the first-order budget does not tell of that.`
+    : !isFirstOrderEnough
+      ? 'The first-order budget does not agree with the Monte Carlo calculation within its numerical tolerance: take the interval of the latter.'
+      : difference <= tolerance
+        ? 'The first-order budget agrees with the Monte Carlo calculation within its numerical tolerance: it is enough here.'
+        : 'The first-order budget and the Monte Carlo calculation differ by no more than the numerical tolerance and the chance of so many draws: nothing speaks against the first order; more draws would tell it closer.'
   return { tolerance, lowerDifference, upperDifference, noise, isFirstOrderEnough, sentence }
 } // prettier-ignore
 

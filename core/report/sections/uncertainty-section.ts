@@ -1,7 +1,7 @@
 /** What the standard uncertainties are made of, what they come to, and whether the first order is enough for them. */
 import { waferName } from '../../conformity/reasons'
 import type { BudgetLine, Working } from '../../analysis/working'
-import { expandedUncertainty, type ExpandedUncertainty } from '../../analysis/uncertainty-budget'
+import { expandedUncertainty, splitByEffect, type ExpandedUncertainty } from '../../analysis/uncertainty-budget'
 import { UNCERTAINTY_COMPONENTS, type UncertaintyComponent } from '../../procedure/schema'
 import { formatFixed, formatQuantity, formatSignificant } from '../../units/format'
 import type { Block, KeyValue, TableRow } from '../document'
@@ -50,14 +50,10 @@ export function uncertaintyBlocks(context: ReportContext): Block[] {
   ]
 } // prettier-ignore
 
-/** Below this share of the variance a component is named, not listed. */
-const LEAST_SHARE = 1e-6
-
 /** One site's, largest first, as table and as picture. */
 function budgetBlocks({ site, wafer, budget, expanded }: Working, { width_pt }: ReportContext): Block[] {
   const where = `site ${site} of ${waferName(wafer)}`
-  const bars = budget.filter(({ share }) => share >= LEAST_SHARE)
-  const rest = budget.filter(({ share }) => !(share >= LEAST_SHARE))
+  const { listed: bars, idle: rest } = splitByEffect(budget)
   const title = `Uncertainty budget of ${where}`
   return [
     { kind: 'heading', level: 2, text: `Budget at ${where}` },
