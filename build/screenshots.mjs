@@ -10,7 +10,12 @@ import { chromium } from 'playwright-core'
 
 const ROOT = join(import.meta.dirname, '..')
 const OUT = join(import.meta.dirname, 'screenshots')
-const LOT = ['sample-data/TB-0417.csv', 'sample-data/TB-0417.procedure.json']
+const LOT = [
+  'TB-0417.csv',
+  'TB-0417-trust.procedure.json',
+  'station-2-gauge-study.csv',
+  'station-2-check-wafer.csv',
+].map((name) => `sample-data/${name}`)
 
 const stateFolder = await mkdtemp(join(tmpdir(), 'persquare-screenshots-'))
 await mkdir(OUT, { recursive: true })
@@ -46,8 +51,20 @@ async function picture(colorScheme, viewport) {
   await page.locator('.js-plotly-plot .main-svg').first().waitFor()
   await page.waitForTimeout(500)
   await shot('layer')
+  await page.keyboard.press('5')
+  await page.getByRole('heading', { name: /^Budget at site/ }).waitFor()
+  await shot('trust')
+  await page.keyboard.press('7')
+  await page.getByRole('tab', { name: 'Check wafer' }).click()
+  await page.getByRole('heading', { name: 'Values of the check wafer' }).waitFor()
+  await shot('check-wafer')
+  await page.keyboard.press('8')
+  await page.getByRole('table', { name: /what each sees/ }).waitFor()
+  await shot('plan')
   await page.keyboard.press('6')
   await page.getByRole('heading', { name: 'Your decision' }).waitFor()
+  await page.waitForFunction(() => performance.getEntriesByName('persquare:report-page').length > 0)
+  await page.waitForTimeout(500)
   await shot('hand-over')
   await page.keyboard.press('1')
   await page.getByRole('heading', { name: 'Columns' }).waitFor()
