@@ -140,7 +140,7 @@ function planWords(assessed: readonly Assessed[], best: Assessed | null, { effec
     percent(entry.smallest), percent(entry.bias * size),
   ])
   return [
-    `A ${title} of ${percent(size)} % (${words}), sites that spread by ${percent(repeatability)} %, ${formatFixed(100 * power, 0)} % sure at ${formatFixed(100 * alpha, 0)} % false alarms:`,
+    `A ${title} of ${percent(size)} % (${words}), sites that spread by ${percent(repeatability)} %, ${formatFixed(100 * power, 0)} % sure at ${formatFixed(100 * alpha, 0)} % false alarms, by a test of this one shape in its worst direction or place:`,
     best ? `${best.title} (${best.plan.count} sites) sees it.` : 'no plan here sees it so surely.',
     '',
     ...alignedNumbers([['  plan', 'sites', 'power %', 'smallest %', 'mean off by %'], ...rows]),

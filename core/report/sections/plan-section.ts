@@ -18,7 +18,7 @@ export function planSection({ analysis, detailsOf }: ReportContext): Block[] {
     { kind: 'heading', level: 2, text: 'What this plan can see' },
     {
       kind: 'paragraph',
-      text: `${plan.count} sites a wafer that spread by ${formatSignificant(100 * repeatability, 2)} % about their surface: smallest pattern that is found with ${formatFixed(100 * POWER, 0)} % power at ${formatFixed(100 * ALPHA, 0)} % false alarms. Smaller ones may be there all the same.`,
+      text: `${plan.count} sites a wafer that spread by ${formatSignificant(100 * repeatability, 2)} % about their surface: smallest pattern that is found with ${formatFixed(100 * POWER, 0)} % power at ${formatFixed(100 * ALPHA, 0)} % false alarms, in its worst direction or place, by a test of that one shape. Smaller ones may be there all the same.`,
     },
     {
       kind: 'table',

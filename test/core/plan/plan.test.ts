@@ -107,10 +107,26 @@ describe('what a plan can see', () => {
   const plan = concentricPlan({ circles: 3, outerRadius_mm: 95 })
   const question = (effect: (typeof EFFECT_IDS)[number], repeatability = 0.002) => ({ plan, usableRadius_mm: 95, effect, repeatability, alpha: 0.05 })
 
+  /** Found by trying: every direction by the half degree, or every place. */
+  function worstShape(effect: (typeof EFFECT_IDS)[number]): Float64Array {
+    const { family, shapes } = EFFECTS[effect]
+    const columns = shapes.map((shape) => plan.x_mm.map((x, i) => shape(x / 95, plan.y_mm[i] / 95)))
+    const turned = (degrees: number): Float64Array => {
+      const a = (degrees * Math.PI) / 180
+      return columns[0].map((value, i) => Math.cos(a) * value + (columns[1] ? Math.sin(a) * columns[1][i] : 0))
+    }
+    const tried = family === 'placed' ? columns : columns[1] ? Array.from({ length: 360 }, (_, k) => turned(k / 2)) : columns
+    const squares = (column: Float64Array): number => {
+      const mean = column.reduce((sum, value) => sum + value, 0) / column.length
+      return column.reduce((sum, value) => sum + (value - mean) ** 2, 0)
+    }
+    return tried.reduce((worst, column) => (squares(column) < squares(worst) ? column : worst))
+  }
+
   it.each(EFFECT_IDS)('%s: the power is that of a seeded simulation of the test itself', (effect) => {
     const size = smallestDetectable(question(effect), 0.7)
     const random = seededRandom(9)
-    const shape = plan.x_mm.map((x, i) => EFFECTS[effect].shape(x / 95, plan.y_mm[i] / 95))
+    const shape = worstShape(effect)
     const mean = shape.reduce((sum, value) => sum + value, 0) / plan.count
     const squares = shape.reduce((sum, value) => sum + (value - mean) ** 2, 0)
     const critical = fQuantile(0.95, 1, plan.count - 2)
@@ -142,6 +158,21 @@ describe('what a plan can see', () => {
     expect(smallestDetectable({ ...question('tilt'), plan: line }, 0.9)).toBe(Infinity)
     expect(detectionPower({ ...question('tilt'), plan: line }, 0.5)).toBeCloseTo(0.05, 9)
     expect(detectionPower({ ...question('tilt'), plan: { count: 2, x_mm: line.x_mm.slice(0, 2), y_mm: line.y_mm.slice(0, 2) } }, 1)).toBeNaN()
+  })
+
+  it('counts the worst direction: a diameter is blind to a tilt across it, four sites on the axes to a pattern between them', () => {
+    const along = { count: 25, x_mm: Float64Array.from({ length: 25 }, (_, k) => -84 + 7 * k), y_mm: new Float64Array(25) }
+    expect(smallestDetectable({ ...question('tilt'), plan: along }, 0.9)).toBe(Infinity)
+    const cross = polarPlan({ rings: [{ sites: 4, radius_mm: 47 }, { sites: 4, radius_mm: 95 }] })
+    expect(smallestDetectable({ ...question('two-fold'), plan: cross }, 0.9)).toBe(Infinity)
+    expect(smallestDetectable({ ...question('tilt'), plan: cross }, 0.9)).toBeLessThan(0.02)
+    // A spot that lies between the sites of so coarse a plan is not seen.
+    expect(smallestDetectable({ ...question('spot'), plan: cross }, 0.9)).toBeGreaterThan(1)
+  })
+
+  it('sees nothing more surely than by chance: a power no greater than the false alarms needs no effect', () => {
+    expect(smallestDetectable({ ...question('edge'), alpha: 0.2 }, 0.1)).toBe(0)
+    expect(meanBias({ plan, usableRadius_mm: 95, effect: 'tilt' })).toBe(0)
   })
 
   it('recommends the smallest of the usual plans that is enough', () => {
