@@ -9,10 +9,15 @@ export interface CheckOfLot {
   readonly standing: StandingCheck
 }
 
-/** The lot counts by its first reading: what the prober was when it began. Without times the history's end stands. */
+/** The lot counts from its first reading to its last. Without times the history's end stands. */
 export function checkOfLot(result: CheckResult, { time_ms }: Readings): CheckOfLot {
-  const first = time_ms ? time_ms.reduce((least, time) => (time < least ? time : least), Infinity) : NaN
-  return { result, standing: standingAt(result, Number.isFinite(first) ? first : NaN) }
+  let first = Infinity
+  let last = -Infinity
+  for (const time of time_ms ?? []) {
+    if (time < first) first = time
+    if (time > last) last = time
+  }
+  return { result, standing: Number.isFinite(first) ? standingAt(result, first, last) : standingAt(result, NaN) }
 }
 
 /**

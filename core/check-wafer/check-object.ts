@@ -46,6 +46,7 @@ export function checkObject({ history, options, limits, average, alarms, autocor
       when: history.when[row],
       value: history.value[row],
       standardDeviation: history.standardDeviation[row],
+      precisionUpperLimit: Number.isNaN(limits.precisionLimits[row]) ? null : limits.precisionLimits[row],
       movingAverage: average.average[k],
     })),
     source: CHECK_SOURCE,

@@ -1,4 +1,5 @@
 /** What a check wafer's charts say, in sentences, for the command line, the window and the report. */
+import { quote } from '../problems/quote'
 import { formatFixed, formatSignificant } from '../units/format'
 import type { CheckResult, StandingCheck } from './check'
 
@@ -16,8 +17,13 @@ export function checkWords({ history, limits, alarms, autocorrelation, isInContr
       : `The last occasion of ${what} raises an alarm: what was measured since is doubtful.`,
     `Limits from ${made}: ${formatFixed(limits.lowerLimit, spread)} to ${formatFixed(limits.upperLimit, spread)}${unit} about ${formatFixed(limits.centerLine, spread)}${limits.isAccepted ? ' (the accepted value)' : ''}.`,
     limits.precisionUpperLimit === null
-      ? 'The history has no standard deviations, so that the precision of an occasion is not judged.'
+      ? 'The history has no standard deviations with the count of their readings, so that the precision of an occasion is not judged.'
       : `A series may spread by ${formatSignificant(limits.precisionUpperLimit, 4)}${unit}.`,
+    ...(history.hasUnreadTimes
+      ? [
+          `Its times, such as ${quote(history.when[0])}, can't be read as dates: its rows stand in the order of the file, and no lot can be placed among them.`,
+        ]
+      : []),
     occasions === 0 ? 'No occasion raised an alarm.' : `${occasions} of ${history.count} occasions raised an alarm.`,
     ...(correlated
       ? [
@@ -29,9 +35,10 @@ export function checkWords({ history, limits, alarms, autocorrelation, isInContr
 
 /** Of a lot, what its check wafer says. */
 export function standingWords({ history }: CheckResult, standing: StandingCheck): string {
-  const when = standing.byTime
-    ? `on ${standing.when}, its last occasion before the lot`
-    : `on ${standing.when}, its last occasion`
+  const which = standing.isDuring
+    ? 'while the lot was measured'
+    : `its last occasion${standing.byTime ? ' before the lot' : ''}`
+  const when = `on ${standing.when}, ${which}`
   switch (standing.state) {
     case 'in-control':
       return `The check wafer was in control ${when} (${history.file}).`

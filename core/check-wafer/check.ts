@@ -67,7 +67,7 @@ const LOOK_BACK = 'Look for what changed since the run began, such as a probe, a
 
 function alarmsAt({ history, limits, average, rules, row, k }: Occasion): CheckAlarm[] {
   const place = { index: row + 1, place: k + 1, when: history.when[row], time_ms: history.time_ms[row] }
-  const { lowerLimit, upperLimit, precisionUpperLimit } = limits
+  const { lowerLimit, upperLimit } = limits
   const value = history.value[row]
   const spread = history.standardDeviation[row]
   const mean = average.average[k]
@@ -76,7 +76,7 @@ function alarmsAt({ history, limits, average, rules, row, k }: Occasion): CheckA
     const sentence = `The check wafer read ${value < lowerLimit ? 'below its lower' : 'above its upper'} limit.`
     found.push({ ...place, chart: 'value', rule: 'outside-limits', value, sentence, nextStep: LOOK_AT_PROBER })
   }
-  if (precisionUpperLimit !== null && spread > precisionUpperLimit) {
+  if (spread > limits.precisionLimits[row]) {
     const sentence = 'The readings of the series spread more than their limit.'
     found.push({ ...place, chart: 'precision', rule: 'outside-limits', value: spread, sentence, nextStep: LOOK_AT_TIP })
   }
@@ -103,30 +103,43 @@ function lagOne(values: readonly number[]): number {
   return both / whole
 }
 
-/** How the check wafer stood when something was measured. */
+/** How the check wafer stood while something was measured. */
 export interface StandingCheck {
   readonly state: 'in-control' | 'alarm' | 'before-history'
-  /** Place in the order of time, from 1, of the last occasion that counts; 0 for none. */
+  /** Place in the order of time, from 1, of the occasion that counts; 0 for none. */
   readonly place: number
   readonly when: string
   /** Of that occasion. */
   readonly alarms: readonly CheckAlarm[]
   /** Whether it was found by the time; without times the history's last occasion stands. */
   readonly byTime: boolean
+  /** Whether that occasion came after the measurement had begun. */
+  readonly isDuring: boolean
 }
 
 /**
- * The last occasion at or before a time says whether what was measured then may be trusted: an alarm stands until an
- * occasion without one. `time_ms` NaN, or a history without times: the last occasion of all.
+ * What was measured from `first_ms` to `last_ms` hangs on the last occasion at or before it began and on those while it
+ * went on: an alarm stands until an occasion without one, and the first alarm of these counts, else the last occasion.
+ * `first_ms` NaN, or a history without times: the last occasion of all.
  */
-export function standingAt({ history, alarms }: CheckResult, time_ms: number): StandingCheck {
+export function standingAt({ history, alarms }: CheckResult, first_ms: number, last_ms = first_ms): StandingCheck {
   const order = [...history.order]
-  const byTime = !Number.isNaN(time_ms) && order.every((row) => !Number.isNaN(history.time_ms[row]))
-  const place = byTime ? order.filter((row) => history.time_ms[row] <= time_ms).length : order.length
-  if (place === 0) return { state: 'before-history', place, when: '', alarms: [], byTime }
-  const own = alarms.filter((alarm) => alarm.place === place)
-  return { state: own.length > 0 ? 'alarm' : 'in-control', place, when: history.when[order[place - 1]], alarms: own, byTime }
-} // prettier-ignore
+  const byTime = !Number.isNaN(first_ms) && order.every((row) => !Number.isNaN(history.time_ms[row]))
+  const until = (time_ms: number): number => order.filter((row) => history.time_ms[row] <= time_ms).length
+  const before = byTime ? until(first_ms) : order.length
+  const end = byTime ? Math.max(before, until(last_ms)) : before
+  if (end === 0) return { state: 'before-history', place: 0, when: '', alarms: [], byTime, isDuring: false }
+  const alarmed = alarms.find((alarm) => alarm.place >= before && alarm.place <= end)
+  const place = alarmed?.place ?? end
+  return {
+    state: alarmed ? 'alarm' : 'in-control',
+    place,
+    when: history.when[order[place - 1]],
+    alarms: alarms.filter((alarm) => alarm.place === place),
+    byTime,
+    isDuring: place > before,
+  }
+}
 
 /** The alarms of one occasion, with what they say together. */
 export interface AlarmedOccasion {

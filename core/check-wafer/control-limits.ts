@@ -40,8 +40,10 @@ export interface ControlLimits {
   /** Pooled over the occasions: s1; null where the file has no standard deviations. */
   readonly repeatability: number | null
   readonly repeatabilityDegreesOfFreedom: number
-  /** Upper limit of an occasion's standard deviation; null likewise. */
+  /** Upper limit of the standard deviation of an occasion of the usual length; null likewise. */
   readonly precisionUpperLimit: number | null
+  /** The same of each occasion's own length, by its row, the usual one where that isn't known; NaN for a single reading. */
+  readonly precisionLimits: Float64Array
 }
 
 export const LEAST_OCCASIONS = 4
@@ -57,7 +59,8 @@ export function controlLimits(history: CheckHistory, options: ChartOptions): Con
   const mean = rows.reduce((sum, i) => sum + history.value[i], 0) / count
   const variance = rows.reduce((sum, i) => sum + (history.value[i] - mean) ** 2, 0) / (count - 1)
   const standardDeviation = Math.sqrt(variance)
-  if (!(standardDeviation > 0)) throw refusal('its values are all the same, so that nothing tells how far a sound one may lie off')
+  // Compared value by value: the mean of equal values need not be that value to the last bit.
+  if (rows.every((i) => history.value[i] === history.value[rows[0]])) throw refusal('its values are all the same, so that nothing tells how far a sound one may lie off')
   const centerLine = accepted ?? mean
   return {
     baseline: count,
@@ -81,10 +84,18 @@ function precision({ standardDeviation, degreesOfFreedom }: CheckHistory, rows: 
     freedom += degreesOfFreedom[i]
     known++
   }
-  if (!(sum > 0)) return { repeatability: null, repeatabilityDegreesOfFreedom: freedom, precisionUpperLimit: null }
+  const unknown = new Float64Array(degreesOfFreedom.length).fill(NaN)
+  if (!(sum > 0)) return { repeatability: null, repeatabilityDegreesOfFreedom: freedom, precisionUpperLimit: null, precisionLimits: unknown }
   const repeatability = Math.sqrt(sum / freedom)
-  const limit = repeatability * Math.sqrt(fQuantile(confidence, freedom / known, freedom))
-  return { repeatability, repeatabilityDegreesOfFreedom: freedom, precisionUpperLimit: limit }
+  const limitOf = (own: number): number => repeatability * Math.sqrt(fQuantile(confidence, own, freedom))
+  const usual = limitOf(freedom / known)
+  const limits = new Map([...new Set(degreesOfFreedom)].map((own) => [own, Number.isNaN(own) ? usual : own > 0 ? limitOf(own) : NaN]))
+  return {
+    repeatability,
+    repeatabilityDegreesOfFreedom: freedom,
+    precisionUpperLimit: usual,
+    precisionLimits: degreesOfFreedom.map((own) => limits.get(own)!),
+  }
 } // prettier-ignore
 
 function refusal(why: string): CoreError {

@@ -2,6 +2,8 @@
 import { parseTime } from '../ingest/parse-time'
 import { readNamedTable, type NamedTable, type TableColumn, type TableFile } from '../ingest/named-table'
 import type { TableProblem } from '../problems/problem'
+import { quote } from '../problems/quote'
+import { toBase, type Unit } from '../units/unit-register'
 
 export interface CheckHistory {
   readonly file: string
@@ -18,6 +20,8 @@ export interface CheckHistory {
   readonly standardDeviation: Float64Array
   /** Degrees of freedom of that; NaN where they aren't known. */
   readonly degreesOfFreedom: Float64Array
+  /** Whether it names times and none of them can be read: the rows then stand as the file has them. */
+  readonly hasUnreadTimes: boolean
   /** As the file has it; the number of the row where it has none. */
   readonly when: readonly string[]
   /** Milliseconds since 1970 UTC; NaN where the file has no date with a year. */
@@ -59,7 +63,7 @@ export const HISTORY_COLUMNS = {
 
 type HistoryColumn = keyof typeof HISTORY_COLUMNS
 
-/** Where a file has several wafers or probes, those of the first row are followed; another's rows are left out and said. */
+/** A file of several wafers or probes is refused. Where some rows have a time, one without has no place and is left out. */
 export function readHistory(file: TableFile): ReadHistory {
   const { table, problems } = readNamedTable<HistoryColumn>(file, HISTORY_COLUMNS)
   if (!table) return { history: null, problems }
@@ -72,31 +76,66 @@ export function readHistory(file: TableFile): ReadHistory {
     const why = `it has several ${what}; a history is of one check wafer and one probe`
     return { history: null, problems: [...problems, { kind: 'bad-table', file: file.name, why }] }
   }
-  return { history: historyOf(table, wafers, probes), problems }
+  const mismatch = unitMismatch(table)
+  if (mismatch !== null) return { history: null, problems: [...problems, { kind: 'bad-table', file: file.name, why: mismatch }] }
+  const times = Array.from({ length: table.count }, (_, i) => momentOf(table, i))
+  const placeless = placelessRows(times)
+  const kept = times.flatMap((_, i) => (placeless.has(i) ? [] : [i]))
+  const left = [...placeless].map(([i, why]): TableProblem => ({ kind: 'bad-table', file: file.name, line: table.line[i], why }))
+  return { history: historyOf(table, times, kept), problems: [...problems, ...left] }
 } // prettier-ignore
+
+/** Why each row can't be put in the order of time; none where no row has a time that can be read. */
+function placelessRows(times: readonly Moment[]): ReadonlyMap<number, string> {
+  const without = times.flatMap(({ key }, i) => (Number.isNaN(key) ? [i] : []))
+  if (without.length === times.length) return new Map()
+  return new Map(without.map((i) => [i, timeFault(times[i].text)]))
+}
+
+function timeFault(text: string): string {
+  if (text === '') return 'it has no time, and other rows have one'
+  return parseTime(text) === 'ambiguous'
+    ? `its time ${quote(text)} can be read day first or month first; write it as 2026-03-02`
+    : `its time ${quote(text)} can't be read; write it as 2026-03-02 or 2026-03-02T14:05`
+}
 
 const UNITS: Readonly<Record<string, string>> = { 'sheet-resistance': 'Ω/sq', resistivity: 'Ω·cm', resistance: 'Ω' }
 
-function historyOf(table: NamedTable<HistoryColumn>, wafers: readonly string[], probes: readonly string[]): CheckHistory {
-  const { file, bytes, sha256, count, line, numbers, units } = table
-  const times = Array.from({ length: count }, (_, i) => momentOf(table, i))
+/** A spread without a unit is in that of the values; the other way round nobody knows what the values are in. */
+function unitMismatch({ units: { spread, value } }: NamedTable<HistoryColumn>): string | null {
+  if (spread === null) return null
+  if (value === null) return toBase(1, spread) === 1 ? null : `its standard deviations are in ${spread.id}, and its values name no unit`
+  return spread.quantity === value.quantity ? null : `its standard deviations are in ${spread.id}, its values in ${value.id}`
+} // prettier-ignore
+
+function historyOf(table: NamedTable<HistoryColumn>, times: readonly Moment[], kept: readonly number[]): CheckHistory {
+  const { file, bytes, sha256, line, numbers, texts, units } = table
+  const named = (column: readonly string[]): string[] => [...new Set(kept.map((i) => column[i]).filter(Boolean))]
+  const ofKept = (cell: (row: number) => number): Float64Array => Float64Array.from(kept, cell)
+  const key = kept.map((i) => times[i].key)
+  const hasOrder = !key.some(Number.isNaN)
   return {
     file,
     bytes,
     sha256,
     unit: UNITS[units.value?.quantity ?? ''] ?? '',
-    count,
-    order: Uint32Array.from({ length: count }, (_, i) => i).sort((a, b) => compared(times[a].key, times[b].key) || a - b),
-    value: numbers.value,
-    standardDeviation: numbers.spread,
-    degreesOfFreedom: numbers.freedom.map((freedom, i) => (Number.isNaN(freedom) ? numbers.readings[i] - 1 : freedom)),
-    when: times.map(({ text }, i) => text || `row ${i + 1}`),
-    time_ms: Float64Array.from(times, ({ time_ms }) => time_ms),
-    line,
-    wafers,
-    probes,
+    count: kept.length,
+    order: Uint32Array.from(kept, (_, k) => k).sort((a, b) => (hasOrder ? key[a] - key[b] || a - b : a - b)),
+    value: ofKept((i) => numbers.value[i]),
+    standardDeviation: ofKept((i) => inUnitOf(numbers.spread[i], units.spread, units.value)),
+    degreesOfFreedom: ofKept((i) => (Number.isNaN(numbers.freedom[i]) ? numbers.readings[i] - 1 : numbers.freedom[i])),
+    hasUnreadTimes: !hasOrder && kept.some((i) => texts.time[i] !== ''),
+    when: kept.map((i, k) => times[i].text || `row ${k + 1}`),
+    time_ms: ofKept((i) => times[i].time_ms),
+    line: Uint32Array.from(kept, (i) => line[i]),
+    wafers: named(texts.wafer),
+    probes: named(texts.probe),
   }
 } // prettier-ignore
+
+function inUnitOf(spread: number, own: Unit | null, ofValue: Unit | null): number {
+  return own === null && ofValue !== null ? toBase(spread, ofValue) : spread
+}
 
 interface Moment {
   readonly text: string
@@ -120,11 +159,6 @@ function momentOf({ texts }: NamedTable<HistoryColumn>, row: number): Moment {
   const key = Date.UTC(Number(year || 2000), Number(month || 1) - 1, Number(day), Number(hour || 0), Number(minute || 0))
   return { text, time_ms: year === '' ? NaN : key, key }
 } // prettier-ignore
-
-/** Rows without a time keep their place in the file. */
-function compared(a: number, b: number): number {
-  return Number.isNaN(a) || Number.isNaN(b) ? 0 : a - b
-}
 
 function wrongRows({ file, line, numbers }: NamedTable<HistoryColumn>): TableProblem[] {
   return Array.from(line, (at, i): TableProblem | null =>

@@ -120,6 +120,9 @@ export function checkCharts({ history, limits, average, alarms }: CheckResult, w
   const places = (...charts: readonly string[]): Set<number> => new Set(alarms.filter(({ chart }) => charts.includes(chart)).map(({ place }) => place - 1))
   const common = { baseline: limits.baseline, chosen, width_pt, height_pt: CHART_HEIGHT_PT }
   const spread = order.map((row) => history.standardDeviation[row])
+  const own = order.map((row) => limits.precisionLimits[row]).map((limit) => (Number.isNaN(limit) ? (limits.precisionUpperLimit ?? NaN) : limit))
+  // Occasions of one length share one limit.
+  const isOne = own.every((limit) => limit === own[0])
   return [
     controlChart({
       ...common, title: 'Values of the check wafer', yTitle: `value${unit}`, values: order.map((row) => history.value[row]),
@@ -127,7 +130,7 @@ export function checkCharts({ history, limits, average, alarms }: CheckResult, w
     }),
     ...(limits.precisionUpperLimit === null ? [] : [controlChart({
       ...common, title: 'Precision of the check wafer', yTitle: `standard deviation of a series${unit}`, values: spread,
-      centre: limits.repeatability, lower: null, upper: limits.precisionUpperLimit, alarms: places('precision'),
+      centre: limits.repeatability, lower: null, upper: isOne ? limits.precisionUpperLimit : null, curves: isOne ? [] : [{ lower: own, upper: own }], alarms: places('precision'),
     })]),
     controlChart({
       ...common, title: 'Moving average of the check wafer', yTitle: `moving average${unit}`, values: Array.from(average.average),

@@ -2,6 +2,7 @@ import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
 import { checkHistory, standingAt } from '../../../core/check-wafer/check'
+import { checkWords, standingWords } from '../../../core/check-wafer/check-words'
 import { checkObject } from '../../../core/check-wafer/check-object'
 import { readHistory, type CheckHistory } from '../../../core/check-wafer/history'
 import { movingAverage } from '../../../core/check-wafer/moving-average'
@@ -107,6 +108,65 @@ describe('the run rules', () => {
   })
 }) // prettier-ignore
 
+describe('false alarms of a sound process, from seeded normal values', () => {
+  const normal = (seed: number) => {
+    let state = seed
+    const uniform = (): number => (state = (state * 48271) % 2147483647) / 2147483647
+    return () => Math.sqrt(-2 * Math.log(uniform())) * Math.cos(2 * Math.PI * uniform())
+  }
+  /** Occasions until the first alarm, over many histories. */
+  const meanRunLength = (runs: number, next: () => number, alarmAt: (values: readonly number[]) => number): number => {
+    let sum = 0
+    for (let run = 0; run < runs; run++) {
+      const values = Array.from({ length: 4000 }, next)
+      const at = alarmAt(values)
+      if (at < 0) throw new Error('no alarm in 4,000 occasions')
+      sum += at + 1
+    }
+    return sum / runs
+  }
+  const firstOutside = (lambda: number, width: number) => (values: readonly number[]) => {
+    const { average, lower, upper } = movingAverage({ values, centre: 0, standardDeviation: 1, lambda, width })
+    return average.findIndex((value, i) => value < lower[i] || value > upper[i])
+  }
+  // Run lengths are near geometric: the mean of 400 has a standard error of a twentieth.
+  it('the value alone alarms after 370 occasions on average (1/0.0027)', () => {
+    const length = meanRunLength(400, normal(7), firstOutside(1, 3))
+    expect(Math.abs(length / 370.4 - 1)).toBeLessThan(0.15)
+  })
+
+  it('the moving average as an integral equation of its run length says', () => {
+    const length = meanRunLength(400, normal(11), firstOutside(0.3, 3))
+    expect(Math.abs(length / steadyRunLength(0.3, 3, 0) - 1)).toBeLessThan(0.16)
+    const shifted = normal(13)
+    const seen = meanRunLength(400, () => 1 + shifted(), firstOutside(0.3, 3))
+    // Limits that are narrow at first see a shift a little sooner than the steady ones.
+    expect(seen / steadyRunLength(0.3, 3, 1)).toBeGreaterThan(0.75)
+    expect(seen / steadyRunLength(0.3, 3, 1)).toBeLessThan(1.1)
+  })
+
+  /**
+   * Mean run length of a moving average between steady limits: L(u) = 1 + integral of L(v) f((v - (1 - lambda) u)/lambda) / lambda,
+   * solved at midpoints by fixed-point sweeps. Crowder, Technometrics 29, 4 (1987), from memory.
+   */
+  function steadyRunLength(lambda: number, width: number, shift: number): number {
+    const half = width * Math.sqrt(lambda / (2 - lambda))
+    const count = 81
+    const step = (2 * half) / count
+    const nodes = Array.from({ length: count }, (_, k) => -half + (k + 0.5) * step)
+    const density = (z: number) => Math.exp(-z * z / 2) / Math.sqrt(2 * Math.PI)
+    const kernel = nodes.map((u) => nodes.map((v) => (density((v - (1 - lambda) * u) / lambda - shift) / lambda) * step))
+    let lengths = nodes.map(() => 1)
+    for (let sweep = 0; sweep < 20_000; sweep++) {
+      const next = kernel.map((row) => 1 + row.reduce((sum, weight, k) => sum + weight * lengths[k], 0))
+      const change = Math.abs(next[40] / lengths[40] - 1)
+      lengths = next
+      if (change < 1e-9) break
+    }
+    return lengths[40]
+  }
+}) // prettier-ignore
+
 describe('a history', () => {
   const made = (values: readonly number[]): string =>
     ['time,wafer,probe,value,standard_deviation,count', ...values.map((v, k) => `2026-03-${String(k + 1).padStart(2, '0')}T08:00:00Z,C1,P7,${v},0.05,6`)].join('\n')
@@ -122,6 +182,50 @@ describe('a history', () => {
     expect(standingAt(result, day(12))).toMatchObject({ state: 'alarm', place: 12 })
     expect(standingAt(result, Date.UTC(2026, 1, 1)).state).toBe('before-history')
     expect(standingAt(result, NaN)).toMatchObject({ place: 13, byTime: false })
+  })
+
+  it('says that a lot is doubtful that an alarm fell into, or that began after one', () => {
+    const result = checkHistory(historyOf(made([...steady, 90.2, 90.0, 90.01])), { baseline: 10 })
+    const day = (n: number, hour = 12) => Date.UTC(2026, 2, n, hour)
+    expect(standingAt(result, day(9), day(10))).toMatchObject({ state: 'in-control', place: 10, isDuring: true })
+    expect(standingAt(result, day(10), day(11))).toMatchObject({ state: 'alarm', place: 11, isDuring: true })
+    expect(standingAt(result, day(10), day(13))).toMatchObject({ state: 'alarm', place: 11, isDuring: true })
+    expect(standingAt(result, day(11), day(13))).toMatchObject({ state: 'alarm', place: 11, isDuring: false })
+    expect(standingAt(result, Date.UTC(2026, 1, 1), day(2))).toMatchObject({ state: 'in-control', place: 2, isDuring: true })
+    expect(standingWords(result, standingAt(result, day(10), day(11)))).toMatch(/^The check wafer raised an alarm on 2026-03-11 08:00, while the lot was measured/)
+  })
+
+  it('leaves out a row that has no place in the order of time, and says which', () => {
+    const { history, problems } = readHistory(fileOf('time,value\n03/04/2026,90\n2026-01-09,91\n,92\n2026-01-02,93\nsoon,95\n2026-01-01,94'))
+    expect([...history!.order].map((row) => history!.value[row])).toEqual([94, 93, 91])
+    expect(problems.map(({ line, why }) => [line, why])).toEqual([
+      [2, expect.stringMatching(/"03\/04\/2026" can be read day first or month first/)],
+      [4, expect.stringMatching(/no time/)],
+      [6, expect.stringMatching(/"soon" can't be read/)],
+    ])
+  })
+
+  it('stands in the order of the file where no time can be read, and says so', () => {
+    const history = historyOf(['time,value', 'week 2,90', 'week 1,91', 'week 3,90.5', 'week 4,90.2'].join('\n'))
+    expect([history.hasUnreadTimes, [...history.order]]).toEqual([true, [0, 1, 2, 3]])
+    expect(checkWords(checkHistory(history)).join(' ')).toMatch(/"week 2", can't be read as dates/)
+    expect(historyOf(['value', ...steady].join('\n')).hasUnreadTimes).toBe(false)
+  })
+
+  it('has values and their standard deviations in one unit', () => {
+    const { value, standardDeviation, unit } = historyOf('resistivity [mohm.cm],sd,n\n97,5,6\n98,4,6')
+    expect([[...value], [...standardDeviation], unit]).toEqual([[0.097, 0.098], [0.005, 0.004], 'Ω·cm'])
+    const own = historyOf('resistivity [ohm.cm],sd [mohm.cm],n\n0.097,5,6')
+    expect([...own.standardDeviation]).toEqual([0.005])
+  })
+
+  it('judges the precision of an occasion by its own count of readings', () => {
+    const rows = [['97', '0.05', 20], ['97.1', '0.05', 20], ['97.2', '0.04', 20], ['97.1', '0.1', 2], ['97', '0.1', 20]]
+    const { limits, alarms } = checkHistory(historyOf(['value,sd,n', ...rows.map((row) => row.join(','))].join('\n')))
+    expect(alarms.filter(({ chart }) => chart === 'precision').map(({ index }) => index)).toEqual([5])
+    // One degree of freedom: F(0.95; 1, n) is the square of t(0.975, n), here 77: 1.99125 (from tables).
+    expect(limits.repeatabilityDegreesOfFreedom).toBe(77)
+    expect(limits.precisionLimits[3] / limits.repeatability!).toBeCloseTo(1.99125, 4)
   })
 
   it('holds an accepted value in place of the mean', () => {
@@ -143,6 +247,8 @@ describe('a history', () => {
   it.each([
     ['three occasions', ['value', 90, 91, 92], /3 occasions make no limits/],
     ['values all the same', ['value', 90, 90, 90, 90, 90], /all the same/],
+    // The mean of seven 97.1 is not 97.1 to the last bit.
+    ['the same, whose mean is rounded', ['value', ...Array<number>(7).fill(97.1)], /all the same/],
   ])('refuses %s', (_, rows, why) => {
     expect(() => checkHistory(historyOf(rows.join('\n')))).toThrow(expect.objectContaining({ problem: expect.objectContaining({ why: expect.stringMatching(why) as string }) as object }))
   })
@@ -150,6 +256,8 @@ describe('a history', () => {
   it.each([
     ['garbage', 'a;b\n1;2', /no line of it names/],
     ['two wafers', 'wafer,value\n1,90\n2,91', /several wafers/],
+    ['values and spreads of two quantities', 'resistivity [ohm.cm],sd [ohm/sq]\n1,0.1', /its values in ohm.cm/],
+    ['a scaled spread of values without unit', 'value,sd [mohm.cm]\n1,0.1', /name no unit/],
     ['a negative spread', 'value,sd\n90,-1', /negative/],
   ])('is not %s', (_, text, why) => {
     const { history, problems } = readHistory(fileOf(text))
