@@ -1,9 +1,9 @@
 /** The history of a check wafer: on each occasion a short series of readings of the same wafer with the same probe. */
 import { parseTime } from '../ingest/parse-time'
+import { spreadMismatch, spreadOf } from '../ingest/spread-unit'
 import { readNamedTable, type NamedTable, type TableColumn, type TableFile } from '../ingest/named-table'
 import type { TableProblem } from '../problems/problem'
 import { quote } from '../problems/quote'
-import { toBase, type Unit } from '../units/unit-register'
 
 export interface CheckHistory {
   readonly file: string
@@ -76,7 +76,7 @@ export function readHistory(file: TableFile): ReadHistory {
     const why = `it has several ${what}; a history is of one check wafer and one probe`
     return { history: null, problems: [...problems, { kind: 'bad-table', file: file.name, why }] }
   }
-  const mismatch = unitMismatch(table)
+  const mismatch = spreadMismatch(table)
   if (mismatch !== null) return { history: null, problems: [...problems, { kind: 'bad-table', file: file.name, why: mismatch }] }
   const times = Array.from({ length: table.count }, (_, i) => momentOf(table, i))
   const placeless = placelessRows(times)
@@ -101,19 +101,13 @@ function timeFault(text: string): string {
 
 const UNITS: Readonly<Record<string, string>> = { 'sheet-resistance': 'Ω/sq', resistivity: 'Ω·cm', resistance: 'Ω' }
 
-/** A spread without a unit is in that of the values; the other way round nobody knows what the values are in. */
-function unitMismatch({ units: { spread, value } }: NamedTable<HistoryColumn>): string | null {
-  if (spread === null) return null
-  if (value === null) return toBase(1, spread) === 1 ? null : `its standard deviations are in ${spread.id}, and its values name no unit`
-  return spread.quantity === value.quantity ? null : `its standard deviations are in ${spread.id}, its values in ${value.id}`
-} // prettier-ignore
-
 function historyOf(table: NamedTable<HistoryColumn>, times: readonly Moment[], kept: readonly number[]): CheckHistory {
   const { file, bytes, sha256, line, numbers, texts, units } = table
   const named = (column: readonly string[]): string[] => [...new Set(kept.map((i) => column[i]).filter(Boolean))]
   const ofKept = (cell: (row: number) => number): Float64Array => Float64Array.from(kept, cell)
   const key = kept.map((i) => times[i].key)
   const hasOrder = !key.some(Number.isNaN)
+  const spread = spreadOf(table)
   return {
     file,
     bytes,
@@ -122,7 +116,7 @@ function historyOf(table: NamedTable<HistoryColumn>, times: readonly Moment[], k
     count: kept.length,
     order: Uint32Array.from(kept, (_, k) => k).sort((a, b) => (hasOrder ? key[a] - key[b] || a - b : a - b)),
     value: ofKept((i) => numbers.value[i]),
-    standardDeviation: ofKept((i) => inUnitOf(numbers.spread[i], units.spread, units.value)),
+    standardDeviation: ofKept((i) => spread[i]),
     degreesOfFreedom: ofKept((i) => (Number.isNaN(numbers.freedom[i]) ? numbers.readings[i] - 1 : numbers.freedom[i])),
     hasUnreadTimes: !hasOrder && kept.some((i) => texts.time[i] !== ''),
     when: kept.map((i, k) => times[i].text || `row ${k + 1}`),
@@ -132,10 +126,6 @@ function historyOf(table: NamedTable<HistoryColumn>, times: readonly Moment[], k
     probes: named(texts.probe),
   }
 } // prettier-ignore
-
-function inUnitOf(spread: number, own: Unit | null, ofValue: Unit | null): number {
-  return own === null && ofValue !== null ? toBase(spread, ofValue) : spread
-}
 
 interface Moment {
   readonly text: string

@@ -3,6 +3,7 @@
  * run. A file has them ready made, a row each, or reading by reading.
  */
 import { readNamedTable, type NamedTable, type TableColumn, type TableFile } from '../ingest/named-table'
+import { spreadMismatch, spreadOf } from '../ingest/spread-unit'
 import type { TableProblem } from '../problems/problem'
 
 export interface Occasions {
@@ -62,6 +63,10 @@ export function readOccasions(file: TableFile): ReadOccasions {
   if (!table) return { occasions: null, problems }
   const wrong = wrongRows(table)
   if (wrong.length > 0) return { occasions: null, problems: [...problems, ...wrong] }
+  const mismatch = table.headers.spread === null ? null : spreadMismatch(table)
+  if (mismatch !== null) {
+    return { occasions: null, problems: [...problems, { kind: 'bad-table', file: file.name, why: mismatch }] }
+  }
   const occasions = table.headers.spread === null ? gathered(table) : readyMade(table)
   return { occasions, problems }
 }
@@ -110,7 +115,7 @@ function readyMade(table: NamedTable<StudyColumn>): Occasions {
     day: dayOf(table),
     operator: texts.operator,
     mean: numbers.value,
-    standardDeviation: numbers.spread,
+    standardDeviation: spreadOf(table),
     readings,
   }
 }

@@ -159,6 +159,14 @@ describe('a made-up study', () => {
 }) // prettier-ignore
 
 describe('what is no gauge study', () => {
+  it('takes a standard deviation without a unit in that of the values, and refuses one of another quantity', () => {
+    const table = (mean: string, sd: string): string => [`wafer,probe,day,${mean},${sd},n`, '1,A,1,95000,120,6', '1,A,2,95100,110,6'].join('\n')
+    const scaled = occasionsOf(table('resistivity [mohm.cm]', 'sd'))
+    expect(scaled.mean[0]).toBeCloseTo(95, 9)
+    expect(scaled.standardDeviation[0]).toBeCloseTo(0.12, 9)
+    expect(readOccasions(fileOf(table('resistivity [ohm.cm]', 'sd [ohm]'))).occasions).toBeNull()
+  })
+
   const why = (text: string) => readOccasions(fileOf(text)).problems.map((problem) => problem.why).join()
   it.each([
     ['a picture', '\u0000\u0001PNG', /no text/],
