@@ -2,9 +2,10 @@
 import { distinctSites, meansAtDistinctSites, type DistinctSites } from './coincident-sites'
 import { frameOf } from './frame'
 import {
-  factored, leaveOneOut, predict, predictValue, solved, trendTerms, type Factored, type Hyperparameters, type ProcessSites, type Solved,
+  factored, leaveOneOut, predict, predictValue, solved, type Factored, type Hyperparameters, type ProcessSites, type Solved,
   type TrendDegree,
 } from './gaussian-process' // prettier-ignore
+import { trendDegreeFor } from './process-trend'
 import type { Targets } from './thin-plate-spline'
 
 export const LEAST_PROCESS_SITES = 9
@@ -81,18 +82,14 @@ function patternOf(x_mm: Float64Array, y_mm: Float64Array): Pattern | null {
   const radius_mm = Math.max(...distinct.x_mm.map((x, i) => Math.hypot(x, distinct.y_mm[i])))
   const scaled = (column: Float64Array): Float64Array => column.map((value) => value / radius_mm)
   const sites = { x: scaled(distinct.x_mm), y: scaled(distinct.y_mm), count }
-  const degree = degreeFor(count)
   const every = Math.ceil(count / LIKELIHOOD_SITES)
   const rows = Uint32Array.from({ length: Math.ceil(count / every) }, (_, k) => k * every)
   const some = every === 1 ? sites : picked(sites, rows)
+  // What some of the sites can tell, all of them can.
+  const degree = trendDegreeFor(some)
   const grid = LENGTHS.flatMap((length) => NOISE_RATIOS.map((noiseRatio) => factored(some, degree, { length, noiseRatio })))
   return { distinct, sites, radius_mm, degree, rows, grid }
 } // prettier-ignore
-
-/** Three sites a term at least. */
-function degreeFor(count: number): TrendDegree {
-  return count >= 3 * trendTerms(2) ? 2 : count >= 3 * trendTerms(1) ? 1 : 0
-}
 
 function picked({ x, y }: ProcessSites, rows: Uint32Array): ProcessSites {
   return { x: Float64Array.from(rows, (i) => x[i]), y: Float64Array.from(rows, (i) => y[i]), count: rows.length }
