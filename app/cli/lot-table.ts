@@ -21,7 +21,8 @@ export function lotTable(analysis: LotAnalysis): string {
     'dies out',
     'verdict',
   ]
-  const rows = wafers.map((wafer) => waferRow(wafer, leftOut(mapFit(analysis, wafer)), dies !== null))
+  const fits = wafers.map((wafer) => mapFit(analysis, wafer))
+  const rows = wafers.map((wafer, k) => waferRow(wafer, leftOut(fits[k]), dies !== null))
   const { statistics } = lot
   const lotRow = [
     'lot',
@@ -52,11 +53,18 @@ export function lotTable(analysis: LotAnalysis): string {
     '',
     ...(analysis.procedure.acceptance.rule === 'simple' ? [] : [acceptanceWords(analysis.procedure.acceptance)]),
     'SUP = 100 s/mean, HLV = 200 (max - min)/(max + min): SEMI MF1618; the lot row is over wafer means',
-    `left out = root mean square of each site less what the ${SURFACES[analysis.procedure.map.interpolation]} through the others says`,
+    `left out = root mean square of each site less what the ${surfaceWords(analysis, fits)} through the others says`,
   ].join('\n')
 }
 
 const SURFACES = { 'thin-plate-spline': 'spline', 'gaussian-process': 'Gaussian process' } as const
+
+/** Where no process could be fitted, the plain surface stands in. */
+function surfaceWords({ procedure }: LotAnalysis, fits: readonly (MapFit | null)[]): string {
+  const chosen = SURFACES[procedure.map.interpolation]
+  if (chosen === SURFACES['thin-plate-spline'] || fits.every((fit) => fit?.process)) return chosen
+  return `${chosen} (or, where none could be fitted, the spline)`
+}
 
 /** Of the surface that the maps are drawn by. */
 function leftOut(fit: MapFit | null): number {

@@ -28,6 +28,7 @@ import { lotRisks } from './lot-risks'
 import { layerResults } from './layer-results'
 import type { DieColumns, LotAnalysis, Quantity, SiteColumns } from './lot-analysis'
 import { measuringSetUp, type MeasuringSetUp } from './measuring-set-up'
+import { mapNotes } from './map-notes'
 import { analysisNotes } from './notes'
 import { flagOutliers } from './outlying-sites'
 import { prepareLayer } from './prepare-layer'
@@ -111,6 +112,7 @@ export function analyze(input: AnalysisInput): LotAnalysis {
       ...exclusionNotes(excluded),
       ...healthNotes(health, readings.count),
       ...analysisNotes({ readings, procedure, profile, gauge, check, ...measured, dies }),
+      ...mapNotes({ readings, procedure, positions, sites, members }),
     ],
   }
 }

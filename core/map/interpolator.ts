@@ -116,9 +116,20 @@ interface Surface {
   leaveOneOut(values: Float64Array): Float64Array | null
 }
 
+/** The method that `prepareInterpolator` takes for these sites. */
+export function plainMethodFor(x_mm: Float64Array, y_mm: Float64Array): InterpolationMethod {
+  return methodFor(distinctSites(x_mm, y_mm))
+}
+
+function methodFor({ x_mm, y_mm, count }: DistinctSites): InterpolationMethod {
+  if (count < 3 || frameOf(x_mm, y_mm).isCollinear) return 'mean'
+  return count <= MAX_SPLINE_SITES ? 'thin-plate-spline' : 'linear'
+}
+
 function surfaceThrough(sites: DistinctSites, targets: Targets): Surface {
-  if (sites.count < 3 || frameOf(sites.x_mm, sites.y_mm).isCollinear) return meanSurface(sites)
-  return sites.count <= MAX_SPLINE_SITES ? splineSurface(sites, targets) : linearSurface(sites, targets)
+  const method = methodFor(sites)
+  if (method === 'mean') return meanSurface(sites)
+  return method === 'thin-plate-spline' ? splineSurface(sites, targets) : linearSurface(sites, targets)
 }
 
 function splineSurface({ x_mm, y_mm, count }: DistinctSites, targets: Targets): Surface {

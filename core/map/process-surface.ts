@@ -77,8 +77,7 @@ const NOISE_RATIOS = [1e-6, 1e-4, 1e-3, 0.01, 0.05, 0.2, 1, 5]
 function patternOf(x_mm: Float64Array, y_mm: Float64Array): Pattern | null {
   const distinct = distinctSites(x_mm, y_mm)
   const { count } = distinct
-  if (count < LEAST_PROCESS_SITES || count > MAX_PROCESS_SITES) return null
-  if (frameOf(distinct.x_mm, distinct.y_mm).isCollinear) return null
+  if (whyNotThere(distinct)) return null
   const radius_mm = Math.max(...distinct.x_mm.map((x, i) => Math.hypot(x, distinct.y_mm[i])))
   const scaled = (column: Float64Array): Float64Array => column.map((value) => value / radius_mm)
   const sites = { x: scaled(distinct.x_mm), y: scaled(distinct.y_mm), count }
@@ -91,6 +90,24 @@ function patternOf(x_mm: Float64Array, y_mm: Float64Array): Pattern | null {
   return { distinct, sites, radius_mm, degree, rows, grid }
 } // prettier-ignore
 
+/** Why no process can be fitted to these sites, as the beginning of a sentence; null where one can. */
+export function whyNoProcess(x_mm: Float64Array, y_mm: Float64Array, values: Float64Array): string | null {
+  const distinct = distinctSites(x_mm, y_mm)
+  return whyNotThere(distinct) ?? (differ(meansAtDistinctSites(distinct, values)) ? null : 'all sites have one value')
+}
+
+function whyNotThere({ x_mm, y_mm, count }: DistinctSites): string | null {
+  if (count < LEAST_PROCESS_SITES) return `it needs sites in ${LEAST_PROCESS_SITES} places, and they are in ${count}`
+  if (count > MAX_PROCESS_SITES)
+    return `it takes sites in ${MAX_PROCESS_SITES} places at most, and they are in ${count}`
+  return frameOf(x_mm, y_mm).isCollinear ? 'all sites lie on one line' : null
+}
+
+function differ(means: Float64Array): boolean {
+  const spread = means.reduce((most, value) => Math.max(most, Math.abs(value - means[0])), 0)
+  return spread > 1e-10 * Math.abs(means[0])
+}
+
 function picked({ x, y }: ProcessSites, rows: Uint32Array): ProcessSites {
   return { x: Float64Array.from(rows, (i) => x[i]), y: Float64Array.from(rows, (i) => y[i]), count: rows.length }
 }
@@ -98,8 +115,7 @@ function picked({ x, y }: ProcessSites, rows: Uint32Array): ProcessSites {
 function fitted(pattern: Pattern, values: Float64Array, u: Float64Array): ProcessSurface | null {
   const { distinct, sites, degree, rows } = pattern
   const means = meansAtDistinctSites(distinct, values)
-  const spread = means.reduce((most, value) => Math.max(most, Math.abs(value - means[0])), 0)
-  if (!(spread > 1e-10 * Math.abs(means[0]))) return null
+  if (!differ(means)) return null
   const repeatability = repeatabilityOf(distinct, u)
   const tried = triedOnGrid(
     pattern,
