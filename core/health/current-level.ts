@@ -9,7 +9,12 @@ const FAR = 5
 
 export const currentLevel: HealthCheck = { id: 'current-level', title: 'Current and voltage', look }
 
-function look({ readings, wafers }: HealthInput): readonly HealthFinding[] {
+function look(input: HealthInput): readonly HealthFinding[] {
+  const ofLot = wholeLot(input)
+  return ofLot.length > 0 ? ofLot : someWafers(input)
+}
+
+function wholeLot({ readings, wafers }: HealthInput): readonly HealthFinding[] {
   const { voltage_V, current_A } = readings
   if (!voltage_V || !current_A) return []
   const rows = wafers.flatMap(({ rows: own }) => [...own.subarray(0, 400)])
@@ -39,3 +44,29 @@ function look({ readings, wafers }: HealthInput): readonly HealthFinding[] {
     },
   ]
 }
+
+/** Wafers that were measured at another voltage than the lot, outside what is wanted. */
+function someWafers({ readings: { voltage_V }, wafers }: HealthInput): readonly HealthFinding[] {
+  if (!voltage_V) return []
+  const levels = wafers.map(({ id, rows }) => ({
+    id,
+    row: rows[0] ?? null,
+    voltage_mV: 1e3 * medianOf(Array.from(rows.subarray(0, 400), (i) => Math.abs(voltage_V[i]))),
+  }))
+  const excessOf = (voltage_mV: number): number => Math.max(WANTED_mV.low / voltage_mV, voltage_mV / WANTED_mV.high)
+  const off = levels.filter(({ voltage_mV }) => voltage_mV > 0 && excessOf(voltage_mV) > 1)
+  if (off.length === 0) return []
+  const worst = off.reduce((most, entry) => (excessOf(entry.voltage_mV) > excessOf(most.voltage_mV) ? entry : most))
+  return [
+    {
+      check: 'current-level',
+      severity: excessOf(worst.voltage_mV) > FAR ? 'look' : 'note',
+      sentence: `${off.length === 1 ? `Wafer ${worst.id} was` : `${off.length} wafers were`} measured at a voltage outside 5 to 20 mV, unlike the lot: ${formatSignificant(worst.voltage_mV, 3)} mV on wafer ${worst.id}.`,
+      nextStep: 'Check the current that was set there, and measure again at about 10 mV.',
+      wafers: off.map(({ id }) => id),
+      site: worst.row,
+      evidence: { voltage_mV: worst.voltage_mV, wafers: off.length },
+      source: 'SEMI MF1529-1104, Table 1 (5 to 20 mV)',
+    },
+  ]
+} // prettier-ignore

@@ -1,6 +1,13 @@
 /** Forward against reverse: a difference that is everywhere the same has a cause that every reading shares. */
 import { formatFixed, formatSignificant } from '../units/format'
-import { medianOf, robustDeviation, type HealthCheck, type HealthFinding, type HealthInput } from './finding'
+import {
+  COMMON_PRACTICE,
+  medianOf,
+  robustDeviation,
+  type HealthCheck,
+  type HealthFinding,
+  type HealthInput,
+} from './finding'
 
 /** SEMI MF1529-1104, 13.1.3: forward and reverse must agree within 5 % of the larger. */
 const LARGE = 0.05
@@ -12,7 +19,11 @@ const LEAST_SITES = 8
 
 export const polarity: HealthCheck = { id: 'polarity', title: 'Forward against reverse current', look }
 
-function look({ readings, wafers }: HealthInput): readonly HealthFinding[] {
+function look(input: HealthInput): readonly HealthFinding[] {
+  return [...wholeLot(input), ...someWafers(input)]
+}
+
+function wholeLot({ readings, wafers }: HealthInput): readonly HealthFinding[] {
   const { voltage_V, current_A, voltageReverse_V, currentReverse_A } = readings
   if (!voltage_V || !current_A || !voltageReverse_V || !currentReverse_A) return []
   const rows = wafers.flatMap((wafer) => sampled(wafer.rows))
@@ -81,3 +92,39 @@ function sampled(rows: Uint32Array): number[] {
   const every = Math.max(1, Math.ceil(rows.length / MOST_ROWS))
   return Array.from({ length: Math.ceil(rows.length / every) }, (_, k) => rows[k * every])
 }
+
+/** A wafer's own difference must be so far from the lot's. Common practice, no source. */
+const APART = 0.01
+const LEAST_WAFERS = 3
+
+/** Wafers that differ between the polarities where the others do not: the prober is the same, so it is the wafer. */
+function someWafers({ readings, wafers }: HealthInput): readonly HealthFinding[] {
+  const { voltage_V, current_A, voltageReverse_V, currentReverse_A } = readings
+  if (!voltage_V || !current_A || !voltageReverse_V || !currentReverse_A || wafers.length < LEAST_WAFERS) return []
+  const each = wafers.flatMap(({ id, rows }) => {
+    const known = sampled(rows).map((i) => {
+      const [forward, reverse] = [voltage_V[i] / current_A[i], voltageReverse_V[i] / currentReverse_A[i]]
+      return (2 * (forward - reverse)) / (forward + reverse)
+    }).filter(Number.isFinite)
+    const median = medianOf(known)
+    const error = (1.2533 * robustDeviation(known, median)) / Math.sqrt(known.length)
+    return known.length < LEAST_SITES ? [] : [{ id, row: rows[0], median, error }]
+  })
+  const ofLot = medianOf(each.map(({ median }) => median))
+  const off = each.filter(({ median, error }) => Math.abs(median - ofLot) > Math.max(APART, SURE * error))
+  if (off.length === 0 || off.length > each.length / 2) return []
+  const worst = off.reduce((most, entry) => (Math.abs(entry.median - ofLot) > Math.abs(most.median - ofLot) ? entry : most))
+  const amount = (share: number): string => formatFixed(100 * Math.abs(share), 1)
+  return [
+    {
+      check: 'polarity',
+      severity: 'look',
+      sentence: `On ${off.length === 1 ? `wafer ${worst.id}` : `${off.length} wafers, most on ${worst.id},`} forward and reverse readings differ by ${amount(worst.median)} %, in the lot by ${amount(ofLot)} %: a rectifying contact or a leaking junction of that wafer.`,
+      nextStep: 'Measure it again at half the current and in the dark; if the difference changes, don’t judge the wafer by these readings.',
+      wafers: off.map(({ id }) => id),
+      site: worst.row,
+      evidence: { medianDifference: worst.median, standardError: worst.error, ofLot },
+      source: `SEMI MF1529-1104, 13.1.3 (agreement within 5 %); finer thresholds ${COMMON_PRACTICE}`,
+    },
+  ]
+} // prettier-ignore

@@ -2,6 +2,8 @@
 import { configurationRatio } from './configuration-ratio'
 import { currentLevel } from './current-level'
 import { drift } from './drift'
+import { everyNth } from './every-nth'
+import { exchangedColumns } from './exchanged-columns'
 import { SEVERITIES, type HealthCheck, type HealthFinding, type HealthInput } from './finding'
 import { polarity } from './polarity'
 import { standingOut } from './standing-out'
@@ -10,11 +12,13 @@ import { unitSuspicion } from './units'
 
 export const HEALTH_CHECKS: readonly HealthCheck[] = [
   unitSuspicion,
+  exchangedColumns,
   configurationRatio,
   polarity,
   currentLevel,
   stuckReadings,
   standingOut,
+  everyNth,
   drift,
 ]
 

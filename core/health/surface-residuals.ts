@@ -10,29 +10,59 @@ export interface WaferResiduals {
   readonly residual: Float64Array
   /** Root of 1 - leverage: how much of a site's own error its residual keeps. */
   readonly kept: Float64Array
+  /** The surface fitted to anything else at the same sites: what of it no surface can follow. */
+  readonly without: (values: Float64Array) => Float64Array
 }
 
 const LEAST_SITES = 9
 /** A wafer of more sites is left to its map: the look would take longer than the analysis. */
 const MOST_SITES = 2000
 
+/** Several checks look at the same residuals. */
+const known = new WeakMap<HealthInput, readonly WaferResiduals[]>()
+
 /** Wafers whose sites can't be fitted are left out. Empty without places. */
-export function surfaceResiduals({ x_mm, y_mm, value, wafers }: HealthInput): readonly WaferResiduals[] {
+export function surfaceResiduals(input: HealthInput): readonly WaferResiduals[] {
+  const earlier = known.get(input)
+  if (earlier) return earlier
+  const residuals = fitted(input)
+  known.set(input, residuals)
+  return residuals
+}
+
+function fitted({ x_mm, y_mm, value, wafers }: HealthInput): readonly WaferResiduals[] {
   if (!x_mm || !y_mm) return []
-  const patterns: { readonly x: Float64Array; readonly y: Float64Array; readonly pattern: TrendPattern | null }[] = []
+  const patterns: Fittable[] = []
   return wafers.flatMap((wafer) => {
     const { rows } = wafer
     if (rows.length < LEAST_SITES || rows.length > MOST_SITES) return []
     const [x, y] = [picked(x_mm, rows), picked(y_mm, rows)]
-    let known = patterns.find((entry) => isSame(entry.x, x) && isSame(entry.y, y))
-    if (!known) {
-      known = { x, y, pattern: patternAt(x, y) }
-      patterns.unshift(known)
+    let own = patterns.find((entry) => isSame(entry.x, x) && isSame(entry.y, y))
+    if (!own) {
+      const pattern = patternAt(x, y)
+      own = { x, y, pattern, without: rememberingLast((column) => pattern!.fit(column).residuals) }
+      patterns.unshift(own)
       patterns.splice(8)
     }
-    if (!known.pattern) return []
-    return [{ wafer, ...withoutStrays(known.pattern, picked(value, rows)) }]
+    if (!own.pattern) return []
+    return [{ wafer, ...withoutStrays(own.pattern, picked(value, rows)), without: own.without }]
   })
+}
+
+interface Fittable {
+  readonly x: Float64Array
+  readonly y: Float64Array
+  readonly pattern: TrendPattern | null
+  readonly without: WaferResiduals['without']
+}
+
+/** Wafer after wafer is read in the same order. */
+function rememberingLast(without: WaferResiduals['without']): WaferResiduals['without'] {
+  let last: { readonly values: Float64Array; readonly residuals: Float64Array } | null = null
+  return (values) => {
+    if (!last || !isSame(last.values, values)) last = { values, residuals: without(values) }
+    return last.residuals
+  }
 }
 
 /** Robust standard deviations beyond which a site no longer shapes the surface. */

@@ -1,6 +1,13 @@
 /** Values that are off by just the factor of a wrong unit or column. */
 import { formatNumber, formatSignificant } from '../units/format'
-import { COMMON_PRACTICE, medianOf, type HealthCheck, type HealthFinding, type HealthInput } from './finding'
+import {
+  COMMON_PRACTICE,
+  medianOf,
+  type HealthCheck,
+  type HealthFinding,
+  type HealthInput,
+  type Severity,
+} from './finding'
 
 /** How near a factor must come to count as that factor: a lot misses its target by less. */
 const NEAR = 0.12
@@ -42,24 +49,42 @@ function againstTarget({ expected, value, wafers, unit }: HealthInput): readonly
   ]
 }
 
+/** What a wafer among others may be off by. A tenth or ten may be the process; a thousand is not. */
+const AMONG: readonly { readonly factor: number; readonly words: string; readonly severity: Severity }[] = [
+  { factor: 1e6, words: 'a million times off', severity: 'stops' },
+  { factor: 1e3, words: 'a thousand times off', severity: 'stops' },
+  { factor: 100, words: 'a hundred times off', severity: 'look' },
+  { factor: 10, words: 'ten times off', severity: 'look' },
+  { factor: PI_OVER_LN2, words: 'π/ln 2 off', severity: 'look' },
+]
+/** In the decimal logarithm. */
+const NEAR_AMONG = 0.02
+
 function amongWafers({ value, wafers, unit }: HealthInput): readonly HealthFinding[] {
-  const medians = wafers.map(({ rows }) => medianOf([...rows.subarray(0, 400)].map((i) => value[i])))
+  const medians = wafers.map(({ rows }) => medianOf(Array.from(rows.subarray(0, 400), (i) => value[i])))
   const whole = medianOf(medians)
-  const off = wafers.filter((_, k) => Math.abs(Math.abs(Math.log10(medians[k] / whole)) - 3) < 0.05)
-  if (off.length === 0 || wafers.length < 3) return []
-  return [
-    {
-      check: 'units',
-      severity: 'stops',
-      sentence: `${off.length === 1 ? `Wafer ${off[0].id} reads` : `${off.length} wafers read`} a thousand times off the others (${formatNumber(whole, unit)} ${unit}): a file with another unit?`,
-      nextStep: 'Check the units of the files: one of them is in milli or kilo.',
-      wafers: off.map(({ id }) => id),
-      site: off[0].rows[0] ?? null,
-      evidence: { median: whole, wafers: off.length },
-      source: COMMON_PRACTICE,
-    },
-  ]
-}
+  // Two wafers can't tell which of them is off; the median of both is neither.
+  const isPair = wafers.length === 2
+  return AMONG.flatMap(({ factor, words, severity }): HealthFinding[] => {
+    const reference = isPair ? Math.min(...medians) : whole
+    const off = wafers.filter((_, k) => Math.abs(Math.abs(Math.log10(medians[k] / reference)) - Math.log10(factor)) < NEAR_AMONG)
+    if (off.length === 0 || off.length > wafers.length / 2) return []
+    const named = off.length === 1 ? `Wafer ${off[0].id} reads` : `${off.length} wafers read`
+    const other = isPair ? 'the other' : 'the others'
+    return [
+      {
+        check: 'units',
+        severity,
+        sentence: `${named} ${words} ${other} (${formatNumber(reference, unit)} ${unit}): a file with another unit, range or column?`,
+        nextStep: 'Check the units and columns of the files, and the current that was set.',
+        wafers: off.map(({ id }) => id),
+        site: off[0].rows[0] ?? null,
+        evidence: { median: reference, wafers: off.length, factor },
+        source: COMMON_PRACTICE,
+      },
+    ]
+  })
+} // prettier-ignore
 
 /** Plans reach at least this share of the usable radius. Common practice, no source. */
 const LEAST_REACH = 0.2
