@@ -63,7 +63,8 @@ function pipeline(text: string): void {
 }
 
 console.log('sites      bare parse    pipeline    ratio    per site   peak memory of the pipeline')
-for (const sites of [10_000, 100_000, 1_000_000]) {
+const sizes = process.argv.slice(2).map(Number)
+for (const sites of sizes.length > 0 ? sizes : [10_000, 100_000, 1_000_000]) {
   const text = syntheticCsv(sites)
   const bare: number[] = []
   const whole: number[] = []

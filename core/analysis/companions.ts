@@ -34,7 +34,7 @@ export function companionNames(procedure: Procedure): readonly string[] {
 export function companionsNamedIn({ name, bytes }: { name: string; bytes: Uint8Array }): readonly string[] {
   const decoded = decodeText(bytes)
   if ('looksLike' in decoded) return []
-  const { procedure } = parseProcedure(decoded.text, name)
+  const { procedure } = parseProcedure(decoded.text(), name)
   return procedure ? companionNames(procedure) : []
 }
 

@@ -35,7 +35,7 @@ export function run(input: RunInput): RunResult {
   if ('looksLike' in decoded) {
     return { analysis: null, problems: [{ kind: 'not-text', file: name, looksLike: decoded.looksLike }] }
   }
-  const parsed = parseProcedure(decoded.text, name)
+  const parsed = parseProcedure(decoded.text(), name)
   if (!parsed.procedure) return { analysis: null, problems: parsed.problems }
   const companions = readCompanions(parsed.procedure, input.companions ?? [], name)
   if (companions.obstacles.length > 0) return { analysis: null, problems: companions.obstacles }

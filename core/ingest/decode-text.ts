@@ -1,15 +1,28 @@
 /**
- * Bytes to text without a platform's decoder: UTF-8, UTF-16 either way, and Windows-1252 (which holds Latin-1) where
- * the bytes are no valid UTF-8.
+ * Bytes to text: UTF-8, UTF-16 either way, and Windows-1252 (which holds Latin-1) where the bytes are no valid UTF-8.
+ * The text of a large file is made a piece at a time, so that it is never held whole beside its bytes.
  */
 import { nonTextKind } from './text-signature'
 
 export interface DecodedText {
-  readonly text: string
   readonly encoding: string
+  /**
+   * The file's own units, bytes or those of UTF-16; every ASCII character is one. A file whose lines end in "\r" alone
+   * has "\n" there instead; "\r\n" is left as it is.
+   */
+  readonly units: Uint8Array | Uint16Array
+  /** The text of these units, which begin and end between characters; without them, of all. */
+  readonly text: (begin?: number, end?: number) => string
 }
 
-export function decodeText(bytes: Uint8Array): DecodedText | { readonly looksLike: string } {
+export interface NoText {
+  readonly looksLike: string
+}
+
+const NEWLINE = 10
+const RETURN = 13
+
+export function decodeText(bytes: Uint8Array): DecodedText | NoText {
   if (bytes[0] === 0xff && bytes[1] === 0xfe) return utf16(bytes.subarray(2), true, 'UTF-16 LE with mark')
   if (bytes[0] === 0xfe && bytes[1] === 0xff) return utf16(bytes.subarray(2), false, 'UTF-16 BE with mark')
   const silent = silentUtf16(bytes)
@@ -18,11 +31,47 @@ export function decodeText(bytes: Uint8Array): DecodedText | { readonly looksLik
   if (looksLike !== null) return { looksLike }
   const marked = bytes[0] === 0xef && bytes[1] === 0xbb && bytes[2] === 0xbf
   const body = marked ? bytes.subarray(3) : bytes
-  if (isAscii(body)) return { text: fromUnits(body), encoding: marked ? 'UTF-8 with mark' : 'UTF-8' }
-  const text = utf8(body)
-  if (text !== null) return { text, encoding: marked ? 'UTF-8 with mark' : 'UTF-8' }
-  return { text: windows1252(body), encoding: 'Windows-1252' }
+  if (!isUtf8(body)) return decoded('Windows-1252', body, windows1252)
+  const decoder = new TextDecoder('utf-8', { ignoreBOM: true })
+  return decoded(marked ? 'UTF-8 with mark' : 'UTF-8', body, (units) => decoder.decode(units))
 }
+
+function decoded<Units extends Uint8Array | Uint16Array>(
+  encoding: string,
+  given: Units,
+  textOf: (units: Units) => string,
+): DecodedText {
+  const units = given.includes(NEWLINE) || !given.includes(RETURN) ? given : withNewlines(given)
+  return { encoding, units, text: (begin, end) => textOf(units.subarray(begin, end) as Units) }
+}
+
+function withNewlines<Units extends Uint8Array | Uint16Array>(units: Units): Units {
+  return units.map((unit) => (unit === RETURN ? NEWLINE : unit)) as Units
+}
+
+interface Decoder {
+  decode(bytes?: Uint8Array, options?: { readonly stream: boolean }): string
+}
+/** WHATWG Encoding, which Node and every browser have: pure, and no part of the language's own library. */
+declare const TextDecoder: new (
+  label: 'utf-8',
+  options: { readonly fatal?: boolean; readonly ignoreBOM?: boolean },
+) => Decoder
+
+/** Overlong forms, lone surrogates and cut sequences are not. */
+function isUtf8(bytes: Uint8Array): boolean {
+  const decoder = new TextDecoder('utf-8', { fatal: true })
+  try {
+    for (let begin = 0; begin < bytes.length; begin += CHECKED_BYTES) {
+      decoder.decode(bytes.subarray(begin, begin + CHECKED_BYTES), { stream: true })
+    }
+    decoder.decode()
+    return true
+  } catch {
+    return false
+  }
+}
+const CHECKED_BYTES = 1 << 16
 
 /** UTF-16 without a mark shows in its zero bytes: nearly every second one, and none of the others. */
 function silentUtf16(bytes: Uint8Array): boolean | null {
@@ -39,7 +88,7 @@ function silentUtf16(bytes: Uint8Array): boolean | null {
   return null
 }
 
-function utf16(bytes: Uint8Array, isLittle: boolean, encoding: string): DecodedText | { readonly looksLike: string } {
+function utf16(bytes: Uint8Array, isLittle: boolean, encoding: string): DecodedText | NoText {
   const units = new Uint16Array(bytes.length >> 1)
   const low = isLittle ? 0 : 1
   let controls = 0
@@ -49,17 +98,12 @@ function utf16(bytes: Uint8Array, isLittle: boolean, encoding: string): DecodedT
     units[at] = unit
   }
   if (controls > 0.01 * units.length) return { looksLike: 'binary data' }
-  return { text: fromUnits(units), encoding }
-}
-
-function isAscii(bytes: Uint8Array): boolean {
-  for (let at = 0; at < bytes.length; at++) if (bytes[at] > 127) return false
-  return true
+  return decoded(encoding, units, fromUnits)
 }
 
 /** Code units to a string in pieces: one call takes only so many arguments, and plain arrays pass fastest. */
 const PIECE = 4096
-function fromUnits(units: Uint8Array | Uint16Array): string {
+function fromUnits(units: Uint16Array): string {
   const piece: number[] = new Array<number>(PIECE).fill(0)
   let text = ''
   for (let begin = 0; begin < units.length; begin += PIECE) {
@@ -69,38 +113,6 @@ function fromUnits(units: Uint8Array | Uint16Array): string {
     text += String.fromCharCode.apply(null, piece)
   }
   return text
-}
-
-/** null where the bytes aren't valid UTF-8: overlong forms, lone surrogates and cut sequences are not. */
-function utf8(bytes: Uint8Array): string | null {
-  const units = new Uint16Array(bytes.length)
-  let length = 0
-  for (let at = 0; at < bytes.length;) {
-    const lead = bytes[at]
-    if (lead < 0x80) {
-      units[length++] = lead
-      at++
-      continue
-    }
-    const size = lead >= 0xf0 ? 4 : lead >= 0xe0 ? 3 : 2
-    if (lead < 0xc2 || lead > 0xf4 || at + size > bytes.length) return null
-    let point = lead & (0xff >> (size + 1))
-    for (let k = 1; k < size; k++) {
-      const next = bytes[at + k]
-      if ((next & 0xc0) !== 0x80) return null
-      point = (point << 6) | (next & 0x3f)
-    }
-    const isWrong =
-      (size === 3 && (point < 0x800 || (point >= 0xd800 && point <= 0xdfff))) ||
-      (size === 4 && (point < 0x10000 || point > 0x10ffff))
-    if (isWrong) return null
-    if (point > 0xffff) {
-      units[length++] = 0xd800 + ((point - 0x10000) >> 10)
-      units[length++] = 0xdc00 + ((point - 0x10000) & 0x3ff)
-    } else units[length++] = point
-    at += size
-  }
-  return fromUnits(units.subarray(0, length))
 }
 
 /** 0x80 to 0x9f, where Windows-1252 differs from Latin-1; its five holes stay control characters. */

@@ -7,7 +7,7 @@ import type { NumberColumn } from './column-kinds'
 import type { LotDraft } from './lot-draft'
 import { B_BIT, NUMBERED_BIT, REVERSE_BIT } from './read-role'
 import type { RowProblems } from './row-problems'
-import { RowTable, SAME_PLACE_MM, cellsOf, mix } from './site-table'
+import { RowTable, SAME_PLACE_MM, cellOf, highCellOf, lowCellOf, mix } from './site-table'
 
 const CURRENTS = [
   'current_A',
@@ -24,13 +24,12 @@ const VOLTAGES = [
 
 export function foldSites(draft: LotDraft, files: readonly RowProblems[], isLong: boolean, dropped: Uint8Array): void {
   const { columns } = draft
-  const finder = new SiteFinder(draft)
+  const firstOf = new SiteFinder(draft).firstRows()
   const parts = isLong ? new Uint8Array(columns.count) : null
   for (let row = 0; row < columns.count; row++) {
-    const first = finder.find(row)
+    const first = firstOf[row]
     const part = columns.role[row] & (REVERSE_BIT | B_BIT)
-    if (first < 0) {
-      finder.insert(row)
+    if (first === row) {
       if (parts) {
         parts[row] = 1 << part
         if (part !== 0) movePart(draft, row, row, part)
@@ -83,10 +82,8 @@ function movePart({ columns }: LotDraft, from: number, to: number, part: number)
 }
 const READY = ['vOverI_ohm', 'sheetResistance_ohm_sq', 'resistivity_ohm_cm'] as const
 
-/** Looks rows up by wafer and site name (and die, where sites are counted within a die), and by wafer and place. */
+/** Looks rows of one wafer up by site name (and die, where sites are counted within a die), and by place. */
 class SiteFinder {
-  private readonly byName: RowTable
-  private readonly byPlace: RowTable | null
   private readonly x: Float64Array | undefined
   private readonly y: Float64Array | undefined
   private readonly dieX: Float64Array | undefined
@@ -94,59 +91,71 @@ class SiteFinder {
   private row = 0
 
   constructor(private readonly draft: LotDraft) {
-    const { numbers, count } = draft.columns
+    const { numbers } = draft.columns
     this.x = numbers.get('x_mm')
     this.y = numbers.get('y_mm')
     this.dieX = numbers.get('dieX')
     this.dieY = numbers.get('dieY')
-    this.byName = new RowTable(count)
-    this.byPlace = this.x && this.y ? new RowTable(count) : null
   }
 
-  find(row: number): number {
-    this.row = row
-    if (!this.isNumbered(row)) {
-      const named = this.byName.find(this.nameHash(row), this.isSameName)
-      if (named >= 0) return named
+  /** Of every row the first that is of the same site: itself for most. */
+  firstRows(): Uint32Array {
+    const { wafer, count } = this.draft.columns
+    const { rows, ends } = groupRows(wafer, count, this.draft.wafers.labels.length)
+    const most = ends.reduce((size, end, k) => Math.max(size, end - (k > 0 ? ends[k - 1] : 0)), 0)
+    const byName = new RowTable(most)
+    const byPlace = this.x && this.y ? new RowTable(most) : null
+    const firstOf = new Uint32Array(count)
+    let begin = 0
+    for (const end of ends) {
+      byName.clearFor(end - begin)
+      byPlace?.clearFor(end - begin)
+      for (let k = begin; k < end; k++) firstOf[rows[k]] = this.findOrInsert(rows[k], byName, byPlace)
+      begin = end
     }
-    return this.byPlace && this.hasPlace(row) ? this.findPlace(row, this.byPlace) : -1
+    return firstOf
   }
 
-  insert(row: number): void {
-    if (!this.isNumbered(row)) this.byName.insert(this.nameHash(row), row)
-    if (this.byPlace && this.hasPlace(row))
-      this.byPlace.insert(this.placeHash(row, cell(this.x![row]), cell(this.y![row])), row)
+  private findOrInsert(row: number, byName: RowTable, byPlace: RowTable | null): number {
+    this.row = row
+    const isNamed = !this.isNumbered(row)
+    const nameHash = isNamed ? this.nameHash(row) : 0
+    const named = isNamed ? byName.find(nameHash, this.isSameName) : -1
+    if (named >= 0) return named
+    const placed = byPlace && this.hasPlace(row) ? byPlace : null
+    const there = placed ? this.findPlace(row, placed) : -1
+    if (there >= 0) return there
+    if (isNamed) byName.insert(nameHash, row)
+    placed?.insert(mix(cellOf(this.x![row]), cellOf(this.y![row])), row)
+    return row
   }
 
   private findPlace(row: number, table: RowTable): number {
-    for (const x of cellsOf(this.x![row])) {
-      for (const y of cellsOf(this.y![row])) {
-        const found = table.find(this.placeHash(row, x, y), this.isSamePlace)
-        if (found >= 0) return found
-      }
-    }
-    return -1
+    const x = this.x![row]
+    const y = this.y![row]
+    const lowX = lowCellOf(x)
+    const lowY = lowCellOf(y)
+    const highX = highCellOf(x)
+    const highY = highCellOf(y)
+    let found = table.find(mix(lowX, lowY), this.isSamePlace)
+    if (found < 0 && highX !== lowX) found = table.find(mix(highX, lowY), this.isSamePlace)
+    if (found < 0 && highY !== lowY) found = table.find(mix(lowX, highY), this.isSamePlace)
+    if (found < 0 && highX !== lowX && highY !== lowY) found = table.find(mix(highX, highY), this.isSamePlace)
+    return found
   }
 
   private readonly isSameName = (other: number): boolean => {
-    const { wafer, site } = this.draft.columns
-    const isSame = wafer[other] === wafer[this.row] && site[other] === site[this.row]
-    return isSame && isEqual(this.dieX, other, this.row) && isEqual(this.dieY, other, this.row)
+    const { site } = this.draft.columns
+    return site[other] === site[this.row] && isEqual(this.dieX, other, this.row) && isEqual(this.dieY, other, this.row)
   }
 
   private readonly isSamePlace = (other: number): boolean =>
-    this.draft.columns.wafer[other] === this.draft.columns.wafer[this.row] &&
     Math.abs(this.x![other] - this.x![this.row]) <= SAME_PLACE_MM &&
     Math.abs(this.y![other] - this.y![this.row]) <= SAME_PLACE_MM
 
   private nameHash(row: number): number {
-    const { wafer, site } = this.draft.columns
     const die = this.dieX && this.dieY ? (this.dieX[row] * 8191 + this.dieY[row]) | 0 : 0
-    return mix(wafer[row], site[row], die)
-  }
-
-  private placeHash(row: number, x: number, y: number): number {
-    return mix(this.draft.columns.wafer[row], x, y)
+    return mix(this.draft.columns.site[row], die)
   }
 
   private isNumbered(row: number): boolean {
@@ -158,8 +167,15 @@ class SiteFinder {
   }
 }
 
-function cell(value: number): number {
-  return Math.round(value / 1e-3)
+/** The rows wafer by wafer, each wafer's in reading order, and where each wafer's end. */
+function groupRows(wafer: Uint32Array, count: number, wafers: number): { rows: Uint32Array; ends: Uint32Array } {
+  const ends = new Uint32Array(wafers)
+  for (let row = 0; row < count; row++) ends[wafer[row]]++
+  for (let k = 1; k < wafers; k++) ends[k] += ends[k - 1]
+  const next = Uint32Array.from(ends, (_, k) => (k > 0 ? ends[k - 1] : 0))
+  const rows = new Uint32Array(count)
+  for (let row = 0; row < count; row++) rows[next[wafer[row]]++] = row
+  return { rows, ends }
 }
 
 function isEqual(column: Float64Array | undefined, a: number, b: number): boolean {

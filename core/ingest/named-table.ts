@@ -8,7 +8,7 @@ import { toBase, type Unit } from '../units/unit-register'
 import { decodeText } from './decode-text'
 import { readHeader } from './header-name'
 import { decimalCode, explainNumber, isBlank, parseNumber, type DecimalMark } from './parse-number'
-import { splitRows, unifyLineBreaks, type Rows } from './split-rows'
+import { splitRows, type Rows } from './split-rows'
 
 export interface TableColumn {
   /** Its words as a header may have them, joined by spaces and in small letters. The first that fits is taken. */
@@ -66,7 +66,7 @@ export function readNamedTable<Id extends string>(
   if (bytes.length > MAX_BYTES) return refused(`it has ${bytes.length} bytes, more than ${MAX_BYTES}`)
   const decoded = decodeText(bytes)
   if ('looksLike' in decoded) return refused(`it is no text; it looks like ${decoded.looksLike}`)
-  const found = findHeader(unifyLineBreaks(decoded.text), columns)
+  const found = findHeader(decoded.text(), columns)
   if (typeof found === 'string') return refused(found)
   if (found.rows.cells.length > MAX_ROWS) return refused(`it has more than ${MAX_ROWS} rows`)
   const read = readRows(found, columns)

@@ -1,7 +1,7 @@
 /** From the bytes of a prober's files to one lot of readings. Nothing here throws for a bad file: what is wrong is data. */
 import { DROPPED } from './columns'
 import type { FileProblem, Problem, RowProblem } from '../problems/problem'
-import { decodeText } from './decode-text'
+import { decodeText, type DecodedText } from './decode-text'
 import { guessDecimalMark } from './dialect'
 import { findHeader } from './find-header'
 import { foldSites, renumberSites } from './fold-sites'
@@ -11,7 +11,7 @@ import type { ReadOptions } from './read-options'
 import type { Readings, SourceFile } from './readings'
 import { settleSigns } from './reverse-signs'
 import { RowReader } from './row-reader'
-import { MAX_LINE_LENGTH, blockEnds, splitRows, unifyLineBreaks } from './split-rows'
+import { MAX_LINE_LENGTH, blockEnds, splitRows } from './split-rows'
 
 export interface InputFile {
   readonly name: string
@@ -76,16 +76,15 @@ function readFile(
   if (index > 0xffff) return { kind: 'cannot-read', file, why: 'there are more than 65536 files' }
   const decoded = decodeText(input.bytes)
   if ('looksLike' in decoded) return { kind: 'not-text', file, looksLike: decoded.looksLike }
-  const text = unifyLineBreaks(decoded.text)
-  if (!/\S/.test(text)) return { kind: 'empty-file', file }
-  const ends = blockEnds(text)
+  const ends = blockEnds(decoded.units)
   if ('line' in ends) return { kind: 'line-too-long', file, ...ends, max: MAX_LINE_LENGTH }
-  const header = findHeader(file, text.slice(0, ends[0]), options)
+  if (isBlankText(decoded, ends)) return { kind: 'empty-file', file }
+  const header = findHeader(file, decoded.text(0, ends[0]), options)
   if ('kind' in header) return header
   const undo = draft.mark()
   const reader = new RowReader(draft, file, index, header.delimiter, options)
   const begin = draft.columns.count
-  const problem = readBlocks(reader, text, ends, header, options, watch)
+  const problem = readBlocks(reader, decoded, ends, header, options, watch)
   if (problem) {
     undo()
     return problem
@@ -95,10 +94,14 @@ function readFile(
   return { input, reader, dialect, begin, end: draft.columns.count }
 }
 
+function isBlankText({ text }: DecodedText, ends: readonly number[]): boolean {
+  return ends.every((end, block) => !/\S/.test(text(block === 0 ? 0 : ends[block - 1], end)))
+}
+
 /** Reads every block; the file is refused if a header in it can't be used. */
 function readBlocks(
   reader: RowReader,
-  text: string,
+  { text, units }: DecodedText,
   ends: readonly number[],
   header: { readonly delimiter: string; readonly row: number },
   options: ReadOptions,
@@ -107,7 +110,7 @@ function readBlocks(
   let line = 1
   let begin = 0
   for (const end of ends) {
-    const rows = splitRows(text.slice(begin, end), header.delimiter, line)
+    const rows = splitRows(text(begin, end), header.delimiter, line)
     let from = 0
     if (begin === 0) {
       for (const cells of rows.cells.slice(0, header.row)) reader.readPreamble(cells)
@@ -115,12 +118,12 @@ function readBlocks(
       from = header.row + 1
       reader.setDecimalMark(options.decimalMark ?? guessDecimalMark(rows.cells.slice(from), reader.columns))
     }
-    if (begin === 0) reader.expectRows(estimateRows(text.length, end, rows.cells.length))
+    if (begin === 0) reader.expectRows(estimateRows(units.length, end, rows.cells.length))
     reader.readRows(rows, from)
     if (reader.failure) return reader.failure
     line += rows.lines
     begin = end
-    watch(end / text.length)
+    watch(end / units.length)
   }
   reader.finish()
   return null

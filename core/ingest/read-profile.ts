@@ -7,7 +7,7 @@ import type { DecimalMark } from './parse-number'
 import { profileColumns } from './profile-header'
 import type { ProfileColumn } from './profile-header'
 import type { InputFile } from './read-files'
-import { splitRows, unifyLineBreaks } from './split-rows'
+import { splitRows } from './split-rows'
 import type { Rows } from './split-rows'
 
 export interface DepthProfile {
@@ -45,7 +45,7 @@ export function readProfile({ name, bytes, sha256 }: InputFile): ReadProfile {
   if (bytes.length > MAX_BYTES) return refused(`it has ${bytes.length} bytes, more than ${MAX_BYTES}`)
   const decoded = decodeText(bytes)
   if ('looksLike' in decoded) return refused(`it is no text; it looks like ${decoded.looksLike}`)
-  const table = findTable(unifyLineBreaks(decoded.text))
+  const table = findTable(decoded.text())
   if (typeof table === 'string') return refused(table)
   const { depth_um, concentration_cm3, faults } = readPoints(table)
   if (faults.length > 0) {

@@ -10,13 +10,17 @@ const CELL_MM = 1e-3
 
 export class RowTable {
   private readonly slots: Int32Array
-  private readonly mask: number
+  private mask = 0
 
-  constructor(rows: number) {
-    let size = 16
-    while (size < 2 * rows) size *= 2
-    this.slots = new Int32Array(size).fill(EMPTY)
+  constructor(mostRows: number) {
+    this.slots = new Int32Array(sizeFor(mostRows))
+  }
+
+  /** Empties it, and makes it no larger than so many rows need: a small table stays in the processor's cache. */
+  clearFor(rows: number): void {
+    const size = sizeFor(rows)
     this.mask = size - 1
+    this.slots.fill(EMPTY, 0, size)
   }
 
   /** The first row under this hash for which `isSame` holds, or -1. */
@@ -34,17 +38,19 @@ export class RowTable {
   }
 }
 
-export function mix(a: number, b: number, c: number): number {
-  let hash = Math.imul(a, 0x9e3779b1) ^ Math.imul(b, 0x85ebca6b) ^ Math.imul(c, 0xc2b2ae35)
+function sizeFor(rows: number): number {
+  let size = 16
+  while (size < 2 * rows) size *= 2
+  return size
+}
+
+export function mix(a: number, b: number): number {
+  let hash = Math.imul(a, 0x85ebca6b) ^ Math.imul(b, 0xc2b2ae35)
   hash = Math.imul(hash ^ (hash >>> 15), 0x2c1b3c6d)
   return hash ^ (hash >>> 13)
 }
 
-/** The hash cells that a place may share with another within SAME_PLACE_MM: nearly always one. */
-export function cellsOf(value: number): readonly number[] {
-  const at = value / CELL_MM
-  const near = SAME_PLACE_MM / CELL_MM
-  const low = Math.round(at - near)
-  const high = Math.round(at + near)
-  return low === high ? [low] : [low, high]
-}
+/** A place may share two hash cells with another within SAME_PLACE_MM; nearly always they are one. */
+export const lowCellOf = (value_mm: number): number => Math.round(value_mm / CELL_MM - SAME_PLACE_MM / CELL_MM)
+export const highCellOf = (value_mm: number): number => Math.round(value_mm / CELL_MM + SAME_PLACE_MM / CELL_MM)
+export const cellOf = (value_mm: number): number => Math.round(value_mm / CELL_MM)

@@ -4,12 +4,17 @@
  * around it keeps every block's rows alive until a full garbage collection, which makes it six times slower here.
  */
 import Papa from 'papaparse/papaparse.js'
+import type { DecodedText } from './decode-text'
 
 /** A longer line is no reading. It also bounds what one block can hold. */
 export const MAX_LINE_LENGTH = 1_000_000
 const BLOCK_LENGTH = 1 << 16
 /** A quoted cell may run over line breaks, but one that isn't closed after so many is a stray quote. */
 const MAX_CELL_LINES = 20
+const NEWLINE = 10
+const QUOTE = 34
+
+type Units = DecodedText['units']
 
 export interface Rows {
   readonly cells: readonly (readonly string[])[]
@@ -21,21 +26,17 @@ export interface Rows {
   readonly lines: number
 }
 
-/** One kind of line break, "\n"; "\r\n" is left as it is, a cell's end is trimmed anyway. */
-export function unifyLineBreaks(text: string): string {
-  return text.includes('\n') || !text.includes('\r') ? text : text.replace(/\r/g, '\n')
-}
-
 /** Ends of the blocks, each just after a line break outside quotes; or the line that is too long. */
-export function blockEnds(text: string): number[] | { readonly line: number; readonly length: number } {
+export function blockEnds(units: Units): number[] | { readonly line: number; readonly length: number } {
   const ends: number[] = []
-  const hasQuotes = text.includes('"')
-  for (let begin = 0; begin < text.length;) {
-    let end = begin + BLOCK_LENGTH >= text.length ? text.length : text.lastIndexOf('\n', begin + BLOCK_LENGTH - 1) + 1
-    if (end <= begin) end = nextLineEnd(text, begin)
-    if (hasQuotes) end = quoteSafeEnd(text, begin, end)
+  const hasQuotes = units.includes(QUOTE)
+  for (let begin = 0; begin < units.length;) {
+    const last = begin + BLOCK_LENGTH
+    let end = last >= units.length ? units.length : units.lastIndexOf(NEWLINE, last - 1) + 1
+    if (end <= begin) end = nextLineEnd(units, begin)
+    if (hasQuotes) end = quoteSafeEnd(units, begin, end)
     if (end - begin > BLOCK_LENGTH) {
-      const long = longLine(text, begin, end)
+      const long = longLine(units, begin, end)
       if (long) return long
     }
     ends.push(end)
@@ -44,42 +45,36 @@ export function blockEnds(text: string): number[] | { readonly line: number; rea
   return ends
 }
 
-function nextLineEnd(text: string, from: number): number {
-  const at = text.indexOf('\n', from)
-  return at < 0 ? text.length : at + 1
+function nextLineEnd(units: Units, from: number): number {
+  const at = units.indexOf(NEWLINE, from)
+  return at < 0 ? units.length : at + 1
 }
 
 /** An odd number of quotes means that the block would end inside a quoted cell: it goes on to where they are even. */
-function quoteSafeEnd(text: string, begin: number, end: number): number {
-  let odd = hasOddQuotes(text, begin, end)
+function quoteSafeEnd(units: Units, begin: number, end: number): number {
+  let odd = countOf(QUOTE, units, begin, end) % 2 === 1
   let later = end
-  for (let lines = 0; odd && later < text.length && lines < MAX_CELL_LINES; lines++) {
-    const next = nextLineEnd(text, later)
-    odd = odd !== hasOddQuotes(text, later, next)
+  for (let lines = 0; odd && later < units.length && lines < MAX_CELL_LINES; lines++) {
+    const next = nextLineEnd(units, later)
+    odd = odd !== (countOf(QUOTE, units, later, next) % 2 === 1)
     later = next
   }
   return odd ? end : later
 }
 
-function hasOddQuotes(text: string, begin: number, end: number): boolean {
-  let odd = false
-  for (let at = text.indexOf('"', begin); at >= 0 && at < end; at = text.indexOf('"', at + 1)) odd = !odd
-  return odd
-}
-
-function longLine(text: string, begin: number, end: number): { line: number; length: number } | null {
+function longLine(units: Units, begin: number, end: number): { line: number; length: number } | null {
   for (let at = begin; at < end;) {
-    const next = nextLineEnd(text, at)
-    if (next - at > MAX_LINE_LENGTH) return { line: countLines(text, 0, at) + 1, length: next - at }
+    const next = nextLineEnd(units, at)
+    if (next - at > MAX_LINE_LENGTH) return { line: countOf(NEWLINE, units, 0, at) + 1, length: next - at }
     at = next
   }
   return null
 }
 
-function countLines(text: string, begin: number, end: number): number {
-  let lines = 0
-  for (let at = text.indexOf('\n', begin); at >= 0 && at < end; at = text.indexOf('\n', at + 1)) lines++
-  return lines
+function countOf(unit: number, units: Units, begin: number, end: number): number {
+  let count = 0
+  for (let at = begin; at < end; at++) if (units[at] === unit) count++
+  return count
 }
 
 /** The rows of one block that begins on `firstLine`. */

@@ -4,7 +4,7 @@ import { createRequire } from 'node:module'
 import { dirname, join } from 'node:path'
 import { describe, expect, it } from 'vitest'
 import { decodeText } from '../../../core/ingest/decode-text'
-import { blockEnds, splitRows, unifyLineBreaks } from '../../../core/ingest/split-rows'
+import { blockEnds, splitRows } from '../../../core/ingest/split-rows'
 
 const FOLDER = dirname(createRequire(import.meta.url).resolve('csv-spectrum/package.json'))
 const NAMES = readdirSync(join(FOLDER, 'csvs')).map((file) => file.replace(/\.csv$/, ''))
@@ -13,11 +13,10 @@ const NAMES = readdirSync(join(FOLDER, 'csvs')).map((file) => file.replace(/\.cs
 function rowsOf(bytes: Uint8Array): string[][] {
   const decoded = decodeText(bytes)
   if ('looksLike' in decoded) throw new Error(`it looks like ${decoded.looksLike}`)
-  const text = unifyLineBreaks(decoded.text)
-  const ends = blockEnds(text)
+  const ends = blockEnds(decoded.units)
   if (!Array.isArray(ends)) throw new Error('a line is too long')
   return ends.flatMap((end, block) => {
-    const rows = splitRows(text.slice(block === 0 ? 0 : ends[block - 1], end), ',', 1)
+    const rows = splitRows(decoded.text(block === 0 ? 0 : ends[block - 1], end), ',', 1)
     return rows.cells.map((cells, row) => {
       expect(rows.isBroken(row)).toBe(false)
       return cells.map((cell, at) => (at === cells.length - 1 ? cell.trimEnd() : cell))

@@ -86,7 +86,7 @@ const procedures: Target = {
   check: (bytes) => {
     const decoded = decodeText(bytes)
     if ('looksLike' in decoded) return
-    const { procedure, problems } = parseProcedure(decoded.text, 'p.json')
+    const { procedure, problems } = parseProcedure(decoded.text(), 'p.json')
     checkProblems(problems, new Words(bytes))
     require((procedure === null) === problems.length > 0, () => 'a procedure and a problem, or neither')
     if (!procedure) return
