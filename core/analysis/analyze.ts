@@ -15,6 +15,7 @@ import { CoreError, type Problem } from '../problems/problem'
 import { neededForReadings } from '../procedure/needed-for-readings'
 import type { Procedure } from '../procedure/schema'
 import { componentsOfVariance } from '../statistics/components-of-variance'
+import { criticalDeviates } from '../statistics/outliers'
 import { summarize } from '../statistics/summarize'
 import { isUsable } from '../wafer/die-grid'
 import type { Outline } from '../wafer/outline'
@@ -158,7 +159,8 @@ function membersAndOutliers(
   { value, flags }: SiteColumns,
 ): { members: WaferMembers[]; outliers: Uint32Array[] } {
   const members = waferMembers(readings, flags)
-  const outliers = members.map((wafer) => flagOutliers(value, wafer, procedure.statistics, flags))
+  const critical = criticalDeviates(procedure.statistics.outliers.alpha)
+  const outliers = members.map((wafer) => flagOutliers(value, wafer, procedure.statistics, flags, critical))
   const areLeftOut = procedure.statistics.outliers.leaveOut && outliers.some(({ length }) => length > 0)
   return { members: areLeftOut ? waferMembers(readings, flags) : members, outliers }
 }

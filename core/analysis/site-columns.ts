@@ -18,13 +18,9 @@ export function siteColumns({
   readonly quantity: Quantity
   readonly flags: Uint32Array
 }): SiteColumns {
-  const { vOverI, geometryFactor, thickness, temperature, sheetResistance_ohm_sq } = corrections
+  const { vOverI, geometryFactor, thickness, temperature, reported, sheetResistance_ohm_sq } = corrections
   const count = sheetResistance_ohm_sq.length
-  const corrected = (value: (site: number) => number): Float64Array => {
-    const column = new Float64Array(count)
-    for (let i = 0; i < count; i++) column[i] = flags[i] & SITE_FLAGS.reported.bit ? NaN : value(i)
-    return column
-  }
+  const corrected = (column: Float64Array): Float64Array => (reported ? withoutReported(column, flags) : column)
   const isResistivity = quantity.id === 'resistivity'
   const parts = isResistivity ? relative.resistivity : relative.sheetResistance
   const value = isResistivity ? layer.resistivity_ohm_cm : sheetResistance_ohm_sq
@@ -34,9 +30,9 @@ export function siteColumns({
     count,
     vOverI_ohm: vOverI.a_ohm,
     vOverIB_ohm: vOverI.b_ohm,
-    geometryFactor: corrected((i) => geometryFactor[i]),
-    thicknessFactor: corrected(() => thickness.value),
-    temperatureFactor: corrected((i) => temperature.factor[i]),
+    geometryFactor: corrected(geometryFactor),
+    thicknessFactor: corrected(new Float64Array(count).fill(thickness.value)),
+    temperatureFactor: corrected(temperature.factor),
     sheetResistance_ohm_sq,
     resistivity_ohm_cm: layer.resistivity_ohm_cm,
     concentration_cm3: layer.concentration_cm3,
@@ -53,6 +49,11 @@ export function siteColumns({
     verdict: new Uint8Array(count),
     flags,
   }
+}
+
+/** A value taken as the file reports it has none of our factors. */
+function withoutReported(column: Float64Array, flags: Uint32Array): Float64Array {
+  return column.map((value, site) => (flags[site] & SITE_FLAGS.reported.bit ? NaN : value))
 }
 
 function absolute(

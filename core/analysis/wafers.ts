@@ -121,12 +121,12 @@ function uncertaintyOfMean({ uShared, uIndependent }: SiteColumns, rows: Uint32A
 
 /** Of what a layer gives; a site outside its range has no value and is flagged, the others still have a mean. */
 function finiteMean(column: Float64Array, rows: Uint32Array): number {
-  const finite = rows.filter((i) => Number.isFinite(column[i]))
-  return finite.length > 0 ? summarizeMean(column, finite) : NaN
-}
-
-function summarizeMean(column: Float64Array, rows: Uint32Array): number {
   let sum = 0
-  for (const i of rows) sum += column[i]
-  return sum / rows.length
+  let count = 0
+  for (const i of rows) {
+    if (!Number.isFinite(column[i])) continue
+    sum += column[i]
+    count++
+  }
+  return count > 0 ? sum / count : NaN
 }

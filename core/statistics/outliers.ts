@@ -28,6 +28,7 @@ export interface OutlierTest {
  * @param indices  rows of `values`; absent: all. At least three
  * @param atMost   whole, 1 to half the count
  * @param alpha    1e-6 to 0.5: chance of finding any in a normal sample
+ * @param critical for many samples of about one size: those of this alpha, made once
  * @throws CoreError out-of-range, or not-applicable for fewer than three values
  *
  * Accuracy: critical values are good for 25 values or more, fair from 15; with atMost 1 it is Grubbs' test, any count.
@@ -38,11 +39,13 @@ export function generalizedEsd({
   indices,
   atMost,
   alpha = 0.05,
+  critical = criticalDeviates(alpha),
 }: {
   readonly values: Float64Array
   readonly indices?: Uint32Array | undefined
   readonly atMost: number
   readonly alpha?: number
+  readonly critical?: CriticalDeviates
 }): OutlierTest {
   const chosen = gather(values, indices)
   requireSample(chosen.length, alpha)
@@ -50,10 +53,22 @@ export function generalizedEsd({
   const steps = candidates(chosen, Math.floor(atMost)).map(({ position, left, statistic }) => ({
     row: indices ? indices[position] : position,
     statistic,
-    critical: criticalDeviate(left, alpha / (2 * left)),
+    critical: critical(left),
   }))
   const found = steps.reduce((last, { statistic, critical }, i) => (statistic > critical ? i + 1 : last), 0)
   return { alpha, rows: steps.slice(0, found).map(({ row }) => row), steps }
+}
+
+export type CriticalDeviates = (left: number) => number
+
+/** The critical deviate of the farthest of `left` values on either side; each count is worked out once. */
+export function criticalDeviates(alpha: number): CriticalDeviates {
+  const known = new Map<number, number>()
+  return (left) => {
+    const found = known.get(left) ?? criticalDeviate(left, alpha / (2 * left))
+    known.set(left, found)
+    return found
+  }
 }
 
 export interface GrubbsTest extends OutlierStep {
@@ -112,10 +127,12 @@ interface Candidate {
  */
 function candidates(values: Float64Array, atMost: number): Candidate[] {
   const count = values.length
-  const order = Uint32Array.from(values.keys()).sort((a, b) => values[a] - values[b] || a - b)
+  const sorted = values.slice().sort()
   const middle = count >> 1
-  const deviation = Float64Array.from(order, (i) => values[i] - values[order[middle]])
+  const deviation = sorted.map((value) => value - sorted[middle])
   const { sums, squares } = sumsOutwards(deviation, middle)
+  const lowest = outermost(values, (value) => value <= sorted[atMost - 1], 1)
+  const highest = outermost(values, (value) => value >= sorted[count - atMost], -1)
   const found: Candidate[] = []
   let [low, high] = [0, count - 1]
   while (found.length < atMost) {
@@ -125,10 +142,18 @@ function candidates(values: Float64Array, atMost: number): Candidate[] {
     const variance = (squares[low] + squares[high] - sum * mean) / (left - 1)
     if (deviation[low] === deviation[high] || !(variance > 0)) break
     const isLow = mean - deviation[low] > deviation[high] - mean
+    const position = isLow ? lowest[low] : highest[count - 1 - high]
     const at = isLow ? low++ : high--
-    found.push({ position: order[at], left, statistic: Math.abs(deviation[at] - mean) / Math.sqrt(variance) })
+    found.push({ position, left, statistic: Math.abs(deviation[at] - mean) / Math.sqrt(variance) })
   }
   return found
+}
+
+/** Where the values stand that are so far out, from the outermost inwards; of equal ones the lows as given, the highs from the last. */
+function outermost(values: Float64Array, isOut: (value: number) => boolean, direction: 1 | -1): number[] {
+  const places: number[] = []
+  for (let i = 0; i < values.length; i++) if (isOut(values[i])) places.push(i)
+  return places.sort((a, b) => direction * (values[a] - values[b] || a - b))
 }
 
 /** At each place the sum from the middle (whose deviation is 0) to it. */
