@@ -145,9 +145,9 @@ function measure(
   const inverted = layerResults(procedure, layer, corrections, flags)
   const repeatability = procedure.uncertainty.repeatabilityRel === 'readings' ? repeatabilityOf(readings) : null
   const parts = contributions({ procedure, profile, corrections, readings, flags, repeatability, gauge })
-  const relative = propagate(parts, inverted, readings.count)
   const quantity = judgedQuantity(procedure, readings)
-  const sites = siteColumns({ corrections, layer: inverted, relative, quantity, flags })
+  const uncertainties = propagate(parts, inverted, corrections.sheetResistance_ohm_sq, quantity.id)
+  const sites = siteColumns({ corrections, layer: inverted, uncertainties, quantity, flags })
   flagUncounted(sites.value, positions, setUp.outline, procedure, flags)
   return { positions, setUp, outline: setUp.outline, corrections, quantity, sites, repeatability }
 }

@@ -4,12 +4,12 @@ import { DUAL_QUADRATIC_RATIO, dualSheetResistances } from '../geometry/dual'
 import { dualThicknessFactor } from '../geometry/dual-thickness'
 import { criticalEdgeDistance_mm } from '../geometry/edge-and-thickness'
 import { unequalThicknessFactor, type ThicknessFactor } from '../geometry/thickness'
-import { thinSheetFactors, type ThinSheetColumns } from '../geometry/thin-sheet'
 import type { Readings } from '../ingest/readings'
 import type { Procedure } from '../procedure/schema'
 import { SITE_FLAGS } from './flags'
 import type { MeasuringSetUp } from './measuring-set-up'
 import { takeReported, type ReportedValues } from './reported-values'
+import { sheetGeometry, type GeometrySlopes, type SheetGeometry, type ThicknessSpacingSlopes } from './sheet-geometry'
 import type { SitePositions } from './site-positions'
 import { temperatureCorrection, type TemperatureCorrection } from './temperature-correction'
 import type { VOverI } from './v-over-i'
@@ -28,15 +28,10 @@ export interface Corrections {
   readonly slopes: Slopes
 }
 
-/** How ln Rs moves a unit of each component, a column each; the three spacings added in quadrature, and so x and y. */
-export interface Slopes {
+/** How ln Rs moves a unit of each component, a column each. */
+export interface Slopes extends GeometrySlopes {
   readonly voltage: Float64Array
-  readonly spacing_per_mm: Float64Array
   readonly temperature_per_C: Float64Array
-  readonly diameter_per_mm: Float64Array
-  readonly position_per_mm: Float64Array
-  /** null where the direction counts as exact, or cancels. */
-  readonly orientation_per_deg: Float64Array | null
 }
 
 /** Beyond this a product of factors, or the dual relation near an edge, is flagged. */
@@ -52,7 +47,8 @@ export function correct(
   vOverI: VOverI,
   flags: Uint32Array,
 ): Corrections {
-  const values = correctedValues(readings, procedure, setUp, positions, vOverI, flags)
+  const thicknessSlopes = thicknessSpacingSlopes(setUp, procedure)
+  const values = correctedValues(readings, procedure, setUp, positions, vOverI, flags, thicknessSlopes)
   const { geometry, thickness, dual, temperature, reported, sheetResistance_ohm_sq } = values
   flagDomains(geometry, setUp, positions, procedure, flags)
   return {
@@ -63,12 +59,15 @@ export function correct(
     reported,
     sheetResistance_ohm_sq,
     thicknessSlope: thickness.dLnRatio,
-    slopes: slopesOf(geometry, thicknessSpacingSlopes(setUp, procedure), dual, temperature),
+    slopes: {
+      ...(dual ? dualSlopes(dual, thicknessSlopes) : { ...geometry.slopes, voltage: constant(readings.count, 1) }),
+      temperature_per_C: temperature.slope_per_C,
+    },
   }
 }
 
 export interface CorrectedValues {
-  readonly geometry: ThinSheetColumns
+  readonly geometry: SheetGeometry
   readonly thickness: ThicknessFactor
   readonly dual: DualColumns | null
   readonly temperature: TemperatureCorrection
@@ -84,10 +83,11 @@ export function correctedValues(
   positions: SitePositions | null,
   vOverI: VOverI,
   flags: Uint32Array,
+  thicknessSlopes: ThicknessSpacingSlopes = [0, 0, 0],
 ): CorrectedValues {
   const reported = takeReported(readings, procedure, vOverI.a_ohm, flags)
   const withAngle = procedure.uncertainty.orientationDeg > 0
-  const geometry = thinSheet(readings.count, setUp, positions, withAngle)
+  const geometry = sheetGeometry(readings.count, setUp, positions, withAngle, thicknessSlopes)
   const thickness = thicknessOf(setUp, procedure)
   const dual = setUp.isDual && vOverI.b_ohm ? dualColumns(vOverI, flags) : null
   const sheet = thinSheetResistance(vOverI, geometry, dual)
@@ -100,20 +100,6 @@ export function correctedValues(
       flags[i] & SITE_FLAGS.reported.bit ? reported!.sheetResistance_ohm_sq[i] : sheet[i] * temperature.factor[i]
   }
   return { geometry, thickness, dual, temperature, reported, sheetResistance_ohm_sq: sheet }
-}
-
-/** Without positions, or without edges, every site is that of the infinite sheet. */
-function thinSheet(
-  count: number,
-  setUp: MeasuringSetUp,
-  positions: SitePositions | null,
-  withAngle: boolean,
-): ThinSheetColumns {
-  const { spacings_mm, orientation, outline } = setUp
-  if (positions)
-    return thinSheetFactors({ outline, spacings_mm, orientation, ...positions, configuration: 'A', withAngle })
-  const nowhere = { x_mm: new Float64Array(count), y_mm: new Float64Array(count) }
-  return thinSheetFactors({ outline: { shape: 'infinite' }, spacings_mm, orientation, ...nowhere, configuration: 'A' })
 }
 
 function thicknessOf(setUp: MeasuringSetUp, procedure: Procedure): ThicknessFactor {
@@ -135,7 +121,7 @@ function dualColumns({ a_ohm, b_ohm }: VOverI, flags: Uint32Array) {
 
 type DualColumns = ReturnType<typeof dualColumns>
 
-function thinSheetResistance({ a_ohm }: VOverI, { factor }: ThinSheetColumns, dual: DualColumns | null): Float64Array {
+function thinSheetResistance({ a_ohm }: VOverI, { factor }: SheetGeometry, dual: DualColumns | null): Float64Array {
   const sheet = new Float64Array(a_ohm.length)
   for (let i = 0; i < sheet.length; i++) {
     // Off the wafer there is no result, though the dual relation by itself would give one.
@@ -145,7 +131,7 @@ function thinSheetResistance({ a_ohm }: VOverI, { factor }: ThinSheetColumns, du
 }
 
 function flagDomains(
-  { edgeDistance_mm }: ThinSheetColumns,
+  { edgeDistance_mm }: SheetGeometry,
   setUp: MeasuringSetUp,
   positions: SitePositions | null,
   procedure: Procedure,
@@ -169,7 +155,7 @@ function flagDomains(
 }
 
 /** d ln F / ds of each of the three spacings [1/mm]; what of the spacing comes in through the thickness factor. */
-function thicknessSpacingSlopes(setUp: MeasuringSetUp, procedure: Procedure): readonly [number, number, number] {
+function thicknessSpacingSlopes(setUp: MeasuringSetUp, procedure: Procedure): ThicknessSpacingSlopes {
   const { conductingThickness_um: thickness_um, meanSpacing_mm, spacings_mm } = setUp
   if (thickness_um === null) return [0, 0, 0]
   if (setUp.isDual) {
@@ -187,38 +173,21 @@ function thicknessSpacingSlopes(setUp: MeasuringSetUp, procedure: Procedure): re
   return [slope(0), slope(1), slope(2)]
 }
 
-function slopesOf(
-  geometry: ThinSheetColumns,
-  [throughF1, throughF2, throughF3]: readonly [number, number, number],
-  dual: DualColumns | null,
-  temperature: TemperatureCorrection,
-): Slopes {
-  const count = geometry.factor.length
-  const column = () => new Float64Array(count)
-  const slopes = {
-    voltage: column().fill(1),
-    spacing_per_mm: column(),
-    diameter_per_mm: column(),
-    position_per_mm: column(),
-  }
-  for (let i = 0; i < count; i++) {
-    if (dual) {
-      // The two voltages err independently; spacing, place and size of the wafer cancel in the exact relation.
-      slopes.voltage[i] = Math.hypot(dual.dLnA[i], dual.dLnB[i])
-      slopes.spacing_per_mm[i] = Math.hypot(throughF1, throughF2, throughF3)
-      continue
-    }
-    const s1 = geometry.dSpacing1_per_mm[i] + throughF1
-    const s2 = geometry.dSpacing2_per_mm[i] + throughF2
-    const s3 = geometry.dSpacing3_per_mm[i] + throughF3
-    slopes.spacing_per_mm[i] = Math.sqrt(s1 * s1 + s2 * s2 + s3 * s3)
-    slopes.diameter_per_mm[i] = geometry.dSize_per_mm[i]
-    const { dX_per_mm, dY_per_mm } = geometry
-    slopes.position_per_mm[i] = Math.sqrt(dX_per_mm[i] * dX_per_mm[i] + dY_per_mm[i] * dY_per_mm[i])
-  }
+/** The two voltages err independently; spacing, place and size of the wafer cancel in the exact relation. */
+function dualSlopes(
+  { dLnA, dLnB }: DualColumns,
+  thicknessSlopes: ThicknessSpacingSlopes,
+): Omit<Slopes, 'temperature_per_C'> {
+  const none = new Float64Array(dLnA.length)
   return {
-    ...slopes,
-    temperature_per_C: temperature.slope_per_C,
-    orientation_per_deg: dual ? null : geometry.dAngle_per_deg,
+    voltage: dLnA.map((slope, site) => Math.hypot(slope, dLnB[site])),
+    spacing_per_mm: constant(dLnA.length, Math.hypot(...thicknessSlopes)),
+    diameter_per_mm: none,
+    position_per_mm: none,
+    orientation_per_deg: null,
   }
+}
+
+function constant(count: number, value: number): Float64Array {
+  return new Float64Array(count).fill(value)
 }

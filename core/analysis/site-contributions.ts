@@ -28,7 +28,7 @@ export function siteContributions(analysis: LotAnalysis, site: number): SiteCont
   const layer = layerResults(procedure, prepareLayer(procedure, profile), corrections, new Uint32Array(1))
   const sensitivity = layer.resistivitySensitivity[0]
   const effect = (part: Contribution): number =>
-    quantity.id === 'resistivity' ? onResistivity(part, 0, sensitivity) : part.sheetResistance(0)
+    quantity.id === 'resistivity' ? onResistivity(part, part.sheetResistance(0), sensitivity) : part.sheetResistance(0)
   const every = contributions({ procedure, profile, corrections, readings, flags, repeatability, gauge })
   const parts = every.filter((part) => effect(part) !== 0)
   if (parts.length === 0) {

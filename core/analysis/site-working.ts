@@ -249,7 +249,8 @@ function budgetOf({ analysis, corrections, parts }: WorkingInput): BudgetLine[] 
   const layer = layerResults(procedure, prepareLayer(procedure, profile), corrections, new Uint32Array(1))
   const sensitivity = layer.resistivitySensitivity[0]
   const lines = parts.map((part) => {
-    const relative = Math.abs(isResistivity ? onResistivity(part, 0, sensitivity) : part.sheetResistance(0))
+    const onSheet = part.sheetResistance(0)
+    const relative = Math.abs(isResistivity ? onResistivity(part, onSheet, sensitivity) : onSheet)
     const { component, title, shared, u, unit, degreesOfFreedom, evaluation } = part
     return { component, title, shared, u, unit, degreesOfFreedom, evaluation, sensitivity: relative / u, relative }
   })

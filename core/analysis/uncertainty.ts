@@ -9,6 +9,7 @@ import type { Readings } from '../ingest/readings'
 import { UNCERTAINTY_COMPONENTS, type Procedure, type UncertaintyComponent } from '../procedure/schema'
 import type { Corrections } from './corrections'
 import { SITE_FLAGS } from './flags'
+import type { Quantity } from './lot-analysis'
 import type { Repeatability } from './repeatability'
 
 /** What a gauge study adds, beside the procedure's own components. */
@@ -211,44 +212,75 @@ function depthOf(layer: Procedure['layer'], profile: DepthTable | null): { title
   }
 }
 
-/** Relative effect of a component on a site's resistivity, of the sensitivity that the layer says. */
-export function onResistivity(part: Contribution, site: number, sensitivity: number): number {
-  const through = part.sheetResistance(site) + part.resistivityExtra
+/** Relative effect on resistivity of a component with that effect on sheet resistance, at the layer's sensitivity. */
+export function onResistivity(part: Contribution, onSheet: number, sensitivity: number): number {
   // What a mobility does to the concentration it also does to a depth that is solved with it.
-  return sensitivity * through + (sensitivity - 1) * part.concentrationExtra
+  return sensitivity * (onSheet + part.resistivityExtra) + (sensitivity - 1) * part.concentrationExtra
 }
 
-/** Relative standard uncertainties, a column each; shared and independent parts are of sheet resistance and resistivity. */
-export interface RelativeUncertainties {
-  readonly sheetResistance: { readonly shared: Float64Array; readonly independent: Float64Array }
-  readonly resistivity: { readonly shared: Float64Array; readonly independent: Float64Array }
-  readonly concentration: Float64Array
+/** Standard uncertainties, a column each: the effects of the components, which are not correlated, added in quadrature. */
+export interface SiteUncertainties {
+  readonly uSheetResistance_ohm_sq: Float64Array
+  readonly uResistivity_ohm_cm: Float64Array
+  readonly uConcentration_cm3: Float64Array
+  /** The two parts of that of the judged quantity: what all sites have in common, and what each has to itself. */
+  readonly uShared: Float64Array
+  readonly uIndependent: Float64Array
 }
 
-/** Adds the contributions in quadrature, a column at a time. */
-export function propagate(parts: readonly Contribution[], layer: LayerColumns, count: number): RelativeUncertainties {
-  const sums = {
-    sheetResistance: { shared: new Float64Array(count), independent: new Float64Array(count) },
-    resistivity: { shared: new Float64Array(count), independent: new Float64Array(count) },
-    concentration: new Float64Array(count),
+export function propagate(
+  parts: readonly Contribution[],
+  layer: LayerColumns,
+  sheetResistance_ohm_sq: Float64Array,
+  judged: Quantity['id'],
+): SiteUncertainties {
+  const column = () => new Float64Array(sheetResistance_ohm_sq.length)
+  const into: SiteUncertainties = {
+    uSheetResistance_ohm_sq: column(),
+    uResistivity_ohm_cm: column(),
+    uConcentration_cm3: column(),
+    uShared: column(),
+    uIndependent: column(),
   }
+  for (let site = 0; site < sheetResistance_ohm_sq.length; site++) {
+    addUp(parts, layer, sheetResistance_ohm_sq[site], judged, site, into)
+  }
+  return into
+}
+
+function addUp(
+  parts: readonly Contribution[],
+  layer: LayerColumns,
+  sheetResistance_ohm_sq: number,
+  judged: Quantity['id'],
+  site: number,
+  into: SiteUncertainties,
+): void {
+  let sheetShared = 0
+  let sheetIndependent = 0
+  let bulkShared = 0
+  let bulkIndependent = 0
+  let concentration = 0
   for (const part of parts) {
-    const sheet = part.shared ? sums.sheetResistance.shared : sums.sheetResistance.independent
-    const bulk = part.shared ? sums.resistivity.shared : sums.resistivity.independent
-    for (let site = 0; site < count; site++) {
-      const effect = part.sheetResistance(site)
-      const resistivity = onResistivity(part, site, layer.resistivitySensitivity[site])
-      const concentration = effect + part.resistivityExtra + part.concentrationExtra
-      sheet[site] += effect * effect
-      bulk[site] += resistivity * resistivity
-      sums.concentration[site] += concentration * concentration
+    const onSheet = part.sheetResistance(site)
+    const onBulk = onResistivity(part, onSheet, layer.resistivitySensitivity[site])
+    const onConcentration = onSheet + part.resistivityExtra + part.concentrationExtra
+    if (part.shared) {
+      sheetShared += onSheet * onSheet
+      bulkShared += onBulk * onBulk
+    } else {
+      sheetIndependent += onSheet * onSheet
+      bulkIndependent += onBulk * onBulk
     }
+    concentration += onConcentration * onConcentration
   }
-  for (const column of [...Object.values(sums.sheetResistance), ...Object.values(sums.resistivity)]) {
-    for (let site = 0; site < count; site++) column[site] = Math.sqrt(column[site])
-  }
-  for (let site = 0; site < count; site++) {
-    sums.concentration[site] = Math.sqrt(sums.concentration[site]) * Math.abs(layer.concentrationSensitivity[site])
-  }
-  return sums
+  const rho_ohm_cm = layer.resistivity_ohm_cm[site]
+  const isResistivity = judged === 'resistivity'
+  const value = isResistivity ? rho_ohm_cm : sheetResistance_ohm_sq
+  const perPart = layer.concentration_cm3[site] * Math.abs(layer.concentrationSensitivity[site])
+  into.uSheetResistance_ohm_sq[site] = sheetResistance_ohm_sq * Math.sqrt(sheetShared + sheetIndependent)
+  into.uResistivity_ohm_cm[site] = rho_ohm_cm * Math.sqrt(bulkShared + bulkIndependent)
+  into.uConcentration_cm3[site] = perPart * Math.sqrt(concentration)
+  into.uShared[site] = value * Math.sqrt(isResistivity ? bulkShared : sheetShared)
+  into.uIndependent[site] = value * Math.sqrt(isResistivity ? bulkIndependent : sheetIndependent)
 }

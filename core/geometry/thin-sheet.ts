@@ -43,9 +43,16 @@ export interface ThinSheetColumns {
  * Accuracy: exact but for rounding, 1e-12. dSize follows from the others: C depends on ratios of lengths alone.
  * Sources: those of the outline in `registry.ts`; derivation in `four-terminal.ts`.
  */
-export function thinSheetFactors(
-  sites: ProbeSites & { readonly configuration: Configuration; readonly withAngle?: boolean },
-): ThinSheetColumns {
+export function thinSheetFactors(sites: ThinSheetSites & { readonly withAngle?: boolean }): ThinSheetColumns {
+  const columns = thinSheetColumns(sites.x_mm.length, sites.withAngle ?? false)
+  fillThinSheetFactors(sites, columns)
+  return columns
+}
+
+export type ThinSheetSites = ProbeSites & { readonly configuration: Configuration }
+
+/** `thinSheetFactors` into columns that are there already, as long as those of the sites or longer. */
+export function fillThinSheetFactors(sites: ThinSheetSites, columns: ThinSheetColumns): void {
   requireProbeSites(sites)
   const geometry = outlineGeometry(sites.outline)
   const logDistance = geometry.logDistance(sites.outline)
@@ -54,22 +61,19 @@ export function thinSheetFactors(
   const pins = createPinColumns()
   const direction = new Float64Array(2)
   const place = pinPlacer(sites, pins, direction)
-  const columns = createColumns(sites.x_mm.length, sites.withAngle ?? false)
   const offsets_mm = pinOffsets_mm(sites.spacings_mm)
   for (let site = 0; site < sites.x_mm.length; site++) {
     const edge_mm = place(site)
     columns.edgeDistance_mm[site] = edge_mm
-    if (!(edge_mm >= 0)) continue
-    const sum = fourTerminalGradient(terminals, logDistance, pins)
+    const sum = edge_mm >= 0 ? fourTerminalGradient(terminals, logDistance, pins) : NaN
     columns.factor[site] = (2 * Math.PI) / sum
     writeDerivatives(sites, site, sum, pins, direction, size_mm, columns)
     if (columns.dAngle_per_deg) columns.dAngle_per_deg[site] = angleDerivative(sum, pins, direction, offsets_mm)
   }
-  return columns
 }
 
-function createColumns(length: number, withAngle: boolean): ThinSheetColumns {
-  const column = () => new Float64Array(length).fill(NaN)
+export function thinSheetColumns(length: number, withAngle: boolean): ThinSheetColumns {
+  const column = () => new Float64Array(length)
   return {
     factor: column(),
     dSpacing1_per_mm: column(),
