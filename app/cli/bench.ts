@@ -1,11 +1,14 @@
 /**
- * `npm run bench`: a bare Papa Parse of a generated CSV against the whole pipeline on the same text, in one process and
- * interleaved, so that a slow moment of the machine falls on both.
+ * `npm run bench`: the whole pipeline on a generated CSV against a bare Papa Parse of the same text, in one process and
+ * interleaved, so that a slow moment of the machine falls on both; and against the plainest script that does the job.
+ * `npm run bench -- 5000000` takes other numbers of sites.
  */
 import Papa from 'papaparse'
 import { analyze } from '../../core/analysis/analyze'
+import type { LotAnalysis } from '../../core/analysis/lot-analysis'
 import { readReadings } from '../../core/ingest/read-files'
 import { parseProcedure } from '../../core/procedure/parse-procedure'
+import { plainRows } from './plain-script'
 
 const PROCEDURE = JSON.stringify({
   format: 'persquare-procedure/1',
@@ -22,8 +25,11 @@ const PROCEDURE = JSON.stringify({
   uncertainty: { currentRel: 2e-4, voltageRel: 3e-4, spacingMm: 0.005, temperatureC: 0.3 },
 })
 
+const SITES = [10_000, 100_000, 1_000_000]
 const SITES_PER_WAFER = 4000
 const ROUNDS = 3
+/** The plain script takes milliseconds a site. */
+const PLAIN_SITES = 500
 
 /** Sunflower positions on each wafer; every site its own voltage. Joined a wafer at a time, to hold little besides the text. */
 function syntheticCsv(sites: number): string {
@@ -54,34 +60,78 @@ function timed(run: () => void): number {
   return performance.now() - start
 }
 
-function pipeline(text: string): void {
+function pipeline(bytes: Uint8Array): LotAnalysis {
   const { procedure, defaults } = parseProcedure(PROCEDURE, 'bench')
-  const read = readReadings([{ name: 'bench.csv', bytes: new TextEncoder().encode(text), sha256: '' }])
+  const read = readReadings([{ name: 'bench.csv', bytes, sha256: '' }])
   if (!procedure || !read.readings) throw new Error('the benchmark lot could not be read')
   const analysis = analyze({ readings: read.readings, procedure, defaults, problems: read.problems, notes: read.notes })
   if (!(analysis.sites.concentration_cm3[0] > 0)) throw new Error('the benchmark lot was not inverted')
+  return analysis
 }
 
-console.log('sites      bare parse    pipeline    ratio    per site   peak memory of the pipeline')
-const sizes = process.argv.slice(2).map(Number)
-for (const sites of sizes.length > 0 ? sizes : [10_000, 100_000, 1_000_000]) {
+interface Timing {
+  readonly sites: number
+  readonly bare_ms: number
+  readonly whole_ms: number
+  readonly ratio: number
+  readonly peak_MB: number
+}
+
+/** Each is given what it takes: the parser a text, the pipeline the file's bytes. */
+function compare(sites: number): Timing {
   const text = syntheticCsv(sites)
+  const bytes = new TextEncoder().encode(text)
   const bare: number[] = []
   const whole: number[] = []
   let peak_MB = NaN
   for (let round = 0; round < ROUNDS; round++) {
     // The pipeline goes first: the process's peak is its own then, until the bare parse of this size has run.
-    whole.push(timed(() => pipeline(text)))
+    whole.push(timed(() => void pipeline(bytes)))
     if (round === 0) peak_MB = process.resourceUsage().maxRSS / 1024
     bare.push(timed(() => void Papa.parse(text)))
   }
   const ratio = median(whole.map((ms, k) => ms / bare[k]))
-  const perSite_us = (median(whole) / sites) * 1e3
-  console.log(
-    `${String(sites).padEnd(9)} ${median(bare).toFixed(0).padStart(8)} ms ${median(whole).toFixed(0).padStart(8)} ms ${ratio.toFixed(2).padStart(8)} ` +
-      `${perSite_us.toFixed(2).padStart(8)} us ${peak_MB.toFixed(0).padStart(10)} MB`,
-  )
+  return { sites, bare_ms: median(bare), whole_ms: median(whole), ratio, peak_MB }
 }
+
+function comparePlain(): { us: number; sheetDiffers: number; concentrationDiffers: number } {
+  const text = syntheticCsv(PLAIN_SITES)
+  const start = performance.now()
+  const rows = plainRows(text)
+  const us = ((performance.now() - start) / PLAIN_SITES) * 1e3
+  const { sites } = pipeline(new TextEncoder().encode(text))
+  const largest = (ours: Float64Array, theirs: (k: number) => number) =>
+    ours.reduce((most, value, k) => Math.max(most, Math.abs(value / theirs(k) - 1)), 0)
+  return {
+    us,
+    sheetDiffers: largest(sites.sheetResistance_ohm_sq, (k) => rows[k].sheetResistance_ohm_sq),
+    concentrationDiffers: largest(sites.concentration_cm3, (k) => rows[k].concentration_cm3),
+  }
+}
+
+const asked = process.argv.slice(2).map(Number)
+if (asked.some((sites) => !(sites >= 1 && sites <= 6e6))) {
+  console.error('npm run bench -- SITES ...: each from 1 to 6000000 (a text of more is longer than a string can be)')
+  process.exit(2)
+}
+console.log('sites      bare parse    pipeline    ratio    per site   peak memory, the text and its bytes among it')
+const timings = (asked.length > 0 ? asked : SITES).map((sites) => {
+  const timing = compare(sites)
+  const { bare_ms, whole_ms, ratio, peak_MB } = timing
+  console.log(
+    `${String(sites).padEnd(9)} ${bare_ms.toFixed(0).padStart(8)} ms ${whole_ms.toFixed(0).padStart(8)} ms ${ratio.toFixed(2).padStart(8)} ` +
+      `${((whole_ms / sites) * 1e3).toFixed(2).padStart(8)} us ${peak_MB.toFixed(0).padStart(10)} MB`,
+  )
+  return timing
+})
 console.log(
-  `medians of ${ROUNDS} interleaved rounds in one process; single times swing with the machine, the ratio less; peak memory holds the text itself too`,
+  `medians of ${ROUNDS} interleaved rounds in one process; single times swing with the machine, the ratio less`,
+)
+const plain = comparePlain()
+const last = timings[timings.length - 1]
+const perSite_us = (last.whole_ms / last.sites) * 1e3
+console.log(
+  `the plainest script, ${PLAIN_SITES} sites: ${plain.us.toFixed(0)} us a site, ${(plain.us / perSite_us).toFixed(0)} times the pipeline's ` +
+    `${perSite_us.toFixed(2)} us at ${last.sites} sites; it also gives no uncertainty, statistics or verdicts\n` +
+    `largest difference between the two: sheet resistance ${plain.sheetDiffers.toExponential(0)}, concentration ${plain.concentrationDiffers.toExponential(0)}`,
 )

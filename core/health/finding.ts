@@ -60,13 +60,17 @@ export interface HealthCheck {
 export const COMMON_PRACTICE = 'common practice, no source'
 
 export function medianOf(values: ArrayLike<number>): number {
-  const sorted = Float64Array.from(values).filter(Number.isFinite).sort()
-  const { length } = sorted
+  const finite = new Float64Array(values.length)
+  let length = 0
+  for (let i = 0; i < values.length; i++) if (Number.isFinite(values[i])) finite[length++] = values[i]
+  const sorted = finite.subarray(0, length).sort()
   if (length === 0) return NaN
   return length % 2 === 1 ? sorted[length >> 1] : (sorted[length / 2 - 1] + sorted[length / 2]) / 2
 }
 
 /** 1.4826 times the median distance from the median: the standard deviation of a normal sample, whatever its strays. */
 export function robustDeviation(values: ArrayLike<number>, median = medianOf(values)): number {
-  return 1.4826 * medianOf(Float64Array.from(values, (value) => Math.abs(value - median)))
+  const distances = new Float64Array(values.length)
+  for (let i = 0; i < values.length; i++) distances[i] = Math.abs(values[i] - median)
+  return 1.4826 * medianOf(distances)
 }

@@ -129,16 +129,16 @@ function countOfNext(voltage_V: Float64Array, wafers: HealthInput['wafers'], mos
 /** Two wafers whose readings are the same one by one: one was copied, or measured twice under two names. */
 function copied(input: HealthInput): readonly HealthFinding[] {
   const column = readColumn(input)
-  const firstWith = new Map<string, { id: string; row: number }>()
+  const seen = new Map<string, { readonly id: string; readonly values: Float64Array }[]>()
   const pairs: { a: string; b: string; row: number; count: number }[] = []
   for (const { id, rows } of input.wafers) {
     if (rows.length < LEAST_COPIED) continue
     const values = Float64Array.from(rows, (i) => column[i])
-    if (new Set(values).size < rows.length / 2) continue
-    const written = values.join()
-    const earlier = firstWith.get(written)
+    const begin = values.subarray(0, LEAST_COPIED).join()
+    const alike = seen.get(begin) ?? []
+    const earlier = alike.find((other) => areSame(other.values, values))
     if (earlier) pairs.push({ a: earlier.id, b: id, row: rows[0], count: rows.length })
-    else firstWith.set(written, { id, row: rows[0] })
+    else if (new Set(values).size >= rows.length / 2) seen.set(begin, [...alike, { id, values }])
   }
   return pairs.map(({ a, b, row, count }): HealthFinding => ({
     check: 'stuck-readings',
@@ -151,6 +151,10 @@ function copied(input: HealthInput): readonly HealthFinding[] {
     source: COMMON_PRACTICE,
   }))
 } // prettier-ignore
+
+function areSame(a: Float64Array, b: Float64Array): boolean {
+  return a.length === b.length && a.every((value, k) => Object.is(value, b[k]))
+}
 
 /** The step of the display against what a prober repeats by. */
 function coarse(input: HealthInput): readonly HealthFinding[] {
