@@ -18,18 +18,28 @@ const port = self as unknown as {
 
 const kept = new Map<number, KeptFile>()
 
+let jobs = 0
+
 port.onmessage = ({ data }) => {
-  if ('rehearse' in data) rehearse(data)
-  else answer(data).catch((error: unknown) => port.postMessage({ kind: 'failed', why: String(error) }))
+  const failed = (error: unknown) => port.postMessage({ kind: 'failed', why: String(error) })
+  if ('rehearse' in data) void rehearse(data).catch(failed)
+  else {
+    jobs++
+    answer(data).catch(failed)
+  }
 }
 
-function rehearse({ rehearse: { readings, procedure } }: Rehearsal): void {
+/** The engine compiles what it has seen run often; a turn is short, and a real job goes before the next. */
+async function rehearse({ rehearse: { readings, procedure } }: Rehearsal): Promise<void> {
   const input = { readings: [{ ...readings, sha256: '' }], procedure }
-  // The second time the engine has seen enough to compile it well.
-  run(input)
-  const result = run(input)
+  let result = run(input)
+  for (let turn = 1; turn < REHEARSAL_TURNS && jobs === 0; turn++) {
+    await new Promise((resolve) => setTimeout(resolve))
+    if (jobs === 0) result = run(input)
+  }
   port.postMessage({ kind: 'rehearsed', result })
 }
+const REHEARSAL_TURNS = 10
 
 async function answer({ added, dropped, readings, procedure, excluded }: Job): Promise<void> {
   for (const id of dropped) kept.delete(id)

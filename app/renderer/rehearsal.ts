@@ -11,9 +11,10 @@ import { mapLayer } from './figures/layers'
 import { lotPictures } from './figures/lot-pictures'
 import { paintSmallMap } from './figures/paint-small-map'
 
-const WAFERS = 4
+const WAFERS = 10
 const RINGS = 4
 const CANVAS_px = 64
+const PAINTING_TURNS = 24
 
 /** Call when the window is at rest. */
 export async function rehearse(): Promise<void> {
@@ -28,9 +29,9 @@ async function paintAside(analysis: LotAnalysis): Promise<void> {
   const context = document.createElement('canvas').getContext('2d')
   if (!layer || !context) return
   context.canvas.width = context.canvas.height = CANVAS_px
-  for (const wafer of pictures.wafers) {
-    paintSmallMap(context, pictures, wafer, layer, pageInks())
-    await new Promise((resolve) => setTimeout(resolve))
+  for (let turn = 0; turn < PAINTING_TURNS; turn++) {
+    paintSmallMap(context, pictures, pictures.wafers[turn % pictures.wafers.length], layer, pageInks())
+    await new Promise((resolve) => requestIdleCallback(resolve))
   }
 }
 
