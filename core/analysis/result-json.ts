@@ -15,13 +15,11 @@ export interface ResultContext {
   /** Name and version of what made it. */
   readonly program: string
   readonly version: string
-  /** Of a wafer, where they are at hand; absent: worked out here. */
-  readonly detailsOf?: (wafer: WaferAnalysis) => WaferDetails
 }
 
 /** Plain data; numbers that don't exist are null, since JSON has no NaN. Keys stand in a fixed order. */
 export function resultObject(analysis: LotAnalysis, context: ResultContext): object {
-  const { program, version, detailsOf = (wafer) => waferDetails(analysis, wafer) } = context
+  const { program, version } = context
   const { readings, procedure, defaults, excluded, problems, notes, quantity, lot, wafers } = analysis
   return {
     format: RESULT_FORMAT,
@@ -50,7 +48,7 @@ export function resultObject(analysis: LotAnalysis, context: ResultContext): obj
     acceptance: acceptanceObject(analysis),
     gauge: gaugePart(analysis),
     checkWafer: checkPart(analysis.check),
-    wafers: wafers.map((wafer) => waferObject(wafer, analysis, detailsOf(wafer))),
+    wafers: wafers.map((wafer) => waferObject(wafer, analysis, waferDetails(analysis, wafer))),
   }
 }
 

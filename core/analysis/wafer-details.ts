@@ -23,7 +23,16 @@ export interface WaferDetails {
 /** Sites a wafer needs before a pattern is looked for: a plane and something left to judge it by. */
 const LEAST_SITES = 9
 
+/** Worked out once a wafer: the result, the report and the window ask for the same. */
 export function waferDetails(analysis: LotAnalysis, wafer: WaferAnalysis): WaferDetails {
+  const details = known.get(wafer) ?? workedOut(analysis, wafer)
+  known.set(wafer, details)
+  return details
+}
+
+const known = new WeakMap<WaferAnalysis, WaferDetails>()
+
+function workedOut(analysis: LotAnalysis, wafer: WaferAnalysis): WaferDetails {
   const { procedure, outline, sites, readings, quantity } = analysis
   const positions = sitePositions(readings, procedure)
   const counting = countingSites(wafer.sites, sites.flags)

@@ -1,7 +1,7 @@
 /** The lot report: one analysis as a document to print, sign and hand over. */
 import type { Working } from '../analysis/working'
 import type { ReportDocument } from './document'
-import { detailsOnce, reportContext, type LotReportInput } from './report-context'
+import { reportContext, type LotReportInput } from './report-context'
 import { findingsSection } from './sections/findings-section'
 import { gaugeSection } from './sections/gauge-section'
 import { inputSection } from './sections/input-section'
@@ -24,9 +24,9 @@ export type { LotReportInput } from './report-context'
 const UNDATED = '1970-01-01T00:00:00Z'
 
 export function lotReport(input: LotReportInput): ReportDocument {
-  const { analysis, working, date, program, paper, detailsOf = detailsOnce(analysis) } = input
-  const uses = [...sourceUses(input), ...statisticsUses({ wafers: analysis.wafers, detailsOf })]
-  const context = reportContext({ ...input, detailsOf }, sourceList(input.sources, uses))
+  const { analysis, working, date, program, paper } = input
+  const uses = [...sourceUses(input), ...statisticsUses(analysis)]
+  const context = reportContext(input, sourceList(input.sources, uses))
   return {
     title: `Lot ${analysis.lot.name}: sheet measurement report`,
     subject: analysis.lot.sentence,

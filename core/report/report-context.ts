@@ -27,8 +27,6 @@ export interface LotReportInput {
   readonly sources: readonly FormulaSource[]
   /** Of the responsible person; null or absent where none is made yet. */
   readonly decision?: Decision | null
-  /** Of a wafer, where they are at hand; absent: worked out once a wafer. */
-  readonly detailsOf?: (wafer: WaferAnalysis) => WaferDetails
 }
 
 export interface ReportContext {
@@ -77,7 +75,7 @@ export function reportContext(input: LotReportInput, sources: SourceList): Repor
       verdict: Uint8Array.from(sites, (i) => verdict[i]),
       excluded: Uint8Array.from(sites, (i) => (flags[i] & LEFT_OUT ? 1 : 0)),
     }),
-    detailsOf: input.detailsOf ?? detailsOnce(analysis),
+    detailsOf: (wafer) => waferDetails(analysis, wafer),
     hasPositions: positions !== null,
     positions,
     scale,
@@ -88,16 +86,6 @@ export function reportContext(input: LotReportInput, sources: SourceList): Repor
 
 /** Sites with a value that neither count nor shape a surface. */
 const LEFT_OUT = SITE_FLAGS.excludedByPerson.bit | SITE_FLAGS.outlierLeftOut.bit
-
-/** Several sections ask for the same wafer's. */
-export function detailsOnce(analysis: LotAnalysis): (wafer: WaferAnalysis) => WaferDetails {
-  const known = new Map<WaferAnalysis, WaferDetails>()
-  return (wafer) => {
-    const details = known.get(wafer) ?? waferDetails(analysis, wafer)
-    known.set(wafer, details)
-    return details
-  }
-}
 
 function judgedLimits({ procedure, quantity }: LotAnalysis): { siteLimits: SiteLimits; meanLimits: SiteLimits } {
   const { site, waferMean } = limitsOn(quantity, procedure)

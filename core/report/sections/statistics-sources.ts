@@ -1,12 +1,13 @@
 /** Where the figures of a wafer's page come from, for the list of sources. */
+import type { LotAnalysis } from '../../analysis/lot-analysis'
+import { waferDetails } from '../../analysis/wafer-details'
 import type { SourceUse } from '../source-list'
-import type { ReportContext } from '../report-context'
 
 const HANDBOOK = 'NIST/SEMATECH e-Handbook of Statistical Methods'
 
 /** Of those figures that some wafer has. */
-export function statisticsUses({ wafers, detailsOf }: Pick<ReportContext, 'wafers' | 'detailsOf'>): SourceUse[] {
-  const all = wafers.map(detailsOf)
+export function statisticsUses(analysis: LotAnalysis): SourceUse[] {
+  const all = analysis.wafers.map((wafer) => waferDetails(analysis, wafer))
   const some = (has: (details: (typeof all)[number]) => boolean, reference: string, use: string): SourceUse[] =>
     all.some(has) ? [{ reference, use }] : []
   return [
