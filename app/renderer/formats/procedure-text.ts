@@ -18,6 +18,7 @@ import { textOf } from './files'
 export type Written = Readonly<Record<string, unknown>>
 
 export const NEW_PROCEDURE: Written = { format: PROCEDURE_FORMAT, title: '' }
+export const NEW_PROCEDURE_NAME = 'new.procedure.json'
 
 /** Null where the text is no JSON object: then it can only be mended as text. */
 export function readWritten(bytes: Uint8Array): Written | null {

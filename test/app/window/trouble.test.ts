@@ -16,6 +16,9 @@ describe.skipIf(!hasChromium())('when something is wrong', () => {
       await page.getByRole('heading', { level: 1, name: 'The readings are here; the procedure is missing' }).waitFor()
       await page.getByRole('button', { name: 'start a new one' }).click()
       await page.getByRole('heading', { name: /^Procedure/ }).waitFor()
+      // The lot is analysed by it at once, yet the form stays: there is much to fill in.
+      await page.getByRole('heading', { level: 1, name: /TB-0417/ }).waitFor()
+      expect(await page.getByRole('heading', { name: /^Procedure/ }).isVisible()).toBe(true)
     }))
 
   it('shows every bad row with the text that was found there', () =>
