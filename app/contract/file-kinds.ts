@@ -1,11 +1,11 @@
-import type { FileChoice } from './host'
-
 /** What each choice offers, for the file dialogs of both hosts. */
 export const FILE_CHOICES = {
   readings: { title: 'Readings', extensions: ['csv', 'tsv', 'txt', 'dat'] },
   procedure: { title: 'Procedure', extensions: ['json'] },
   folder: { title: 'Folder of readings', extensions: ['csv', 'tsv'] },
-} as const satisfies Record<FileChoice, { readonly title: string; readonly extensions: readonly string[] }>
+} as const
+
+export type FileChoice = keyof typeof FILE_CHOICES
 
 /** What can be saved, for the dialogs and for the type of a download. */
 export const SAVE_KINDS = {

@@ -7,7 +7,7 @@ import type { Exclusion } from '../../core/analysis/exclusions'
 import type { Problem } from '../../core/problems/problem'
 import type { Decision } from '../../core/report/decision'
 import type { CommandId } from './commands'
-import type { SaveKind } from './file-kinds'
+import type { FileChoice, SaveKind } from './file-kinds'
 
 export interface Host {
   readonly kind: 'electron' | 'browser'
@@ -65,8 +65,6 @@ export interface HostAbilities {
   /** `saveFile` asks for a place; otherwise the browser puts it where it puts downloads. */
   readonly asksWhere: boolean
 }
-
-export type FileChoice = 'readings' | 'procedure' | 'folder'
 
 export interface OpenedFile {
   readonly name: string

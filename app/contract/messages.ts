@@ -4,8 +4,8 @@ import { explain } from '../../core/problems/explain'
 import type { Problem } from '../../core/problems/problem'
 import { DECISIONS } from '../../core/report/decision'
 import type { HostCall } from './channels'
-import { FILE_CHOICES, SAVE_KINDS } from './file-kinds'
-import type { FileChoice, Host, Reply, ReportRequest, SavedState } from './host'
+import { FILE_CHOICES, SAVE_KINDS, type FileChoice } from './file-kinds'
+import type { Host, Reply, ReportRequest, SavedState } from './host'
 
 export const text = (most: number) => z.string().check(z.maxLength(most))
 export const list = <Item extends z.core.$ZodType>(item: Item, most: number) => z.array(item).check(z.maxLength(most))

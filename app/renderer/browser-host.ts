@@ -1,8 +1,8 @@
 /** The host where the page stands in a plain browser: its file dialog, its downloads, and what the loopback host serves. */
 import type { Problem } from '../../core/problems/problem'
-import { FILE_CHOICES, isReadingsName, SAVE_KINDS, type SaveKind } from '../contract/file-kinds'
+import { FILE_CHOICES, isReadingsName, SAVE_KINDS, type SaveKind, type FileChoice } from '../contract/file-kinds'
 import { packParts } from '../contract/frame'
-import type { FileChoice, Host, OpenedFile, Reply, ReportRequest, SavedState } from '../contract/host'
+import type { Host, OpenedFile, Reply, ReportRequest, SavedState } from '../contract/host'
 import { COUNT_HEADER, LOOPBACK_PATHS, OWN_HEADER, type NamedFile } from '../contract/loopback'
 import { readFiles } from './dropped-files'
 

@@ -2,6 +2,9 @@
  * What one run of the pipeline found: columns a site, a row a wafer, one lot. The window, the command line and the
  * report all read this and compute nothing of their own.
  */
+import type { AcceptanceRule } from '../conformity/acceptance'
+import type { GlobalRisks, Process } from '../conformity/global-risk'
+import type { Limits } from '../conformity/limits'
 import type { Verdict } from '../conformity/verdict'
 import type { GaugeStudy } from '../gauge/gauge-study'
 import type { DepthProfile } from '../ingest/read-profile'
@@ -12,7 +15,6 @@ import type { Problem } from '../problems/problem'
 import type { Procedure } from '../procedure/schema'
 import type { CheckOfLot } from './check-of-lot'
 import type { Exclusion } from './exclusions'
-import type { LotRisks } from './lot-risks'
 import type { Repeatability } from './repeatability'
 import type { Statistics } from '../statistics/summarize'
 import type { VarianceComponents } from '../statistics/components-of-variance'
@@ -49,6 +51,21 @@ export interface LotAnalysis {
   readonly problems: readonly Problem[]
   /** What was assumed or left undone, in sentences ("no temperature correction: ..."). */
   readonly notes: readonly string[]
+}
+
+/** What the decision rule risks on lots such as this one. */
+export interface LotRisks extends GlobalRisks {
+  readonly process: Process
+  /** Whether the process is as the procedure gives it; otherwise it is this lot's own. */
+  readonly isGiven: boolean
+  /** Standard uncertainty of a typical site: the median. */
+  readonly u: number
+  /** Of the limits of a site. */
+  readonly limits: Limits
+  /** Within which a typical site is accepted. */
+  readonly acceptanceLimits: Limits
+  /** The same under every rule, with the procedure's guard factor and risk. */
+  readonly byRule: Readonly<Record<AcceptanceRule, GlobalRisks>>
 }
 
 /** What is judged and mapped: statistics, limits and maps are all of this. */

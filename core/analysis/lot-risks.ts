@@ -3,24 +3,10 @@ import { ACCEPTANCE_RULES, acceptanceLimits, type AcceptanceRule } from '../conf
 import { globalRisks, type GlobalRisks, type Process } from '../conformity/global-risk'
 import { hasLimits, type Limits } from '../conformity/limits'
 import type { Procedure } from '../procedure/schema'
-import type { SiteColumns } from './lot-analysis'
+import type { LotRisks, SiteColumns } from './lot-analysis'
 import type { WaferMembers } from './wafers'
 
 export const RISK_SOURCE = 'JCGM 106:2012, clauses 8 and 9'
-
-export interface LotRisks extends GlobalRisks {
-  readonly process: Process
-  /** Whether the process is as the procedure gives it; otherwise it is this lot's own. */
-  readonly isGiven: boolean
-  /** Standard uncertainty of a typical site: the median. */
-  readonly u: number
-  /** Of the limits of a site. */
-  readonly limits: Limits
-  /** Within which a typical site is accepted. */
-  readonly acceptanceLimits: Limits
-  /** The same under every rule, with the procedure's guard factor and risk. */
-  readonly byRule: Readonly<Record<AcceptanceRule, GlobalRisks>>
-}
 
 export function lotRisks({
   procedure,

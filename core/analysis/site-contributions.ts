@@ -7,7 +7,8 @@ import { measuringSetUp } from './measuring-set-up'
 import { oneSite } from './one-site'
 import { prepareLayer } from './prepare-layer'
 import { sitePositions } from './site-positions'
-import { contributions, onResistivity, type Contribution } from './uncertainty'
+import { contributions, type Contribution } from './contributions'
+import { onResistivity } from './uncertainty'
 import { ratios } from './v-over-i'
 
 export interface SiteContributions {

@@ -1,7 +1,25 @@
 /** From the lines of a budget to an expanded uncertainty, of a site or of a mean of sites. */
 import { normalQuantile } from '../numeric/normal'
 import { studentQuantile } from '../numeric/distributions'
-import type { BudgetLine } from './working'
+
+/** What one component does to the judged quantity. */
+export interface BudgetLine {
+  readonly component: string
+  readonly title: string
+  readonly shared: boolean
+  /** Standard uncertainty of the component itself, in `unit`. */
+  readonly u: number
+  readonly unit: string
+  /** Infinite where it is known well. */
+  readonly degreesOfFreedom: number
+  readonly evaluation: 'A' | 'B'
+  /** What a unit of the component does to the judged quantity, relative [1/unit]. */
+  readonly sensitivity: number
+  /** Relative effect on the judged quantity: derivative times standard uncertainty, over the value [-]. */
+  readonly relative: number
+  /** Of the sum of squares [-]. */
+  readonly share: number
+}
 
 export interface ExpandedUncertainty {
   /** Relative to the value. */

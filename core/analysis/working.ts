@@ -1,4 +1,4 @@
-import type { ExpandedUncertainty } from './uncertainty-budget'
+import type { BudgetLine, ExpandedUncertainty } from './uncertainty-budget'
 
 /** The chain from V and I to the reported value at one site, as a person would write it out by hand. */
 export interface Working {
@@ -11,24 +11,6 @@ export interface Working {
   readonly budget: readonly BudgetLine[]
   /** Of the judged quantity. */
   readonly expanded: ExpandedUncertainty
-}
-
-export interface BudgetLine {
-  readonly component: string
-  readonly title: string
-  readonly shared: boolean
-  /** Standard uncertainty of the component itself, in `unit`. */
-  readonly u: number
-  readonly unit: string
-  /** Infinite where it is known well. */
-  readonly degreesOfFreedom: number
-  readonly evaluation: 'A' | 'B'
-  /** What a unit of the component does to the judged quantity, relative [1/unit]. */
-  readonly sensitivity: number
-  /** Relative effect on the judged quantity: derivative times standard uncertainty, over the value [-]. */
-  readonly relative: number
-  /** Of the sum of squares [-]. */
-  readonly share: number
 }
 
 export interface WorkingStep {

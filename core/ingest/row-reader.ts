@@ -5,18 +5,19 @@
 import type { FileProblem } from '../problems/problem'
 import { ReadingCheck, LARGEST } from './check-reading'
 import { isUnitsRow, isWordRow, trimmed, widthOf } from './find-header'
-import { isStatisticsWord, namesFromFile } from './labels'
 import { makeLayout } from './layout'
-import type { Layout, NumberCell } from './layout'
+import type { Layout } from './layout'
 import type { LotDraft } from './lot-draft'
 import { headerStrength } from './match-columns'
-import { decimalCode, explainNumber, isBlank, parseNumber } from './parse-number'
+import { decimalCode, isBlank, parseNumber } from './parse-number'
 import type { DecimalMark } from './parse-number'
 import { TimeColumnReader } from './parse-time'
 import { isPreambleRow, readPreambleRow } from './preamble'
 import type { ReadOptions } from './read-options'
 import { NUMBERED_BIT, readRole } from './read-role'
 import type { ColumnMatch } from './readings'
+import { shapeFault, valueFault } from './row-fault'
+import { RowNaming } from './row-naming'
 import { RowProblems } from './row-problems'
 import { Section, joinDate } from './section'
 import type { Rows } from './split-rows'
@@ -42,12 +43,7 @@ export class RowReader {
   decimalMark: DecimalMark = '.'
   private isJustAfterHeader = false
   private readonly times = new TimeColumnReader()
-  private lastWaferCell: string | null = null
-  private lastSlotCell = ''
-  private lastWafer = -1
-  private lastLotCell: string | null = null
-  private lastWord = ''
-  private readonly fileWafer: string
+  private readonly naming: RowNaming
 
   constructor(
     private readonly draft: LotDraft,
@@ -57,12 +53,12 @@ export class RowReader {
     private readonly options: ReadOptions,
   ) {
     this.problems = new RowProblems(file)
-    this.fileWafer = namesFromFile(file).wafer
+    this.naming = new RowNaming(draft, file, this.section)
   }
 
   readPreamble(cells: readonly string[]): void {
     if (cells.every(isBlank) || /^sep=.?$/i.test(cells[0].trim())) return
-    this.lastWafer = -1
+    this.naming.forgetWafer()
     const isRead = this.section.take(readPreambleRow(cells, this.delimiter))
     if (!isRead) {
       this.note(`the temperature "${this.section.temperatureText}" of the preamble can't be read and is left out`)
@@ -81,13 +77,12 @@ export class RowReader {
     this.names = layout.headers
     this.hasLong ||= layout.isLong
     this.isJustAfterHeader = true
-    this.lastWafer = -1
-    this.lastWaferCell = null
+    this.naming.forgetWafer()
     this.draft.columns.reserve(1)
     this.draft.columns.clearNext()
     this.bind()
     if (layout.at.wafer < 0 && layout.at.slot < 0 && this.section.wafer === '' && this.section.slot === '') {
-      this.note(`the wafer is named after the file: ${this.fileWafer}`)
+      this.note(`the wafer is named after the file: ${this.naming.fileWafer}`)
     }
     return true
   }
@@ -149,13 +144,14 @@ export class RowReader {
     const role = layout.isLong ? readRole(cells, layout.at) : 0
     if (role < 0 || !this.check!.isGood(row, role)) return false
     const { at } = layout
-    if (this.isStatistics(cells[0]) || (at.site > 0 && this.isStatistics(cells[at.site]))) return false
-    const wafer = this.waferOf(cells)
+    const { naming } = this
+    if (naming.isStatistics(cells[0]) || (at.site > 0 && naming.isStatistics(cells[at.site]))) return false
+    const wafer = naming.waferOf(cells, at)
     if (wafer < 0) return false
-    if (at.lot >= 0) this.readLot(cells[at.lot])
+    if (at.lot >= 0) naming.readLot(cells[at.lot])
     if (layout.isPolar) turnPolar(columns.number('x_mm'), columns.number('y_mm'), row)
     columns.wafer[row] = wafer
-    columns.site[row] = this.siteOf(cells, wafer, line)
+    columns.site[row] = naming.siteOf(cells, at, wafer, line)
     columns.file[row] = this.fileIndex
     columns.line[row] = line
     columns.role[row] = at.site < 0 ? role | NUMBERED_BIT : role
@@ -183,47 +179,6 @@ export class RowReader {
     this.isJustAfterHeader = false
     this.section.close()
     this.keepMatches()
-  }
-
-  /** Asked of every row, so the usual answers are quick: a number, or the same word as in the row before. */
-  private isStatistics(cell: string): boolean {
-    if (isLikeNumber(cell) || cell === this.lastWord) return false
-    if (isStatisticsWord(cell)) return true
-    this.lastWord = cell
-    return false
-  }
-
-  /** -1 where the row leaves it empty. */
-  private waferOf(cells: readonly string[]): number {
-    const { at } = this.layout!
-    const waferCell = at.wafer >= 0 ? cells[at.wafer] : ''
-    const slotCell = at.slot >= 0 ? cells[at.slot] : ''
-    if (this.lastWafer >= 0 && waferCell === this.lastWaferCell && slotCell === this.lastSlotCell) return this.lastWafer
-    let id = readTextCell(waferCell)
-    let slot = readTextCell(slotCell)
-    if (at.wafer < 0 && at.slot < 0) {
-      slot = this.section.slot
-      id = this.section.wafer || slot || this.fileWafer
-    } else if (at.wafer < 0) id = slot
-    else if (id === '') id = slot
-    if (id === '' || isStatisticsWord(waferCell)) return -1
-    this.lastWaferCell = waferCell
-    this.lastSlotCell = slotCell
-    return (this.lastWafer = this.draft.wafers.of(id, slot))
-  }
-
-  private siteOf(cells: readonly string[], wafer: number, line: number): number {
-    const { at } = this.layout!
-    const { sites, wafers } = this.draft
-    if (at.site < 0) return sites.ofNumber(wafers.nextSite(wafer))
-    const cell = cells[at.site]
-    return cell.trim() === '' ? sites.ofText(`line ${line}`) : sites.ofCell(cell)
-  }
-
-  private readLot(cell: string): void {
-    if (cell === this.lastLotCell || isBlank(cell)) return
-    this.lastLotCell = cell
-    this.draft.nameLot(readTextCell(cell), this.file)
   }
 
   private fillFromPreamble(cells: readonly string[], row: number, line: number): void {
@@ -284,72 +239,28 @@ export class RowReader {
   }
 
   private rejectReading(cells: readonly string[], line: number, filled: number): void {
-    const { width, numbers, headers, at } = this.layout!
-    if ([0, at.site, at.wafer].some((place) => isStatisticsWord(cells[place] ?? ''))) {
-      return this.reject(line, cells, 'looks like statistics or an end mark, not like a reading')
-    }
-    if (cells.length < width || filled > width) {
-      const count = cells.length < width ? cells.length : filled
-      return this.reject(line, cells, `has ${count} ${count === 1 ? 'field' : 'fields'} where the header has ${width}`)
-    }
+    const layout = this.layout!
+    const fault = shapeFault(cells, layout, filled)
+    if (fault !== null) return this.reject(line, cells, fault)
     this.rows++
-    const wafer = this.waferOf(cells)
+    const wafer = this.naming.waferOf(cells, layout.at)
     if (wafer >= 0) this.draft.wafers.reject(wafer)
-    if (wafer >= 0 && at.site < 0) this.draft.wafers.nextSite(wafer)
-    const bad = numbers.find((cell) => !this.isNumberCell(cells, cell))
-    if (bad) return this.problems.cell(line, bad.header, cells[bad.at], this.explainCell(cells[bad.at]))
-    if (this.layout!.isLong && readRole(cells, at) < 0) {
-      const place =
-        at.direction >= 0 && readRole(cells, { direction: at.direction, configuration: -1 }) < 0
-          ? at.direction
-          : at.configuration
-      return this.problems.cell(line, headers[place], cells[place], 'is none of A, B, forward, reverse, + and -')
-    }
-    this.rejectNumbers(cells, line)
+    if (wafer >= 0 && layout.at.site < 0) this.draft.wafers.nextSite(wafer)
+    const { header, cell, why } = valueFault(cells, layout, this.decimalMark, this.check!, this.draft.columns)
+    if (cell === null) this.problems.row(line, header, cells.join(this.delimiter), why)
+    else this.problems.cell(line, header, cell, why)
   }
 
-  private rejectNumbers(cells: readonly string[], line: number): void {
-    const { numbers, at, headers } = this.layout!
-    const { columns } = this.draft
-    const role = this.layout!.isLong ? readRole(cells, at) : 0
-    if (this.check!.isGood(columns.count, role)) {
-      const place = at.wafer >= 0 ? at.wafer : at.slot
-      return this.problems.cell(line, headers[place] ?? 'wafer', cells[place] ?? '', 'is empty: the row names no wafer')
-    }
-    const { column, why, isCell } = this.check!.explain(columns.count, columns, role)
-    const place = numbers.find((cell) => cell.target === column)
-    const header = place?.header ?? column
-    if (isCell) this.problems.cell(line, header, cells[place?.at ?? -1] ?? '', why)
-    else this.problems.row(line, header, cells.join(this.delimiter), why)
-  }
-
-  private isNumberCell(cells: readonly string[], { at, shift }: NumberCell): boolean {
-    const value = parseNumber(cells[at], this.decimal, shift)
-    return (value < LARGEST && value > -LARGEST) || isBlank(cells[at])
-  }
-
-  private explainCell(cell: string): string {
-    const value = parseNumber(cell, this.decimal, 0)
-    return value === value ? 'is too large: an overload mark of the meter' : explainNumber(cell, this.decimalMark)
-  }
-
-  /** A row too broken to say which wafer it belongs to is laid to the one before it. */
+  /** A row too broken to say which wafer it belongs to is laid to that of the row before. */
   private reject(line: number, cells: readonly string[], why: string): void {
     this.rows++
-    if (this.lastWafer >= 0) this.draft.wafers.reject(this.lastWafer)
+    if (this.naming.wafer >= 0) this.draft.wafers.reject(this.naming.wafer)
     this.problems.row(line, '', cells.join(this.delimiter), why)
   }
 
   private note(sentence: string): void {
     this.draft.notes.add(`${this.file}: ${sentence}`)
   }
-}
-
-/** Begins and ends as a number does; nothing surer is needed to pass over the many. */
-function isLikeNumber(cell: string): boolean {
-  let at = 0
-  while (cell.charCodeAt(at) === 32) at++
-  return !(cell.charCodeAt(at) > 57) && !(cell.charCodeAt(cell.length - 1) > 57)
 }
 
 function withUnit(header: string, cell: string): string {

@@ -1,5 +1,5 @@
 /** The lowest shapes of a trend surface in the terms people use: how much, and which way. */
-import type { TrendSurface, TrendTerm } from './trend-surface'
+import type { ZernikeIndex } from './zernike'
 
 /** The best plane through the surface. */
 export interface Tilt {
@@ -29,7 +29,23 @@ export interface Saddle {
   readonly axis_deg: number | null
 }
 
-export function shapesOf(terms: readonly TrendTerm[]): Pick<TrendSurface, 'mean' | 'tilt' | 'bowl' | 'saddle'> {
+export interface TrendShapes {
+  /** Mean of the surface over the disc. */
+  readonly mean: number
+  readonly tilt: Tilt
+  /** Null for a plane. */
+  readonly bowl: Bowl | null
+  /** Null for a plane or bowl. */
+  readonly saddle: Saddle | null
+}
+
+/** A shape and how much of it there is. */
+export interface ShapeAmount extends ZernikeIndex {
+  /** In the unit of the values: the standard deviation over the disc that the shape alone would give. */
+  readonly coefficient: number
+}
+
+export function shapesOf(terms: readonly ShapeAmount[]): TrendShapes {
   const find = (n: number, m: number) => terms.find((term) => term.n === n && term.m === m)?.coefficient
   const mean = find(0, 0) ?? NaN
   const percent = (amount: number) => (mean > 0 ? (100 * amount) / mean : null)
@@ -54,7 +70,7 @@ function tiltOf(alongX: number, alongY: number, percent: Percent): Tilt {
 }
 
 /** An even shape of degree n is sqrt(n + 1) at the edge, at the centre the same, with the other sign for n = 2, 6. */
-function bowlOf(bowl: number | undefined, terms: readonly TrendTerm[], percent: Percent): Bowl | null {
+function bowlOf(bowl: number | undefined, terms: readonly ShapeAmount[], percent: Percent): Bowl | null {
   if (bowl === undefined) return null
   const rises = terms.filter(({ n, m }) => m === 0 && n % 4 === 2)
   const edgeMinusCentre = 2 * Math.sqrt(3) * bowl

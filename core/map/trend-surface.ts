@@ -2,18 +2,16 @@
 import { CoreError, requireRange } from '../problems/problem'
 import { prepareLeastSquares, type LeastSquares, type LeastSquaresFit } from './least-squares'
 import type { Targets } from './thin-plate-spline'
-import { shapesOf, type Bowl, type Saddle, type Tilt } from './trend-shapes'
+import { shapesOf, type ShapeAmount, type TrendShapes } from './trend-shapes'
 import {
   TREND_GROUPS, TREND_ORDERS, trendGroupOf, trendTerms, type TrendGroupId, type TrendOrder,
 } from './trend-terms' // prettier-ignore
 import { osaIndex, zernikeColumn, zernikeName, type ZernikeIndex } from './zernike'
 
-export interface TrendTerm extends ZernikeIndex {
+export interface TrendTerm extends ShapeAmount {
   /** OSA/ANSI single index. */
   readonly j: number
   readonly name: string
-  /** In the unit of the values: the standard deviation over the disc that the shape alone would give. */
-  readonly coefficient: number
   readonly standardError: number
 }
 
@@ -28,7 +26,7 @@ export interface TrendGroup {
   readonly f: number
 }
 
-export interface TrendSurface {
+export interface TrendSurface extends TrendShapes {
   /** What was fitted, and what had been asked for. */
   readonly order: TrendOrder
   readonly requestedOrder: TrendOrder
@@ -50,13 +48,6 @@ export interface TrendSurface {
   readonly rSquared: number
   /** Below 0 where the surface explains less than as many random terms would. */
   readonly adjustedRSquared: number
-  /** Mean of the surface over the disc. */
-  readonly mean: number
-  readonly tilt: Tilt
-  /** Null for a plane. */
-  readonly bowl: Bowl | null
-  /** Null for a plane or bowl. */
-  readonly saddle: Saddle | null
   /** The surface anywhere; beyond the disc, or where no site is near, it is a guess. */
   evaluate(targets: Targets): Float64Array
 }

@@ -9,7 +9,7 @@ import { measuringSetUp, type MeasuringSetUp } from '../analysis/measuring-set-u
 import { oneSite } from '../analysis/one-site'
 import { prepareLayer } from '../analysis/prepare-layer'
 import { sitePositions, type SitePositions } from '../analysis/site-positions'
-import type { ComponentId, Contribution } from '../analysis/uncertainty'
+import type { ComponentId, Contribution } from '../analysis/contributions'
 import { ratios } from '../analysis/v-over-i'
 import { CoreError } from '../problems/problem'
 import type { Procedure } from '../procedure/schema'

@@ -1,28 +1,9 @@
 /** What no single key can tell: keys that need each other, exclude each other or contradict each other. */
 import { isAcceptor } from '../silicon/dopants'
 import type { ProcedureProblem } from '../problems/problem'
+import { blameIn, type Blame, type Sections } from './blame'
 import { limitChecks } from './limit-checks'
 import type { Procedure } from './schema'
-import { foundText } from './shape-problems'
-import { whyNeeded } from './why-needed'
-
-/** The sections that read well on their own; a bad one must not hide what is wrong in the others. */
-export type Sections = Partial<Procedure>
-
-/** Makes the problem of one key; the file's name is put in once. */
-export interface Blame {
-  readonly missing: (key: string) => ProcedureProblem
-  readonly bad: (key: string, found: unknown, allowed: string) => ProcedureProblem
-  readonly reversed: (key: string, lower: number, upper: number) => ProcedureProblem
-}
-
-export function blameIn(file: string): Blame {
-  return {
-    missing: (key) => ({ kind: 'missing-key', file, key, why: whyNeeded(key) }),
-    bad: (key, found, allowed) => ({ kind: 'bad-value', file, key, found: foundText(found), allowed }),
-    reversed: (key, lower, upper) => ({ kind: 'limits-reversed', file, key, lower, upper }),
-  }
-}
 
 export function crossChecks(sections: Sections, file: string): readonly ProcedureProblem[] {
   const blame = blameIn(file)

@@ -1,6 +1,6 @@
 /** Limits that contradict themselves, each other or the quantity that is judged. */
 import type { ProcedureProblem } from '../problems/problem'
-import type { Blame, Sections } from './cross-checks'
+import type { Blame, Sections } from './blame'
 import type { Procedure } from './schema'
 
 type Limits = Procedure['limits']

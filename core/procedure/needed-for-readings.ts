@@ -1,6 +1,6 @@
 /** What a procedure lacks for the readings it is used with; the procedure alone can't tell. */
 import type { ProcedureProblem } from '../problems/problem'
-import { blameIn } from './cross-checks'
+import { blameIn } from './blame'
 import type { Procedure } from './schema'
 
 export interface ReadingsGive {

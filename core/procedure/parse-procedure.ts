@@ -1,7 +1,7 @@
 /** A procedure file's text to a procedure with every default filled in, or to everything that is wrong with it. */
 import type { ProcedureProblem } from '../problems/problem'
 import { crossChecks } from './cross-checks'
-import type { Sections } from './cross-checks'
+import type { Sections } from './blame'
 import { defaultsUsed } from './defaults-used'
 import type { DefaultUsed } from './defaults-used'
 import { dotted, isObject, valueAt } from './key-shape'

@@ -5,7 +5,7 @@ import { interpolatorsFor, METHOD_TITLES, type InterpolationMethod } from '../ma
 import { processFitter } from '../map/process-surface'
 import type { Outline } from '../wafer/outline'
 import type { BandScale } from './figures/band-scale'
-import type { MapContour, MapSites } from './figures/wafer-map'
+import type { MapContour, MapSites } from './figures/map-input'
 
 export type MapDetail = 'large' | 'small'
 

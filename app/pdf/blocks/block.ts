@@ -1,20 +1,14 @@
 /** How any block is set: how high it will be, where it may start, and the setting itself. */
-import type { Block } from '../../../core/report/document'
+import { COLUMN_GAP_PT, columnWidths_pt, type Block, type ColumnsBlock } from '../../../core/report/document'
 import type { Paper } from '../paper'
-import { columnsHeight, drawColumns } from './columns'
 import { drawFigures, figuresHeight } from './figures'
 import { drawHeading, headingHeight } from './heading'
 import { drawKeyValues, keyValuesHeight } from './key-values'
 import { drawList, drawParagraph, listHeight, paragraphHeight } from './paragraph'
+import type { Place } from './place'
 import { drawSignature, signatureHeight } from './signature'
 import { drawTable, tableStartHeight } from './table'
 import { drawVerdict, verdictHeight } from './verdict'
-
-/** Where on the paper a block goes; the cursor says how far down. */
-export interface Place {
-  readonly x: number
-  readonly width: number
-}
 
 /** What must fit below the cursor for the block to begin there: all of it, or its first lines where it may break. */
 export function startHeight(block: Block, paper: Paper, width: number): number {
@@ -65,4 +59,28 @@ export function drawBlock(block: Block, paper: Paper, place: Place): void {
     case 'page-break':
       return paper.y > paper.top ? paper.newPage() : undefined
   }
+}
+
+/** Columns hold blocks themselves. */
+function columnsHeight(block: ColumnsBlock, paper: Paper, width: number): number {
+  const widths = columnWidths_pt(block, width)
+  const heights = block.columns.map((blocks, i) =>
+    blocks.reduce((sum, each) => sum + startHeight(each, paper, widths[i]), 0),
+  )
+  return Math.max(0, ...heights)
+}
+
+/** Each stack from the same height; the cursor ends below the tallest. */
+function drawColumns(block: ColumnsBlock, paper: Paper, { x, width }: Place): void {
+  const widths = columnWidths_pt(block, width)
+  const top = paper.y
+  let lowest = top
+  let left = x
+  block.columns.forEach((blocks, i) => {
+    paper.y = top
+    for (const each of blocks) drawBlock(each, paper, { x: left, width: widths[i] })
+    lowest = Math.max(lowest, paper.y)
+    left += widths[i] + COLUMN_GAP_PT
+  })
+  paper.y = lowest
 }

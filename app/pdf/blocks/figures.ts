@@ -1,7 +1,7 @@
 import type { FiguresBlock } from '../../../core/report/document'
 import { drawDrawing } from '../draw-shapes'
 import type { Paper } from '../paper'
-import type { Place } from './block'
+import type { Place } from './place'
 
 const AFTER_PT = 6
 

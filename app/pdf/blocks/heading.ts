@@ -2,7 +2,7 @@ import type { HeadingBlock } from '../../../core/report/document'
 import { INK, QUIET_INK, RULE } from '../../../core/report/figures/ink'
 import { SMALL_PT, TEXT_PT, TITLE_PT } from '../fonts'
 import type { Paper } from '../paper'
-import type { Place } from './block'
+import type { Place } from './place'
 
 const QUIET = { font: 'regular', size: TEXT_PT, fill: QUIET_INK } as const
 

@@ -2,7 +2,7 @@ import type { KeyValue, KeyValuesBlock } from '../../../core/report/document'
 import { INK, QUIET_INK } from '../../../core/report/figures/ink'
 import { LEADING, SMALL_PT, TEXT_PT } from '../fonts'
 import type { Look, Paper } from '../paper'
-import type { Place } from './block'
+import type { Place } from './place'
 import { baselineOf, linesOf } from './paragraph'
 
 const KEY: Look = { font: 'regular', size: TEXT_PT, fill: QUIET_INK }

@@ -3,7 +3,7 @@ import { INK, QUIET_INK } from '../../../core/report/figures/ink'
 import { LEADING, SMALL_PT, TEXT_PT } from '../fonts'
 import type { Look, Paper } from '../paper'
 import { wrapped } from '../text-lines'
-import type { Place } from './block'
+import type { Place } from './place'
 
 const TEXT: Look = { font: 'regular', size: TEXT_PT, fill: INK }
 const QUIET: Look = { font: 'regular', size: SMALL_PT, fill: QUIET_INK }

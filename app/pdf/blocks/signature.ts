@@ -2,7 +2,7 @@ import type { SignatureBlock } from '../../../core/report/document'
 import { INK, QUIET_INK } from '../../../core/report/figures/ink'
 import { LEADING, SMALL_PT, TEXT_PT } from '../fonts'
 import type { Look, Paper } from '../paper'
-import type { Place } from './block'
+import type { Place } from './place'
 import { baselineOf, linesOf } from './paragraph'
 
 const TEXT: Look = { font: 'regular', size: TEXT_PT, fill: INK }

@@ -5,7 +5,7 @@ import { mark } from '../../../core/report/figures/marks'
 import { drawShapes } from '../draw-shapes'
 import { LEADING, SMALL_PT, TEXT_PT } from '../fonts'
 import type { Look, Paper } from '../paper'
-import type { Place } from './block'
+import type { Place } from './place'
 import { baselineOf, linesOf } from './paragraph'
 
 const TITLE: Look = { font: 'bold', size: SMALL_PT, fill: INK }

@@ -4,7 +4,7 @@ import { mark } from '../../../core/report/figures/marks'
 import { drawShapes } from '../draw-shapes'
 import { LEADING, TEXT_PT, TITLE_PT } from '../fonts'
 import type { Look, Paper } from '../paper'
-import type { Place } from './block'
+import type { Place } from './place'
 import { baselineOf, linesOf } from './paragraph'
 
 const SENTENCE: Look = { font: 'regular', size: TEXT_PT, fill: INK }

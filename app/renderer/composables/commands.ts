@@ -1,6 +1,6 @@
 import { onBeforeUnmount, onMounted } from 'vue'
 import type { CommandId } from '../../contract/commands'
-import type { FileChoice } from '../../contract/host'
+import type { FileChoice } from '../../contract/file-kinds'
 import { useHost } from '../host-key'
 import { useChoicesStore, NO_CHOICES } from '../stores/choices'
 import { useLotStore } from '../stores/lot'

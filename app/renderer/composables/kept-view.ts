@@ -1,5 +1,5 @@
 /** How things were looked at, for the session that outlives a crash. What is no longer understood is left aside. */
-import { LAYER_IDS } from '../figures/layers'
+import { LAYER_IDS } from '../figures/map-layer'
 import type { KeptView } from '../persistence/keep-stores'
 import { useSelectionStore } from '../stores/selection'
 import { COMPARISONS, GAUGE_TABS, LEAVES, ORDERS, PAGES, THEMES, TRUST_TABS, useViewStore } from '../stores/view'

@@ -8,7 +8,7 @@ import { mark } from '../../../core/report/figures/marks'
 import { axisTitle } from '../../../core/report/figures/radial-profile'
 import { waferTitle } from '../../../core/report/report-context'
 import { columnsOf } from './compared-maps'
-import { extremes } from './layers'
+import { extremes } from './map-layer'
 import { siteMark, type LotPictures } from './lot-pictures'
 
 const POINTS = 161

@@ -4,8 +4,8 @@ import { contoursOf, mapRaster, type MapDetail, type WaferSurface } from '../../
 import type { ProcessSurface } from '../../../core/map/process-surface'
 import type { Targets } from '../../../core/map/thin-plate-spline'
 import type { WaferAnalysis } from '../../../core/analysis/lot-analysis'
-import { extremes, recoloured, type MapLayer } from './layers'
 import type { LotPictures } from './lot-pictures'
+import { extremes, recoloured, type MapLayer } from './map-layer'
 
 /** Fitting more would halt the window. */
 const MOST_SITES_OF_WAFER = 400

@@ -2,7 +2,7 @@
 import type { WaferAnalysis } from '../../../core/analysis/lot-analysis'
 import { colourOf } from '../../../core/report/figures/band-scale'
 import { drawnExtent, outlineRing, SMALL_MAP_EDGES } from '../../../core/report/figures/outline-path'
-import type { MapLayer } from './layers'
+import type { MapLayer } from './map-layer'
 import type { LotPictures } from './lot-pictures'
 import { painted, ringPath, waferPlaces, waferSurface } from './map-model'
 import type { Inks } from './paint-map'

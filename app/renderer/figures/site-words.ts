@@ -3,7 +3,7 @@ import type { LotAnalysis } from '../../../core/analysis/lot-analysis'
 import { SITE_FLAGS } from '../../../core/analysis/flags'
 import { formatMm, formatQuantity, formatWithUncertainty } from '../../../core/units/format'
 import { MARK_WORDS } from '../formats/words'
-import type { MapLayer } from './layers'
+import type { MapLayer } from './map-layer'
 import { siteMark, type LotPictures } from './lot-pictures'
 
 export function flagSentences(flags: number): readonly string[] {

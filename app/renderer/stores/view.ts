@@ -1,6 +1,6 @@
 import { defineStore } from 'pinia'
 import { ref, shallowRef } from 'vue'
-import type { LayerId } from '../figures/layers'
+import type { LayerId } from '../figures/map-layer'
 import type { RackOrder } from '../figures/lot-pictures'
 
 /** In the order of the work; the last two are of the bench and need no lot. */

@@ -8,7 +8,7 @@ import type { SiteCheck } from '../../../core/monte-carlo/check-site'
 import type { Assessed, Need } from '../../../core/plan/candidates'
 import type { MapDetail, WaferSurface } from '../../../core/report/surface'
 import type { BandScale } from '../../../core/report/figures/band-scale'
-import type { MapSites } from '../../../core/report/figures/wafer-map'
+import type { MapSites } from '../../../core/report/figures/map-input'
 import type { Procedure } from '../../../core/procedure/schema'
 import type { Outline } from '../../../core/wafer/outline'
 

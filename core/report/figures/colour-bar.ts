@@ -5,7 +5,7 @@ import { formatFixed } from '../../units/format'
 import type { BandScale } from './band-scale'
 import { AXIS_PT, INK, LABEL_PT, QUIET_INK } from './ink'
 import type { SiteLimits } from './marks'
-import type { MapQuantity } from './wafer-map'
+import type { MapQuantity } from './map-input'
 
 export interface ColourBarInput {
   readonly x_pt: number

@@ -7,7 +7,7 @@ import { formatLimit } from './map-legend'
 import type { SiteLimits } from './marks'
 import { axisTitle } from './radial-profile'
 import { fromStep, niceStep } from './ticks'
-import type { MapQuantity } from './wafer-map'
+import type { MapQuantity } from './map-input'
 
 export interface HistogramInput {
   readonly title: string

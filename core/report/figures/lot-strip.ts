@@ -8,7 +8,7 @@ import { INK, LABEL_PT } from './ink'
 import type { MarkKind, SiteLimits } from './marks'
 import { mark } from './marks'
 import { smallMap } from './small-map'
-import type { MapContour, MapQuantity, MapSites } from './wafer-map'
+import type { MapContour, MapQuantity, MapSites } from './map-input'
 
 export interface StripWafer {
   readonly name: string

@@ -4,7 +4,7 @@ import { group, labelWidth_pt, line, polygon, rectangle, text } from '../drawing
 import { formatFixed, formatMm } from '../../units/format'
 import { INK, LABEL_PT, QUIET_INK } from './ink'
 import { mark, type MarkKind, type SiteLimits } from './marks'
-import type { WaferMapInput } from './wafer-map'
+import type { WaferMapInput } from './map-input'
 
 interface LegendEntry {
   /** Drawn about (0, 0), within 4 points each way. */

@@ -6,7 +6,7 @@ import { formatMm } from '../../units/format'
 import { chartFrame, frameShapes, limitLines, limitsInReach, padded, type ChartFrame } from './chart-frame'
 import { INK, RULE } from './ink'
 import { mark, markOf, type SiteLimits } from './marks'
-import type { MapQuantity, MapSites } from './wafer-map'
+import type { MapQuantity, MapSites } from './map-input'
 
 export interface RadialProfileInput {
   readonly title: string

@@ -9,7 +9,7 @@ import { colourBar } from './colour-bar'
 import { AXIS_PT, INK } from './ink'
 import { NO_LIMITS } from './marks'
 import { smallMap } from './small-map'
-import type { MapQuantity, MapSites } from './wafer-map'
+import type { MapQuantity, MapSites } from './map-input'
 
 export interface ScaledMapInput {
   readonly title: string

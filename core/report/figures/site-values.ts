@@ -7,7 +7,7 @@ import { bandOf, isDark } from './band-scale'
 import { FAINT, INK, PAPER } from './ink'
 import { placeLabels, type LabelWish, type PlacedLabel } from './label-places'
 import type { MarkKind } from './marks'
-import type { Plane, WaferMapInput } from './wafer-map'
+import type { Plane, WaferMapInput } from './map-input'
 
 export interface MarkedSite {
   /** Row of the site columns. */

@@ -5,7 +5,8 @@ import { circle, group, polygon } from '../drawing'
 import { colourOf, type BandScale } from './band-scale'
 import { FAINT, INK } from './ink'
 import { drawnExtent, outlineRing, SMALL_MAP_EDGES } from './outline-path'
-import { bandShapes, ringToPoints, type MapContour, type MapSites, type Plane } from './wafer-map'
+import type { MapContour, MapSites, Plane } from './map-input'
+import { bandShapes, ringToPoints } from './wafer-map'
 
 export interface SmallMapInput {
   readonly outline: Outline

@@ -1,63 +1,16 @@
 /** The map of one wafer: value bands, the wafer's outline, its sites with their values, and what is out of spec. */
-import type { Outline } from '../../wafer/outline'
 import type { Drawing, Shape } from '../drawing'
 import { group, line, polygon, rectangle, text } from '../drawing'
 import { formatFixed } from '../../units/format'
 import { bandOf, isDark, type BandScale } from './band-scale'
 import { colourBar } from './colour-bar'
 import { AXIS_PT, FAINT, INK, PAPER, QUIET_INK, RULE } from './ink'
+import type { MapContour, MapDies, WaferMapInput, Plane } from './map-input'
 import { mapLegend } from './map-legend'
-import { mark, markOf, type MarkKind, type SiteLimits } from './marks'
+import { mark, markOf, type MarkKind } from './marks'
 import { drawnExtent, outlineRing } from './outline-path'
 import { siteDecimals, siteValues, type MarkedSite } from './site-values'
 import { niceTicks } from './ticks'
-
-export interface MapSites {
-  /** Standard uncertainty that each site has to itself; absent: none. */
-  readonly u?: ArrayLike<number>
-  readonly x_mm: ArrayLike<number>
-  readonly y_mm: ArrayLike<number>
-  readonly value: ArrayLike<number>
-  /** Codes in the order of VERDICTS. */
-  readonly verdict: ArrayLike<number>
-  /** 1 where the site was taken or left out: it is shown, but shapes no surface. */
-  readonly excluded?: ArrayLike<number>
-}
-
-/** The region where the interpolated value is at least `threshold`, in mm. */
-export interface MapContour {
-  readonly threshold: number
-  readonly rings_mm: readonly (readonly number[])[]
-}
-
-export interface MapDies {
-  readonly centreX_mm: readonly number[]
-  readonly centreY_mm: readonly number[]
-  readonly pitchX_mm: number
-  readonly pitchY_mm: number
-}
-
-export interface MapQuantity {
-  readonly title: string
-  readonly symbol: string
-  readonly unit: string
-}
-
-export interface WaferMapInput {
-  readonly title: string
-  readonly outline: Outline
-  readonly edgeExclusion_mm: number
-  readonly quantity: MapQuantity
-  readonly sites: MapSites
-  readonly limits: SiteLimits
-  readonly scale: BandScale
-  /** Ascending thresholds; null draws the sites alone. */
-  readonly contours: readonly MapContour[] | null
-  /** Dies out of spec; null without a die grid. */
-  readonly diesOut: MapDies | null
-  readonly width_pt: number
-  readonly height_pt: number
-}
 
 /** Beyond so many sites, dots would hide the map: only the marks that say something are drawn. */
 const MOST_DOTS = 1500
@@ -65,13 +18,6 @@ const MOST_MARKS = 1500
 const AXIS_SPACE_PT = 26
 const BAR_SPACE_PT = 62
 const LEGEND_SPACE_PT = 22
-
-/** Millimetres from the wafer's centre to points on the drawing. */
-export interface Plane {
-  readonly scale_pt_per_mm: number
-  readonly x: (x_mm: number) => number
-  readonly y: (y_mm: number) => number
-}
 
 export function waferMap(input: WaferMapInput): Drawing {
   const { width_pt, height_pt } = input

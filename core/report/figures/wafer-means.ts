@@ -5,7 +5,7 @@ import { chartFrame, frameShapes, limitLines, limitsInReach, padded } from './ch
 import { AXIS_PT, QUIET_INK } from './ink'
 import { mark, markOf, type MarkKind, type SiteLimits } from './marks'
 import { axisTitle } from './radial-profile'
-import type { MapQuantity } from './wafer-map'
+import type { MapQuantity } from './map-input'
 
 export interface WaferMeansInput {
   readonly title: string

@@ -1,7 +1,8 @@
 /** The decision rule in words, the limits it makes, and what it risks. */
 import { ACCEPTANCE_RULES, acceptanceWords, type Acceptance } from '../../conformity/acceptance'
 import { limitsText } from '../../conformity/reasons'
-import { RISK_SOURCE, type LotRisks } from '../../analysis/lot-risks'
+import type { LotRisks } from '../../analysis/lot-analysis'
+import { RISK_SOURCE } from '../../analysis/lot-risks'
 import { formatQuantity, formatSignificant } from '../../units/format'
 import type { Block, TableRow } from '../document'
 import { riskCurve, riskPoints } from '../figures/risk-curve'

@@ -1,7 +1,12 @@
 /** What the standard uncertainties are made of, what they come to, and whether the first order is enough for them. */
 import { waferName } from '../../conformity/reasons'
-import type { BudgetLine, Working } from '../../analysis/working'
-import { expandedUncertainty, splitByEffect, type ExpandedUncertainty } from '../../analysis/uncertainty-budget'
+import type { Working } from '../../analysis/working'
+import {
+  expandedUncertainty,
+  splitByEffect,
+  type BudgetLine,
+  type ExpandedUncertainty,
+} from '../../analysis/uncertainty-budget'
 import { UNCERTAINTY_COMPONENTS, type UncertaintyComponent } from '../../procedure/schema'
 import { formatFixed, formatQuantity, formatSignificant } from '../../units/format'
 import type { Block, KeyValue, TableRow } from '../document'

@@ -3,7 +3,8 @@ import { VERDICTS, type WaferAnalysis } from '../../analysis/lot-analysis'
 import type { Drawing } from '../drawing'
 import { histogram } from '../figures/histogram'
 import { radialProfile } from '../figures/radial-profile'
-import { waferMap, type MapDies } from '../figures/wafer-map'
+import type { MapDies } from '../figures/map-input'
+import { waferMap } from '../figures/wafer-map'
 import { waferTitle, type ReportContext } from '../report-context'
 
 export interface FigureSize {
