@@ -7,7 +7,10 @@ import { quote, quotedList } from '../problems/quote'
 import { toBase, type Unit } from '../units/unit-register'
 import { decodeText } from './decode-text'
 import { readHeader } from './header-name'
-import { decimalCode, explainNumber, isBlank, parseNumber, type DecimalMark } from './parse-number'
+import { decimalCode, explainNumber, parseNumber, type DecimalMark } from './parse-number'
+import {
+  decimalMarkOf, isPassedOver, MAX_TABLE_PROBLEMS, SEARCHED_ROWS, TABLE_DELIMITERS, type RowFault,
+} from './small-table' // prettier-ignore
 import { splitRows, type Rows } from './split-rows'
 
 export interface TableColumn {
@@ -47,12 +50,8 @@ export interface TableFile {
   readonly sha256: string
 }
 
-const DELIMITERS = [',', ';', '\t'] as const
 const MAX_BYTES = 20_000_000
 const MAX_ROWS = 100_000
-const SEARCHED_ROWS = 200
-/** More of them are of one cause. */
-const MAX_PROBLEMS = 20
 
 /**
  * Lines that begin with # or % are comments. A text column that a row leaves blank reads as ''; a number that is not
@@ -112,7 +111,7 @@ function findHeader<Id extends string>(
   const wanted = quotedList(needed.map((id) => columns[id].example))
   let nearest = `no line of it names the columns that are needed, such as ${wanted}`
   let most = 0
-  for (const delimiter of DELIMITERS) {
+  for (const delimiter of TABLE_DELIMITERS) {
     const rows = splitRows(text, delimiter, 1)
     for (let row = 0; row < Math.min(rows.cells.length, SEARCHED_ROWS); row++) {
       if (isPassedOver(rows.cells[row])) continue
@@ -150,11 +149,6 @@ function placeColumns<Id extends string>(
   return at
 }
 
-interface Fault {
-  readonly line: number
-  readonly why: string
-}
-
 function readRows<Id extends string>(
   { rows, row, decimalMark, at }: FoundHeader<Id>,
   columns: Readonly<Record<Id, TableColumn>>,
@@ -162,8 +156,8 @@ function readRows<Id extends string>(
   const ids = Object.keys(columns) as Id[]
   const cells = Object.fromEntries(ids.map((id) => [id, []])) as unknown as Record<Id, (string | number)[]>
   const lines: number[] = []
-  const faults: Fault[] = []
-  for (let k = row + 1; k < rows.cells.length && faults.length < MAX_PROBLEMS; k++) {
+  const faults: RowFault[] = []
+  for (let k = row + 1; k < rows.cells.length && faults.length < MAX_TABLE_PROBLEMS; k++) {
     if (isPassedOver(rows.cells[k])) continue
     const values = ids.map((id) => cellOf(rows.cells[k], columns[id], at[id], decimalMark))
     const fault = values.find((value) => typeof value === 'object')
@@ -194,16 +188,4 @@ function cellOf(
     return unit === null ? value : toBase(value, unit)
   }
   return { why: `${quote(cell)} in column ${quotedList([place?.header ?? ''])} ${explainNumber(cell, mark)}` }
-}
-
-function isPassedOver(cells: readonly string[]): boolean {
-  return cells.every(isBlank) || /^\s*[#%]/.test(cells[0])
-}
-
-/** Between commas a decimal mark is a point; otherwise the one that more cells have. */
-function decimalMarkOf({ cells }: Rows, row: number, delimiter: string): DecimalMark {
-  if (delimiter === ',') return '.'
-  const numbers = cells.slice(row + 1).flat()
-  const having = (mark: RegExp): number => numbers.filter((cell) => mark.test(cell)).length
-  return having(/^\s*-?\d*,\d/) > having(/^\s*-?\d*\.\d/) ? ',' : '.'
 }

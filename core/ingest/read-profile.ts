@@ -2,13 +2,13 @@
 import type { ProfileProblem } from '../problems/problem'
 import { quote, quotedList } from '../problems/quote'
 import { decodeText } from './decode-text'
-import { decimalCode, explainNumber, isBlank, parseNumber } from './parse-number'
-import type { DecimalMark } from './parse-number'
-import { profileColumns } from './profile-header'
-import type { ProfileColumn } from './profile-header'
+import { decimalCode, explainNumber, parseNumber, type DecimalMark } from './parse-number'
+import { profileColumns, type ProfileColumn } from './profile-header'
 import type { InputFile } from './read-files'
-import { splitRows } from './split-rows'
-import type { Rows } from './split-rows'
+import {
+  decimalMarkOf, isPassedOver, MAX_TABLE_PROBLEMS, SEARCHED_ROWS, TABLE_DELIMITERS, type RowFault,
+} from './small-table' // prettier-ignore
+import { splitRows, type Rows } from './split-rows'
 
 export interface DepthProfile {
   /** The file's name. */
@@ -28,13 +28,9 @@ export interface ReadProfile {
   readonly problems: readonly ProfileProblem[]
 }
 
-const DELIMITERS = [';', '\t', ','] as const
 const MAX_BYTES = 5_000_000
 const MAX_POINTS = 20_000
 const LEAST_POINTS = 4
-const SEARCHED_ROWS = 200
-/** More of them are of one cause. */
-const MAX_PROBLEMS = 20
 
 /** Lines that begin with # or % are comments. Nothing here throws for a bad file. */
 export function readProfile({ name, bytes, sha256 }: InputFile): ReadProfile {
@@ -74,7 +70,7 @@ interface Table {
 /** Or why there is none. */
 function findTable(text: string): Table | string {
   let nearest = `no line names a depth and a concentration, such as depth_nm,concentration_cm3`
-  for (const delimiter of DELIMITERS) {
+  for (const delimiter of TABLE_DELIMITERS) {
     const rows = splitRows(text, delimiter, 1)
     for (let row = 0; row < Math.min(rows.cells.length, SEARCHED_ROWS); row++) {
       if (isPassedOver(rows.cells[row])) continue
@@ -86,32 +82,15 @@ function findTable(text: string): Table | string {
   return nearest
 }
 
-function isPassedOver(cells: readonly string[]): boolean {
-  return cells.every(isBlank) || /^\s*[#%]/.test(cells[0])
-}
-
-/** Between commas a decimal mark is a point; otherwise the one that more cells have. */
-function decimalMarkOf({ cells }: Rows, row: number, delimiter: string): DecimalMark {
-  if (delimiter === ',') return '.'
-  const numbers = cells.slice(row + 1).flat()
-  const having = (mark: RegExp): number => numbers.filter((cell) => mark.test(cell)).length
-  return having(/^\s*-?\d*,\d/) > having(/^\s*-?\d*\.\d/) ? ',' : '.'
-}
-
-interface Fault {
-  readonly line: number
-  readonly why: string
-}
-
 interface Points {
   readonly depth_um: number[]
   readonly concentration_cm3: number[]
-  readonly faults: Fault[]
+  readonly faults: RowFault[]
 }
 
 function readPoints({ rows, row, decimalMark, depth, concentration }: Table): Points {
   const points: Points = { depth_um: [], concentration_cm3: [], faults: [] }
-  for (let at = row + 1; at < rows.cells.length && points.faults.length < MAX_PROBLEMS; at++) {
+  for (let at = row + 1; at < rows.cells.length && points.faults.length < MAX_TABLE_PROBLEMS; at++) {
     const cells = rows.cells[at]
     if (isPassedOver(cells)) continue
     const read = ({ at: column, shift }: ProfileColumn): number =>
