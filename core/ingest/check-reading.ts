@@ -6,6 +6,7 @@ import { REVERSE_BIT } from './read-role'
 
 /** Meters answer 9.9E37 for an overload (SCPI 1999, volume 1, 7.2.1; from memory); no quantity we read comes near this. */
 export const LARGEST = 1e30
+export const OVERLOAD = 'is too large: an overload mark of the meter'
 /** Nor does any come near this from the other side: what is smaller is no reading, and V/I of it would leave all bounds. */
 export const SMALLEST = 1e-30
 /** A kilometre, and as many dies: no wafer is so wide. */

@@ -19,7 +19,7 @@ const SEARCH_ROWS = 500
 const MAX_COLUMNS = 1000
 
 export function findHeader(file: string, block: string, options: ReadOptions): FoundHeader | FileProblem {
-  const declared = /^sep=([,;\t])\s*$/im.exec(block.slice(0, 20))?.[1]
+  const declared = /^\s*sep=([,;\t])[^\S\n]*(?:\n|$)/i.exec(block)?.[1]
   const delimiters = options.delimiter ? [options.delimiter] : declared ? [declared] : DELIMITERS
   let best: (FoundHeader & { readonly rank: number }) | null = null
   for (const delimiter of delimiters) {

@@ -5,6 +5,7 @@
 import type { TableProblem } from '../problems/problem'
 import { quote, quotedList } from '../problems/quote'
 import { toBase, type Unit } from '../units/unit-register'
+import { LARGEST, OVERLOAD } from './check-reading'
 import { decodeText } from './decode-text'
 import { readHeader } from './header-name'
 import { decimalCode, explainNumber, parseNumber, type DecimalMark } from './parse-number'
@@ -183,9 +184,10 @@ function cellOf(
   }
   if (cell === '' && !needed) return NaN
   const value = parseNumber(cell, decimalCode(mark), 0)
-  if (!Number.isNaN(value)) {
+  if (Math.abs(value) < LARGEST) {
     const { unit } = place!
     return unit === null ? value : toBase(value, unit)
   }
-  return { why: `${quote(cell)} in column ${quotedList([place?.header ?? ''])} ${explainNumber(cell, mark)}` }
+  const why = Number.isNaN(value) ? explainNumber(cell, mark) : OVERLOAD
+  return { why: `${quote(cell)} in column ${quotedList([place?.header ?? ''])} ${why}` }
 }

@@ -1,5 +1,5 @@
 /** What is wrong with a row that isn't a good reading; asked of bad rows alone, so it may take its time. */
-import { LARGEST, type ReadingCheck } from './check-reading'
+import { LARGEST, OVERLOAD, type ReadingCheck } from './check-reading'
 import type { GrowingColumns } from './columns'
 import { isStatisticsWord } from './labels'
 import type { Layout, NumberCell } from './layout'
@@ -66,5 +66,5 @@ function isNumberCell(cells: readonly string[], { at, shift }: NumberCell, decim
 
 function explainCell(cell: string, decimalMark: DecimalMark): string {
   const value = parseNumber(cell, decimalCode(decimalMark), 0)
-  return value === value ? 'is too large: an overload mark of the meter' : explainNumber(cell, decimalMark)
+  return value === value ? OVERLOAD : explainNumber(cell, decimalMark)
 }

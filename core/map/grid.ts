@@ -57,19 +57,10 @@ export function rasterGrid(outline: Outline, across: number): RasterGrid {
   }
 }
 
-/** One value a cell from one a target, NaN off the wafer: for a picture of cells. */
-export function cellsOnWafer(grid: RasterGrid, values: Float64Array): Float64Array {
-  return spread(grid, values, (t) => grid.onWafer[t] === 1)
-}
-
-/** As `cellsOnWafer`, with the margin beyond the edge, for contours that are clipped to the outline when drawn. */
+/** One value a cell from one a target, with the margin beyond the edge: contours are clipped to the outline when drawn. */
 export function cellsWithMargin(grid: RasterGrid, values: Float64Array): Float64Array {
-  return spread(grid, values, () => true)
-}
-
-function spread(grid: RasterGrid, values: Float64Array, isWanted: (target: number) => boolean): Float64Array {
   const cells = new Float64Array(grid.columns * grid.rows).fill(NaN)
-  for (let t = 0; t < grid.cell.length; t++) if (isWanted(t)) cells[grid.cell[t]!] = values[t]!
+  for (let t = 0; t < grid.cell.length; t++) cells[grid.cell[t]] = values[t]
   return cells
 }
 

@@ -1,6 +1,6 @@
-/** A wafer's sites by circles: means ring by ring, and once round the outermost. */
+/** A wafer's sites by circles: means ring by ring. */
 import { requireRange } from '../problems/problem'
-import { azimuthalProfile, usableSites, type AzimuthalProfile, type SiteColumnsOfWafer } from './profiles'
+import { usableSites, type SiteColumnsOfWafer } from './profiles'
 
 /** One entry a ring, from the centre out. */
 export interface RingMeans {
@@ -42,12 +42,6 @@ export function ringMeans(columns: SiteColumnsOfWafer, ringWidth_mm: number): Ri
     standardError: Float64Array.from(moments, ({ standardError }) => standardError),
     count: Uint32Array.from(rings, (ring) => ring.length),
   }
-}
-
-/** The outermost ring by angle; empty where the only site lies at the centre. */
-export function outerRingProfile(columns: SiteColumnsOfWafer, ringWidth_mm: number): AzimuthalProfile {
-  const outermost = ringsOf(columns, ringWidth_mm).at(-1) ?? new Uint32Array(0)
-  return azimuthalProfile({ ...columns, sites: outermost }, 0)
 }
 
 function radiusIn({ x_mm, y_mm }: SiteColumnsOfWafer): (site: number) => number {

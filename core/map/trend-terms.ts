@@ -1,5 +1,5 @@
 /** Which shapes a trend surface is made of, and in which order each takes its share of the variance. */
-import { zernikeName, type ZernikeIndex } from './zernike'
+import type { ZernikeIndex } from './zernike'
 
 /** From the simplest up. */
 export const TREND_ORDERS = ['plane', 'bowl', 'zernike-2', 'zernike-3', 'zernike-4', 'zernike-6'] as const
@@ -8,15 +8,6 @@ export type TrendOrder = (typeof TREND_ORDERS)[number]
 /** In the order of the sequential sums of squares: what several could explain goes to the first. */
 export const TREND_GROUPS = ['tilt', 'bowl', 'higher-radial', 'two-fold', 'three-fold', 'rest'] as const
 export type TrendGroupId = (typeof TREND_GROUPS)[number]
-
-export const TREND_ORDER_TITLES: Readonly<Record<TrendOrder, string>> = {
-  plane: 'plane',
-  bowl: 'plane and bowl',
-  'zernike-2': 'Zernike polynomials to degree 2',
-  'zernike-3': 'Zernike polynomials to degree 3',
-  'zernike-4': 'Zernike polynomials to degree 4',
-  'zernike-6': 'Zernike polynomials to degree 6',
-}
 
 export const TREND_GROUP_TITLES: Readonly<Record<TrendGroupId, string>> = {
   tilt: 'tilt',
@@ -61,9 +52,4 @@ export function trendGroupOf({ n, m }: ZernikeIndex): TrendGroupId {
 /** The highest order whose terms leave at least one degree of freedom; null where not even a plane does. */
 export function highestTrendOrder(siteCount: number): TrendOrder | null {
   return TREND_ORDERS.filter((order) => trendTerms(order).length < siteCount).at(-1) ?? null
-}
-
-/** Names of terms, for tables. */
-export function trendTermNames(order: TrendOrder): string[] {
-  return trendTerms(order).map(zernikeName)
 }

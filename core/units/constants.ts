@@ -6,12 +6,6 @@
 /** Charge of the proton [C]. Exact, SI 2019. */
 export const ELEMENTARY_CHARGE_C = 1.602176634e-19
 
-/** Boltzmann constant [J/K]. Exact, SI 2019. */
-export const BOLTZMANN_J_PER_K = 1.380649e-23
-
-/** Boltzmann constant [eV/K], 8.617...e-5. Exact: the quotient of the two above. */
-export const BOLTZMANN_EV_PER_K = BOLTZMANN_J_PER_K / ELEMENTARY_CHARGE_C
-
 /** 0 degrees Celsius [K]. Exact by definition of the Celsius scale. */
 export const CELSIUS_ZERO_K = 273.15
 
@@ -20,6 +14,3 @@ export const STANDARD_TEMPERATURE_C = 23
 
 /** The same [K]. */
 export const STANDARD_TEMPERATURE_K = CELSIUS_ZERO_K + STANDARD_TEMPERATURE_C
-
-/** Atoms in crystalline silicon [cm^-3], rounded from 8 / (0.543102 nm)^3 = 4.994e22: an upper bound, not a fit. */
-export const SILICON_ATOMS_PER_CM3 = 5.0e22

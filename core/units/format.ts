@@ -46,11 +46,6 @@ export function formatScientific(value: number, digits: number): string {
   return `${value < 0 ? MINUS : ''}${mantissa} × 10${superscript(exponent)}`
 }
 
-/** Four significant digits and the unit, never a power of ten: 12 340 Ω/sq. */
-export function formatSheetResistance(value_ohm_sq: number): string {
-  return withUnit(formatSignificant(value_ohm_sq, 4), 'Ω/sq')
-}
-
 /** 1.43 × 10¹⁹ cm⁻³. A dose takes `cm⁻²` as its unit. */
 export function formatConcentration(value: number, unit: 'cm⁻³' | 'cm⁻²' = 'cm⁻³'): string {
   return withUnit(formatScientific(value, 3), unit)

@@ -1,7 +1,7 @@
 /** What is said of a single site where the pointer rests, and in the ledger. */
 import type { LotAnalysis } from '../../../core/analysis/lot-analysis'
 import { SITE_FLAGS } from '../../../core/analysis/flags'
-import { formatMm, formatQuantity, formatWithUncertainty } from '../../../core/units/format'
+import { formatQuantity, formatWithUncertainty } from '../../../core/units/format'
 import { MARK_WORDS } from '../formats/words'
 import type { MapLayer } from './map-layer'
 import { siteMark, type LotPictures } from './lot-pictures'
@@ -25,7 +25,3 @@ export function siteWords(pictures: LotPictures, site: number, layer: MapLayer):
   const kind = siteMark(pictures, site)
   return `site ${siteName(analysis, site)}: ${value}${kind === 'in-spec' ? '' : `, ${MARK_WORDS[kind]}`}`
 }
-
-export function placeWords(places: { readonly x_mm: Float64Array; readonly y_mm: Float64Array } | null, row: number): string {
-  return places ? `x ${formatMm(places.x_mm[row])}, y ${formatMm(places.y_mm[row])}` : ''
-} // prettier-ignore

@@ -1,14 +1,6 @@
 /** A procedure's file as a form sees it: a field a key, and back to the file's text. The file stays the truth. */
 import type { ColumnId } from '../../../core/ingest/readings'
-import {
-  isObject,
-  kindsOf,
-  knownKeys,
-  optionsOf,
-  procedureShape,
-  shapeAt,
-  valueAt,
-} from '../../../core/procedure/key-shape'
+import { isObject, kindsOf, optionsOf, procedureShape, shapeAt, valueAt } from '../../../core/procedure/key-shape'
 import type { KeyPath, KeyShape } from '../../../core/procedure/key-shape'
 import { meaningOf, procedureKeys } from '../../../core/procedure/keys'
 import type { ProcedureKey } from '../../../core/procedure/keys'
@@ -120,9 +112,4 @@ export function typedValue(field: FormField, text: string): unknown {
 function listOrText({ default: usual, allowed }: FormField, typed: string): unknown {
   if (!usual?.startsWith('[') && !/list|numbers/.test(allowed)) return typed
   return typed.split(/[,;]\s*|\s+/).map((part) => (Number.isNaN(Number(part)) ? part : Number(part)))
-}
-
-/** Every key that may be written, for what has no field: `knownKeys` of the columns. */
-export function columnKeys(): readonly string[] {
-  return knownKeys(shapeAt(['readings', 'columns'], {}))
 }

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { outerRingProfile, ringMeans, ringsOf } from '../../../core/map/rings'
+import { ringMeans, ringsOf } from '../../../core/map/rings'
 import { CoreError } from '../../../core/problems/problem'
 import { concentricPlan } from '../../../core/wafer/site-patterns'
 import { bumpy, columnOf, spiral } from './patterns'
@@ -37,20 +37,9 @@ describe('rings', () => {
     expect(standardError[1]).toBeCloseTo(Math.sqrt(14 / 3 / 4), 14)
   })
 
-  it('the outermost by angle', () => {
-    const { theta_deg, r_mm, value, site } = outerRingProfile(wafer, 1)
-    expect(theta_deg).toHaveLength(24)
-    theta_deg.forEach((angle, k) => {
-      expect(angle).toBeCloseTo(15 * k, 9)
-      expect(r_mm[k]).toBeCloseTo(90, 9)
-      expect(value[k]).toBe(wafer.value[site[k]])
-    })
-  })
-
   it('without sites there are none', () => {
     const nothing = { x_mm: Float64Array.of(1), y_mm: Float64Array.of(1), value: Float64Array.of(NaN) }
     expect(ringsOf(nothing, 1)).toEqual([])
-    expect(outerRingProfile(nothing, 1).value).toHaveLength(0)
     expect(ringMeans(nothing, 1).mean).toHaveLength(0)
   })
 

@@ -5,7 +5,6 @@ import {
   highestTrendOrder,
   TREND_ORDERS,
   trendGroupOf,
-  trendTermNames,
   trendTerms,
   type TrendOrder,
 } from '../../../core/map/trend-terms'
@@ -39,7 +38,6 @@ describe('the shapes of an order', () => {
     expect(trendTerms('zernike-3').map((index) => (index.n === 0 ? 'mean' : trendGroupOf(index)))).toEqual([
       'mean', 'tilt', 'tilt', 'bowl', 'two-fold', 'two-fold', 'three-fold', 'three-fold', 'rest', 'rest',
     ]) // prettier-ignore
-    expect(trendTermNames('bowl')).toEqual(['mean', 'tilt x', 'tilt y', 'bowl'])
   })
 
   it('the highest that a number of sites allows leaves a degree of freedom', () => {

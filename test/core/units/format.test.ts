@@ -7,7 +7,6 @@ import {
   formatPercent,
   formatQuantity,
   formatScientific,
-  formatSheetResistance,
   formatSignificant,
   formatWithUncertainty,
   superscript,
@@ -16,18 +15,18 @@ import {
 const THIN = '\u202f'
 
 describe('plain numbers', () => {
-  it('shows four significant digits of a sheet resistance and groups long ones', () => {
-    expect(formatSheetResistance(92.1342)).toBe('92.13 Ω/sq')
-    expect(formatSheetResistance(12340.6)).toBe(`12${THIN}340 Ω/sq`)
-    expect(formatSheetResistance(1234.56)).toBe('1235 Ω/sq')
-    expect(formatSheetResistance(0.0412345)).toBe('0.04123 Ω/sq')
-    expect(formatSheetResistance(1234567)).toBe(`1${THIN}235${THIN}000 Ω/sq`)
+  it('shows four significant digits and groups long ones', () => {
+    expect(formatSignificant(92.1342, 4)).toBe('92.13')
+    expect(formatSignificant(12340.6, 4)).toBe(`12${THIN}340`)
+    expect(formatSignificant(1234.56, 4)).toBe('1235')
+    expect(formatSignificant(0.0412345, 4)).toBe('0.04123')
+    expect(formatSignificant(1234567, 4)).toBe(`1${THIN}235${THIN}000`)
   })
 
   it('never uses an exponent where none is wanted', () => {
     fc.assert(
       fc.property(fc.double({ min: 1e-9, max: 1e23, noNaN: true }), (value) => {
-        expect(formatSheetResistance(value)).not.toMatch(/e/i)
+        expect(formatSignificant(value, 4)).not.toMatch(/e/i)
       }),
       { numRuns: 200 },
     )
@@ -46,7 +45,7 @@ describe('plain numbers', () => {
   })
 
   it('shows a dash for no value, without a unit', () => {
-    expect(formatSheetResistance(NaN)).toBe('–')
+    expect(formatSignificant(NaN, 4)).toBe('–')
     expect(formatPercent(NaN)).toBe('–')
     expect(formatConcentration(NaN)).toBe('–')
     expect(formatWithUncertainty(NaN, 1, 'Ω/sq')).toBe('–')
