@@ -39,6 +39,12 @@ const UNCERTAINTY_USAGE = `usage: persquare uncertainty FILE --procedure FILE [o
 
 exit status: 0 the first-order budget is enough there; 1 it is not; 2 not done`
 
+const FORMULAS_USAGE = `usage: persquare formulas [WORD]
+
+  WORD                 only the formulas whose name, text or source has it
+
+Prints every formula that the program computes by, with its range and source, as Markdown.`
+
 interface Command {
   /** Exit status: 0 done, and in spec where something was judged; 1 judged and not in spec throughout; 2 not done. */
   readonly run: (args: readonly string[]) => Promise<number>
@@ -58,6 +64,10 @@ const commands: Record<string, Command> = {
     usage: UNCERTAINTY_USAGE,
   },
   sites: { run: sitesCommand, usage: SITES_USAGE },
+  formulas: {
+    run: async (args) => (await import('./formulas')).formulasCommand(args),
+    usage: FORMULAS_USAGE,
+  },
 }
 
 const usage = [

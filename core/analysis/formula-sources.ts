@@ -1,14 +1,16 @@
 /** Which published formulas an analysis used, for the report's list of sources. */
-import { DUAL_SOURCE } from '../geometry/dual'
+import { CONFORMANCE_PROBABILITY } from '../conformity/formulas'
+import { DUAL, THICKNESS } from '../geometry/formulas'
 import { outlineGeometry } from '../geometry/registry'
-import { THICKNESS_SOURCE } from '../geometry/thickness'
-import { JUNCTION_SOURCE } from '../layer/junction-depth'
+import { JUNCTION_DEPTH } from '../layer/formulas'
 import { layerKind } from '../layer/registry'
 import { layerProfile } from '../layer/profiles/registry'
-import { GAUSSIAN_PROCESS_SOURCE } from '../map/gaussian-process'
+import { GAUSSIAN_PROCESS, THIN_PLATE_SPLINE } from '../map/formulas'
 import { METHOD_TITLES } from '../map/interpolator'
 import type { Procedure } from '../procedure/schema'
-import { TEMPERATURE_SOURCE } from '../silicon/temperature'
+import { TEMPERATURE_COEFFICIENT } from '../silicon/formulas'
+import type { Formula } from '../units/formula'
+import { PROPAGATION } from './formulas'
 import type { LotAnalysis } from './lot-analysis'
 import { layerMobility } from './prepare-layer'
 import { sitePositions } from './site-positions'
@@ -26,31 +28,27 @@ export function formulaSources(analysis: LotAnalysis): FormulaSource[] {
   const geometry = outlineGeometry(hasPlaces ? outline : { shape: 'infinite' })
   const kind = layerKind(layer.kind)
   const mobility = layerMobility(layer)
+  const isDual = procedure.probe.technique === 'dual' && sites.vOverIB_ohm !== null
+  const { interpolation } = procedure.map
   const entry = (id: string, title: string, reference: string): FormulaSource => ({ id, title, reference })
+  const formula = (id: string, { title, source }: Formula): FormulaSource => entry(id, title, source)
   return [
     entry('geometry', `Geometry factor: ${geometry.title}`, geometry.source),
-    ...(procedure.probe.technique === 'dual' && sites.vOverIB_ohm
-      ? [entry('dual', 'Dual configuration', DUAL_SOURCE)]
+    ...(isDual ? [formula('dual', DUAL)] : []),
+    ...(layer.kind === 'bulk'
+      ? [formula('thickness', THICKNESS), formula('temperature', TEMPERATURE_COEFFICIENT)]
       : []),
-    ...(layer.kind === 'bulk' ? [entry('thickness', 'Thickness factor', THICKNESS_SOURCE)] : []),
-    ...(layer.kind === 'bulk' ? [entry('temperature', 'Temperature coefficient', TEMPERATURE_SOURCE)] : []),
     ...kind.sources.map((reference, k) => entry(`${kind.id}-${k}`, kind.title, reference)),
     ...(layer.kind === 'doped-layer' ? [entry('profile', `Profile: ${layer.profile}`, profileSource(layer))] : []),
     ...(layer.kind === 'doped-layer' && layer.diffusionLengthUm !== undefined
-      ? [entry('junction', 'Junction depth from the diffusion length', JUNCTION_SOURCE)]
+      ? [formula('junction', JUNCTION_DEPTH)]
       : []),
     ...(mobility ? [entry(mobility.id, `Mobility model: ${mobility.title}`, mobility.source)] : []),
     entry('uniformity', 'Non-uniformity figures SUP and HLV', 'SEMI MF1618-1104'),
-    entry('uncertainty', 'Propagation of uncertainty', 'JCGM 100:2008, 5.1.2'),
-    entry('conformance', 'Probability to conform', 'JCGM 106:2012, clause 7'),
+    formula('uncertainty', PROPAGATION),
+    formula('conformance', CONFORMANCE_PROBABILITY),
     ...(analysis.dies
-      ? [
-          entry(
-            'dies',
-            `Dies between sites: ${METHOD_TITLES[procedure.map.interpolation]}`,
-            SURFACE_SOURCES[procedure.map.interpolation],
-          ),
-        ]
+      ? [entry('dies', `Dies between sites: ${METHOD_TITLES[interpolation]}`, SURFACES[interpolation].source)]
       : []),
   ]
 }
@@ -59,8 +57,4 @@ function profileSource({ profile, profileFile }: Extract<Procedure['layer'], { k
   return profile === 'tabulated' ? `the file ${profileFile}` : layerProfile(profile).source
 }
 
-const SURFACE_SOURCES = {
-  'thin-plate-spline':
-    'J. Duchon, in: Constructive Theory of Functions of Several Variables, Springer (1977) 85 (from memory)',
-  'gaussian-process': GAUSSIAN_PROCESS_SOURCE,
-} as const
+const SURFACES = { 'thin-plate-spline': THIN_PLATE_SPLINE, 'gaussian-process': GAUSSIAN_PROCESS } as const

@@ -1,12 +1,13 @@
 /** What a decision rule risks on lots such as this one. */
 import { ACCEPTANCE_RULES, acceptanceLimits, type AcceptanceRule } from '../conformity/acceptance'
+import { DECISION_RULES } from '../conformity/formulas'
 import { globalRisks, type GlobalRisks, type Process } from '../conformity/global-risk'
 import { hasLimits, type Limits } from '../conformity/limits'
 import type { Procedure } from '../procedure/schema'
 import type { LotRisks, SiteColumns } from './lot-analysis'
 import type { WaferMembers } from './wafers'
 
-export const RISK_SOURCE = 'JCGM 106:2012, clauses 8 and 9'
+export const RISK_SOURCE = DECISION_RULES.source
 
 export function lotRisks({
   procedure,

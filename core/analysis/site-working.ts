@@ -7,6 +7,7 @@ import { STANDARD_TEMPERATURE_C } from '../units/constants'
 import { formatQuantity, formatSignificant } from '../units/format'
 import { correct, type Corrections } from './corrections'
 import { layerResults } from './layer-results'
+import { POLARITIES } from './formulas'
 import type { LotAnalysis } from './lot-analysis'
 import { measuringSetUp, type MeasuringSetUp } from './measuring-set-up'
 import { oneSite } from './one-site'
@@ -17,11 +18,9 @@ import { contributions, type Contribution } from './contributions'
 import { onResistivity } from './uncertainty'
 import { expandedUncertainty, type BudgetLine } from './uncertainty-budget'
 import { ratios } from './v-over-i'
+import { CONFORMANCE_PROBABILITY } from '../conformity/formulas'
 import { VERDICTS } from '../conformity/verdict'
 import type { Working, WorkingStep } from './working'
-
-const REVERSAL_SOURCE = 'Mean of forward and reverse V/I: SEMI MF1527-1104 eq. R2-3'
-const CONFORMANCE_SOURCE = 'JCGM 106:2012 clause 7'
 
 /** One site taken through the same functions as the lot, with what each step used. */
 export function siteWorking(analysis: LotAnalysis, site: number): Working {
@@ -109,7 +108,7 @@ function ratioStep({ analysis, site, corrections, parts }: WorkingInput): Workin
     u: value * relative(parts, 'currentRel', 'voltageRel', 'thermalEmfUV'),
     unit: 'Ω',
     formula,
-    source: REVERSAL_SOURCE,
+    source: POLARITIES.source,
   }
 }
 
@@ -240,7 +239,15 @@ function judgementSteps({ analysis, site }: WorkingInput): WorkingStep[] {
   ].join('')
   const title = `Probability to conform; verdict: ${VERDICTS[sites.verdict[site]].replace('-', ' ')}`
   return [
-    { symbol: 'p_c', title, value, u: NaN, unit: '', formula: `${range} ${quantity.unit}`, source: CONFORMANCE_SOURCE },
+    {
+      symbol: 'p_c',
+      title,
+      value,
+      u: NaN,
+      unit: '',
+      formula: `${range} ${quantity.unit}`,
+      source: CONFORMANCE_PROBABILITY.source,
+    },
   ]
 }
 

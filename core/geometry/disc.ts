@@ -13,6 +13,7 @@ import type { OutlineGeometry } from './outline-geometry'
 export const disc = {
   id: 'disc',
   title: 'Disc with an insulated rim',
+  formula: 'L(i,j) = ln|z_i − z_j| + ln|R² − z_i z_j*|, z = x + iy, R the radius',
   source: 'D. E. Vaughan, Br. J. Appl. Phys. 12 (1961) 414; L. J. Swartzendruber, NBS Technical Note 199 (1964)',
   domain: 'every pin on the disc; the fiducial is not counted',
   size_mm: (outline) => outline.diameter_mm,

@@ -33,12 +33,12 @@ export function dualThicknessFactor({
   const solved = solve(a.slab, b.slab)
   const thin = solve(a.thin, b.thin)
   const dLnRatio = -(solved.dLnA * a.slope) / a.slab - (solved.dLnB * b.slope) / b.slab
-  return { value: thin.sheetResistance_ohm_sq / solved.sheetResistance_ohm_sq, dLnRatio, source: SOURCE }
+  return { value: thin.sheetResistance_ohm_sq / solved.sheetResistance_ohm_sq, dLnRatio, source: DUAL_THICKNESS_SOURCE }
 }
 
 function solve(sumA: number, sumB: number) {
   return dualSheetResistance({ resistanceA_ohm: sumA / (2 * Math.PI), resistanceB_ohm: sumB / (2 * Math.PI) })
 }
 
-const SOURCE =
+export const DUAL_THICKNESS_SOURCE =
   'Derived: exact slab series (A. Uhlir, Bell Syst. Tech. J. 34 (1955) 105) in both configurations, exact dual relation'

@@ -7,6 +7,7 @@ import type { OutlineGeometry } from './outline-geometry'
 export const infiniteSheet = {
   id: 'infinite',
   title: 'Infinite sheet',
+  formula: 'L(i,j) = ln|z_i − z_j|; equal pins: C = π/ln 2 = 4.53236 (A), 2π/ln 3 = 5.71920 (B)',
   source: 'L. B. Valdes, Proc. IRE 42 (1954) 420; SEMI MF1527-1104 eq. R2-1',
   domain: 'every edge further than about 30 pitches (0.1 %)',
   size_mm: () => Infinity,

@@ -14,6 +14,8 @@ export interface OutlineGeometry<Shape extends Outline['shape'] = Outline['shape
   /** The outline's `shape`. */
   readonly id: Shape
   readonly title: string
+  /** Of the log distance. */
+  readonly formula: string
   readonly source: string
   /** Where the factor is exact, in words. */
   readonly domain: string

@@ -16,6 +16,8 @@ import type { LogDistance, OutlineGeometry } from './outline-geometry'
 export const rectangle = {
   id: 'rectangle',
   title: 'Rectangle with insulated edges',
+  formula:
+    'L(i,j) = Σ over the four images (±x_j, ±y_j) of ln|ϑ₁(u, q)| − (Im u)² a/(π b), u = π (z_i − z_j)/2a, q = exp(−π b/a), a ≤ b the sides',
   source: 'F. M. Smits, Bell Syst. Tech. J. 37 (1958) 711; image lattice summed by theta functions (NIST DLMF 20.5)',
   domain: 'every pin on the rectangle',
   size_mm: (outline) => outline.width_mm,

@@ -28,6 +28,7 @@ export const bulk = {
   title: 'Bulk silicon',
   gives: ['resistivity', 'concentration'],
   concentrationMeans: 'dopant concentration',
+  formula: 'ρ = R_s w, w the wafer’s thickness; N from ρ by the mobility model',
   sources: [SOURCE],
   conductsThroughWafer: true,
   prepare: prepareBulk,

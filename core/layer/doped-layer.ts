@@ -22,6 +22,8 @@ export const dopedLayer = {
   title: 'Doped layer over a junction',
   gives: ['resistivity', 'concentration', 'dose'],
   concentrationMeans: 'surface concentration (peak concentration of a tabulated profile)',
+  formula:
+    '1/R_s = ∫ q μ(N + N_B) (N − N_B) dx where N > N_B, solved for the surface density N_s; dose ∫ (N − N_B) dx; mean resistivity R_s x_j',
   sources: [IRVIN],
   conductsThroughWafer: false,
   prepare: prepareDopedLayer,

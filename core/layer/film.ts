@@ -24,6 +24,7 @@ export const film = {
   title: 'Film of one resistivity',
   gives: ['resistivity', 'thickness'],
   concentrationMeans: '',
+  formula: 't = ρ/R_s where the resistivity is known, ρ = R_s t where the thickness is',
   sources: [SOURCE],
   conductsThroughWafer: false,
   prepare: prepareFilm,

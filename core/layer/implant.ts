@@ -34,6 +34,8 @@ export const implant = {
   title: 'Implant (buried Gaussian)',
   gives: ['concentration', 'dose'],
   concentrationMeans: 'peak concentration',
+  formula:
+    'N(x) = N_p exp(−(x − R_p)²/(2 ΔR_p²)), 1/R_s = ∫ q μ(N + N_B) (N − N_B) dx where N > N_B, x ≥ 0, solved for the peak N_p; dose √(2π) ΔR_p N_p',
   sources: [RANGE_SOURCE, 'J. C. Irvin, Bell Syst. Tech. J. 41 (1962) 387'],
   conductsThroughWafer: false,
   prepare: prepareImplant,

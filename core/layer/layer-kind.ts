@@ -8,6 +8,8 @@ export interface LayerKind<Settings> {
   readonly gives: readonly LayerQuantity[]
   /** What its concentration column means: "surface concentration", "dopant concentration", "peak concentration". */
   readonly concentrationMeans: string
+  /** From sheet resistance to what it gives, as text. */
+  readonly formula: string
   readonly sources: readonly string[]
   /** Whether the whole wafer thickness conducts, so that the thickness factor applies. */
   readonly conductsThroughWafer: boolean

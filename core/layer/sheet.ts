@@ -7,6 +7,7 @@ export const sheet = {
   title: 'Sheet resistance only',
   gives: [],
   concentrationMeans: '',
+  formula: 'R_s is the result itself',
   sources: [],
   conductsThroughWafer: false,
   prepare: () => ({

@@ -13,7 +13,7 @@ import { IRVIN } from './profile-integral'
 import { solvedInverse } from './solved-inverse'
 
 const UM_IN_CM = 1e-4
-const TABLE_SOURCE = 'the tabulated profile; straight lines of ln N over depth between its points'
+export const TABLE_SOURCE = 'the tabulated profile; straight lines of ln N over depth between its points'
 
 /** What the layer's functions share. */
 interface TabulatedLayer {

@@ -9,6 +9,7 @@
  * Sources: ASTM F723-99 / SEMI MF723. W. R. Thurber, R. L. Mattis, Y. M. Liu, J. J. Filliben, J. Electrochem. Soc. 127
  * (1980) 1807 (phosphorus) and 2291 (boron).
  */
+import { coefficient } from '../units/formula'
 import { CoreError, requireRange } from '../problems/problem'
 import type { Dopant } from './dopants'
 
@@ -42,15 +43,24 @@ const arsenicCoefficients = [
   -1.07748252e-6, -8.387739e-9, -1.31657e-11,
 ] as const
 
+const boronFit = { first: 1.305e16, second: 1.133e17, scale: 2.58e-19, exponent: -0.737 }
+const phosphorusFit = {
+  factor: 6.242e18,
+  above: [-3.0769, 2.2108, -0.62272, 0.057501],
+  below: [1, -0.68157, 0.19833, -0.018376],
+} as const
+
 function boronResistivity(n: number): number {
-  return 1.305e16 / n + 1.133e17 / (n * (1 + Math.pow(2.58e-19 * n, -0.737)))
+  const { first, second, scale, exponent } = boronFit
+  return first / n + second / (n * (1 + Math.pow(scale * n, exponent)))
 }
 
 function phosphorusResistivity(n: number): number {
   const y = Math.log10(n) - 16
-  const above = -3.0769 + y * (2.2108 + y * (-0.62272 + y * 0.057501))
-  const below = 1 + y * (-0.68157 + y * (0.19833 + y * -0.018376))
-  return (6.242e18 / n) * Math.pow(10, above / below)
+  const { factor, above: a, below: b } = phosphorusFit
+  const above = a[0] + y * (a[1] + y * (a[2] + y * a[3]))
+  const below = b[0] + y * (b[1] + y * (b[2] + y * b[3]))
+  return (factor / n) * Math.pow(10, above / below)
 }
 
 function arsenicResistivity(n: number): number {
@@ -59,6 +69,17 @@ function arsenicResistivity(n: number): number {
   for (let i = arsenicCoefficients.length - 1; i >= 0; i--) sum = sum * z + arsenicCoefficients[i]
   return Math.pow(10, sum)
 }
+
+function polynomial(coefficients: readonly number[], symbol: string): string {
+  return coefficients.map((c, i) => (i === 0 ? coefficient(c) : `${coefficient(c)} ${symbol}${i === 1 ? '' : `^${i}`}`)).join(' + ').replaceAll('+ -', '− ')
+} // prettier-ignore
+
+/** The curves as text, a line a dopant. */
+export const MF723_IN_WORDS: readonly string[] = [
+  `boron: ρ = ${coefficient(boronFit.first)}/N + ${coefficient(boronFit.second)}/{N [1 + (${coefficient(boronFit.scale)} N)^${boronFit.exponent}]}`,
+  `phosphorus: ρ = (${coefficient(phosphorusFit.factor)}/N) 10^(a/b), y = log₁₀ N − 16, a = ${polynomial(phosphorusFit.above, 'y')}, b = ${polynomial(phosphorusFit.below, 'y')}`,
+  `arsenic from ${coefficient(ARSENIC_FIT_FROM_CM3)} cm⁻³ (below, as phosphorus): log₁₀ ρ = ${polynomial(arsenicCoefficients, 'z')}, z = log₁₀ N − 20`,
+]
 
 /** One smooth stretch of a published curve; both ends belong to it. */
 export interface CurvePiece {

@@ -17,6 +17,10 @@ export interface MobilityModel {
   /** Stands in saved procedures; never renamed. */
   readonly id: string
   readonly title: string
+  /** As text: mu in cm^2/(V s), N the total ionised impurity density, T_n = T/300 K. */
+  readonly formula: string
+  /** The fitted numbers, a line a carrier or dopant. */
+  readonly coefficients: readonly string[]
   /** Reference with year, journal and page. */
   readonly source: string
   readonly dopants: readonly Dopant[]

@@ -3,6 +3,7 @@
  *
  * Convention: rho(23 C) = rho(T) (1 - C_T (T - 23)), C_T in 1/C at the resistivity that the piece has at 23 C.
  */
+import { coefficient } from '../units/formula'
 import { requireRange } from '../problems/problem'
 import { STANDARD_TEMPERATURE_C } from '../units/constants'
 import type { Dopant } from './dopants'
@@ -43,6 +44,12 @@ const coefficients: Readonly<Record<Dopant, Float64Array>> = {
   phosphorus: phosphorusCoefficients,
   arsenic: phosphorusCoefficients,
 }
+
+/** C_T [%/C] as text, a line a type. */
+export const COEFFICIENTS_IN_WORDS: readonly string[] = [
+  `n-type: c₀ … c₁₇ = ${Array.from(phosphorusCoefficients, coefficient).join(', ')}`,
+  `p-type: c₀ … c₁₃ = ${Array.from(boronCoefficients, coefficient).join(', ')}`,
+]
 
 /** [%/C], held at its ends outside the fitted range; no check. */
 export function coefficientAt(dopant: Dopant, resistivity_ohm_cm: number): number {

@@ -1,3 +1,4 @@
+import { coefficient } from '../../units/formula'
 import type { MobilityModel, MobilityQuery } from '../mobility-model'
 
 const electronFit = { floor: 88, lattice: 7.4e8, latticeExponent: -2.33, reference: 1.26e17 }
@@ -25,9 +26,15 @@ export function aroraMobility_cm2_per_Vs({ carrier, impurity_cm3, temperature_K 
   )
 }
 
+function inWords({ floor, lattice, latticeExponent, reference }: typeof electronFit): string {
+  return `μ_f ${floor}, μ_L ${coefficient(lattice)}, b ${latticeExponent}, N_ref ${coefficient(reference)}`
+}
+
 export const arora = {
   id: 'arora',
   title: 'Arora, Hauser and Roulston',
+  formula: 'μ = μ_f T_n^−0.57 + μ_L T^b/(1 + (N/(N_ref T_n^2.4))^α), α = 0.88 T_n^−0.146',
+  coefficients: [`electrons: ${inWords(electronFit)}`, `holes: ${inWords(holeFit)}`],
   source: 'N. D. Arora, J. R. Hauser, D. J. Roulston, IEEE Trans. Electron Devices 29 (1982) 292',
   dopants: ['boron', 'phosphorus', 'arsenic'],
   range_cm3: { min: 1e13, max: 1e20 },

@@ -1,3 +1,4 @@
+import { coefficient } from '../../units/formula'
 import type { MobilityModel, MobilityQuery } from '../mobility-model'
 
 const electronFit = { muMin: 65, muMax: 1330, reference: 8.5e16, alpha: 0.72 }
@@ -20,9 +21,15 @@ export function caugheyThomasMobility_cm2_per_Vs({ carrier, impurity_cm3 }: Mobi
   return muMin + (muMax - muMin) / (1 + Math.pow(impurity_cm3 / reference, alpha))
 }
 
+function inWords({ muMin, muMax, reference, alpha }: typeof electronFit): string {
+  return `μ_min ${muMin}, μ_max ${muMax}, N_ref ${coefficient(reference)}, α ${alpha}`
+}
+
 export const caugheyThomas = {
   id: 'caughey-thomas',
   title: 'Caughey and Thomas',
+  formula: 'μ = μ_min + (μ_max − μ_min)/(1 + (N/N_ref)^α)',
+  coefficients: [`electrons: ${inWords(electronFit)}`, `holes: ${inWords(holeFit)}`],
   source: 'D. M. Caughey, R. E. Thomas, Proc. IEEE 55 (1967) 2192',
   dopants: ['boron', 'phosphorus', 'arsenic'],
   range_cm3: { min: 1e14, max: 1e20 },

@@ -10,6 +10,8 @@ export interface ConstantMobilities {
 export const constant = {
   id: 'constant',
   title: 'Constant mobilities',
+  formula: 'μ = the number given, at every density and temperature',
+  coefficients: [],
   source: 'the two mobilities given in the procedure',
   dopants: ['boron', 'phosphorus', 'arsenic'],
   range_cm3: { min: 0, max: 1e22 },

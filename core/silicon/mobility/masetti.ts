@@ -1,3 +1,4 @@
+import { coefficient } from '../../units/formula'
 import type { Dopant } from '../dopants'
 import type { MobilityModel, MobilityQuery } from '../mobility-model'
 
@@ -45,9 +46,29 @@ export function masettiMobility_cm2_per_Vs({ carrier, dopant, impurity_cm3 }: Mo
   return carrier === 'electron' ? electronMobility(dopant, impurity_cm3) : holeMobility(impurity_cm3)
 }
 
+/** The fitted numbers as text. */
+function inWords({
+  mu0,
+  muMax,
+  mu1,
+  cr,
+  alpha,
+  cs,
+  beta,
+}: typeof holeFit | (typeof electronFits)[keyof typeof electronFits]): string {
+  return `μ₀ ${mu0}, μ_max ${muMax}, μ₁ ${mu1}, C_r ${coefficient(cr)}, α ${alpha}, C_s ${coefficient(cs)}, β ${beta}`
+}
+
 export const masetti = {
   id: 'masetti',
   title: 'Masetti, Severi and Solmi',
+  formula:
+    'electrons: μ = μ₀ + (μ_max − μ₀)/(1 + (N/C_r)^α) − μ₁/(1 + (C_s/N)^β); holes: μ = μ₀ exp(−p_c/N) + μ_max/(1 + (N/C_r)^α) − μ₁/(1 + (C_s/N)^β)',
+  coefficients: [
+    `electrons, phosphorus: ${inWords(electronFits.phosphorus)}`,
+    `electrons, arsenic: ${inWords(electronFits.arsenic)}`,
+    `holes, boron: ${inWords(holeFit)}, p_c ${coefficient(holeFit.pc)}`,
+  ],
   source: 'G. Masetti, M. Severi, S. Solmi, IEEE Trans. Electron Devices 30 (1983) 764',
   dopants: ['boron', 'phosphorus', 'arsenic'],
   range_cm3: { min: 1e13, max: 1e21 },

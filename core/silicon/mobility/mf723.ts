@@ -2,7 +2,7 @@ import { CoreError } from '../../problems/problem'
 import { ELEMENTARY_CHARGE_C, STANDARD_TEMPERATURE_K } from '../../units/constants'
 import { isAcceptor } from '../dopants'
 import type { Dopant } from '../dopants'
-import { MF723_PIECES, mf723Curve_ohm_cm } from '../mf723'
+import { MF723_PIECES, mf723Curve_ohm_cm, MF723_IN_WORDS } from '../mf723'
 import type { CurvePiece } from '../mf723'
 import type { MobilityModel, MobilityQuery } from '../mobility-model'
 
@@ -43,6 +43,8 @@ export function mf723Mobility_cm2_per_Vs({ carrier, dopant, impurity_cm3 }: Mobi
 export const mf723 = {
   id: 'mf723',
   title: 'SEMI MF723 resistivity and dopant density',
+  formula: 'ρ(N) of the standard at 23 °C; where a mobility is wanted, μ = 1/(q N ρ(N))',
+  coefficients: MF723_IN_WORDS,
   source: 'SEMI MF723 (ASTM F723-99), after W. R. Thurber et al., J. Electrochem. Soc. 127 (1980) 1807 and 2291',
   dopants: ['boron', 'phosphorus', 'arsenic'],
   /** Where all three dopants are published; one dopant's own range is that of `curvePieces`. */
