@@ -2,12 +2,15 @@ import { readFileSync } from 'node:fs'
 import { resolve } from 'node:path'
 import vue from '@vitejs/plugin-vue'
 import { defineConfig } from 'electron-vite'
+import { bundledPackages } from './build/bundled-packages'
 
 const here = import.meta.dirname
+const lists = resolve(here, 'out/packages')
 const { version } = JSON.parse(readFileSync(resolve(here, 'package.json'), 'utf8')) as { version: string }
 
 export default defineConfig({
   main: {
+    plugins: [bundledPackages(lists, 'main')],
     build: {
       outDir: 'out/main',
       rolldownOptions: {
@@ -20,6 +23,7 @@ export default defineConfig({
     },
   },
   preload: {
+    plugins: [bundledPackages(lists, 'preload')],
     build: {
       outDir: 'out/preload',
       // A sandboxed preload is one CommonJS file that requires nothing but electron.
@@ -32,7 +36,7 @@ export default defineConfig({
   },
   renderer: {
     root: resolve(here, 'app/renderer'),
-    plugins: [vue()],
+    plugins: [vue(), bundledPackages(lists, 'page')],
     define: { __VERSION__: JSON.stringify(version) },
     build: {
       outDir: resolve(here, 'out/renderer'),
@@ -40,6 +44,6 @@ export default defineConfig({
       minify: true,
       rolldownOptions: { input: { index: resolve(here, 'app/renderer/index.html') } },
     },
-    worker: { format: 'es' },
+    worker: { format: 'es', plugins: () => [bundledPackages(lists, 'workers')] },
   },
 })

@@ -1,0 +1,85 @@
+/**
+ * Writes out/third-party-licences.txt: the licence of every package whose code an installer holds, that is of the packages
+ * that stand in node_modules at run time and of those that a build took in (`bundled-packages.ts`). Electron's own
+ * licences, Chromium's among them, are laid beside it by electron-builder. Fails for a licence that nobody has allowed,
+ * and for a package that carries no text of one.
+ */
+import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs'
+import { join } from 'node:path'
+
+const ROOT = join(import.meta.dirname, '..')
+const LISTS = join(ROOT, 'out/packages')
+
+/** Permissive, and met by handing on the text. */
+const ALLOWED = [
+  'MIT', 'ISC', 'BSD-2-Clause', 'BSD-3-Clause', 'Apache-2.0', 'Apache-2.0 AND BSL-1.0', '0BSD', 'Zlib', '(MIT AND Zlib)', 'Unlicense',
+] // prettier-ignore
+
+/** What a person has looked at, and why it may ship. */
+const LOOKED_AT = {
+  'dejavu-fonts-ttf': {
+    licence: 'Bitstream Vera and DejaVu (public domain changes)',
+    why: 'fonts that may be bundled and embedded; the text is in its LICENSE',
+  },
+  'png-js': { licence: 'MIT', why: 'its package.json names none, its LICENSE is the MIT licence' },
+}
+
+/** They say MIT in package.json and README, and carry no text of it: the standard text with their author's name is taken. */
+const WITHOUT_TEXT = ['brotli', 'dfa', 'fontkit']
+
+const mitText = (holder) => `Copyright (c) ${holder}
+
+Permission is hereby granted, free of charge, to any person obtaining a copy of this software and associated documentation files (the "Software"), to deal in the Software without restriction, including without limitation the rights to use, copy, modify, merge, publish, distribute, sublicense, and/or sell copies of the Software, and to permit persons to whom the Software is furnished to do so, subject to the following conditions:
+
+The above copyright notice and this permission notice shall be included in all copies or substantial portions of the Software.
+
+THE SOFTWARE IS PROVIDED "AS IS", WITHOUT WARRANTY OF ANY KIND, EXPRESS OR IMPLIED, INCLUDING BUT NOT LIMITED TO THE WARRANTIES OF MERCHANTABILITY, FITNESS FOR A PARTICULAR PURPOSE AND NONINFRINGEMENT. IN NO EVENT SHALL THE AUTHORS OR COPYRIGHT HOLDERS BE LIABLE FOR ANY CLAIM, DAMAGES OR OTHER LIABILITY, WHETHER IN AN ACTION OF CONTRACT, TORT OR OTHERWISE, ARISING FROM, OUT OF OR IN CONNECTION WITH THE SOFTWARE OR THE USE OR OTHER DEALINGS IN THE SOFTWARE.`
+
+const read = (path) => JSON.parse(readFileSync(path, 'utf8'))
+
+/** Paths of packages below the root, such as node_modules/pdfkit. */
+function shippedPaths() {
+  const { packages } = read(join(ROOT, 'package-lock.json'))
+  const atRunTime = Object.entries(packages).filter(([path, entry]) => path !== '' && !entry.dev && !entry.devOptional)
+  if (!existsSync(LISTS)) throw new Error('nothing is built: npm run build')
+  const bundled = readdirSync(LISTS).flatMap((file) => read(join(LISTS, file)))
+  const optional = new Set(atRunTime.filter(([, entry]) => entry.optional).map(([path]) => path))
+  const all = [...new Set([...atRunTime.map(([path]) => path), ...bundled])].sort()
+  return all.filter((path) => !optional.has(path) || existsSync(join(ROOT, path)))
+}
+
+function entryOf(path) {
+  const folder = join(ROOT, path)
+  const { name, version, license, author, homepage, repository } = read(join(folder, 'package.json'))
+  const files = readdirSync(folder).filter((file) => /^(licen[cs]e|copying|notice)/i.test(file))
+  const own = files.map((file) => readFileSync(join(folder, file), 'utf8').trim()).join('\n\n')
+  const text = own === '' && WITHOUT_TEXT.includes(name) && license === 'MIT' ? mitText(author.name ?? author) : own
+  const address = homepage ?? (typeof repository === 'string' ? repository : repository?.url) ?? ''
+  return { name, version, licence: LOOKED_AT[name]?.licence ?? license, text, address }
+}
+
+const entries = shippedPaths().map(entryOf)
+const faults = entries.flatMap(({ name, version, licence, text }) => [
+  ...(ALLOWED.includes(licence) || LOOKED_AT[name]
+    ? []
+    : [`${name} ${version}: nobody has allowed its licence, ${licence}`]),
+  ...(text === '' ? [`${name} ${version}: it carries no text of its licence, ${licence}`] : []),
+])
+if (faults.length > 0) {
+  console.error(faults.join('\n'))
+  process.exit(1)
+}
+
+const rule = '='.repeat(80)
+const head = `Persquare holds code and fonts of ${entries.length} packages by others, under these licences.`
+const list = entries.map(({ name, version, licence }) => `${name} ${version}: ${licence}`).join('\n')
+/** A text that many carry stands once, under the names of all. */
+const texts = [...new Set(entries.map(({ text }) => text))].map((text) => {
+  const holders = entries.filter((entry) => entry.text === text)
+  const names = holders.map(({ name, version, address }) => `${name} ${version}  ${address}`).join('\n')
+  return `${rule}\n${names}\n\n${text}\n`
+})
+writeFileSync(join(ROOT, 'out/third-party-licences.txt'), [head, '', list, '', ...texts].join('\n'))
+console.log(
+  `out/third-party-licences.txt: ${entries.length} packages, ${[...new Set(entries.map(({ licence }) => licence))].sort().join(', ')}`,
+)
