@@ -9,6 +9,7 @@ import { join } from 'node:path'
 
 const ROOT = join(import.meta.dirname, '..')
 const LISTS = join(ROOT, 'out/packages')
+const target = process.argv[2] ?? join(ROOT, 'out/third-party-licences.txt')
 
 /** Permissive, and met by handing on the text. */
 const ALLOWED = [
@@ -79,7 +80,7 @@ const texts = [...new Set(entries.map(({ text }) => text))].map((text) => {
   const names = holders.map(({ name, version, address }) => `${name} ${version}  ${address}`).join('\n')
   return `${rule}\n${names}\n\n${text}\n`
 })
-writeFileSync(join(ROOT, 'out/third-party-licences.txt'), [head, '', list, '', ...texts].join('\n'))
+writeFileSync(target, [head, '', list, '', ...texts].join('\n'))
 console.log(
-  `out/third-party-licences.txt: ${entries.length} packages, ${[...new Set(entries.map(({ licence }) => licence))].sort().join(', ')}`,
+  `${target}: ${entries.length} packages, ${[...new Set(entries.map(({ licence }) => licence))].sort().join(', ')}`,
 )
