@@ -11,8 +11,8 @@ import { mapLayer } from './figures/layers'
 import { lotPictures } from './figures/lot-pictures'
 import { paintSmallMap } from './figures/paint-small-map'
 
-const WAFERS = 10
-const RINGS = 4
+const WAFERS = 25
+const RINGS = 3
 const CANVAS_px = 64
 const PAINTING_TURNS = 24
 
@@ -36,38 +36,54 @@ async function paintAside(analysis: LotAnalysis): Promise<void> {
 }
 
 export function rehearsalReadings(): OpenedFile {
-  const rows = ['wafer,site,x_mm,y_mm,current_A,voltage_V,current_rev_A,voltage_rev_V,temperature_C,time']
+  const rows = ['lot: rehearsal', '', 'wafer,slot,site,x_mm,y_mm,current_A,voltage_V,current_rev_A,voltage_rev_V,temperature_C,time']
   for (let wafer = 1; wafer <= WAFERS; wafer++) {
     for (let ring = 0, site = 0; ring <= RINGS; ring++) {
       for (let k = 0; k < Math.max(1, 8 * ring); k++) {
         const angle = (2 * Math.PI * k) / (8 * ring || 1)
-        const [x, y] = [22 * ring * Math.cos(angle), 22 * ring * Math.sin(angle)]
-        const voltage = (0.02 * (1 + 0.002 * ring + 0.001 * Math.sin(3 * angle + wafer))).toPrecision(7)
+        const [x, y] = [30 * ring * Math.cos(angle), 30 * ring * Math.sin(angle)]
+        // One wafer is high at the edge and one tilted, so that reasons are found and written, too.
+        const pattern = wafer === 3 ? 0.03 * ring : wafer === 5 ? 0.0005 * x : 0.002 * ring
+        const voltage = (0.0202 * (1 + pattern + 0.001 * Math.sin(3 * angle + wafer))).toPrecision(7)
         const time = `2026-01-01T00:00:${String((site * 7) % 60).padStart(2, '0')}Z`
-        rows.push(`${wafer},${++site},${x.toFixed(3)},${y.toFixed(3)},1e-3,${voltage},-1e-3,-${voltage},22.9,${time}`)
+        rows.push(`${wafer},${wafer},${++site},${x.toFixed(3)},${y.toFixed(3)},1e-3,${voltage},-1e-3,-${voltage},22.9,${time}`)
       }
     }
   }
+  rows.push('1,1,99,1,1,over,0.02,-1e-3,-0.02,22.9,')
   return { name: 'rehearsal.csv', bytes: new TextEncoder().encode(rows.join('\n')) }
-}
+} // prettier-ignore
 
 /** Of the commonest kind, with everything on. */
 export function rehearsalProcedure(): OpenedFile {
   const procedure: ProcedureInput = {
     format: PROCEDURE_FORMAT,
-    wafer: { diameterMm: 200, thicknessUm: 725, edgeExclusionMm: 3 },
-    probe: { spacingMm: 1 },
+    title: 'Rehearsal',
+    wafer: { shape: 'disc', diameterMm: 200, thicknessUm: 725, fiducial: 'notch', edgeExclusionMm: 5 },
+    probe: { spacingMm: 1, orientation: { angleDeg: 0 }, technique: 'single' },
     layer: {
       kind: 'doped-layer',
       dopant: 'boron',
       profile: 'gaussian',
       depthUm: 0.4,
       background: { dopant: 'phosphorus', concentrationCm3: 1e15 },
+      mobility: 'masetti',
     },
-    temperature: { coefficientPercentPerC: 0.1 },
-    limits: { sheetResistanceOhmSq: { target: 91, lower: 85, upper: 97 }, uniformityPercent: { upper: 2 } },
-    dieGrid: { pitchXMm: 20, pitchYMm: 20 },
-    uncertainty: { currentRel: 0.0002, voltageRel: 0.0003, spacingMm: 0.005, temperatureC: 0.3, depthUm: 0.01 },
+    temperature: { referenceC: 23, coefficientPercentPerC: 0.1 },
+    limits: {
+      sheetResistanceOhmSq: { target: 91, lower: 87, upper: 95 },
+      waferMeanOhmSq: { lower: 89, upper: 94 },
+      uniformityPercent: { upper: 2 },
+    },
+    dieGrid: { pitchXMm: 10, pitchYMm: 8, offsetXMm: 0, offsetYMm: 0 },
+    uncertainty: {
+      currentRel: 0.0002,
+      voltageRel: 0.0003,
+      spacingMm: 0.005,
+      thicknessUm: 1,
+      temperatureC: 0.3,
+      depthUm: 0.01,
+    },
   }
   return { name: 'rehearsal.json', bytes: new TextEncoder().encode(JSON.stringify(procedure)) }
 }
