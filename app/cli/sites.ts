@@ -46,6 +46,9 @@ exit status: 0 planned; 1 no plan sees the effect so surely; 2 not planned`
 
 const PLANS = ['circles', 'rows', 'diameter-sites', 'equal-area', 'dies'] as const
 
+/** Those that ask what a plan sees. */
+const OF_EFFECT = ['size-percent', 'repeatability-percent', 'power', 'alpha', 'json'] as const
+
 const OPTIONS = {
   circles: { type: 'string' },
   rows: { type: 'string' },
@@ -73,6 +76,9 @@ type Given = ReturnType<typeof namedOptions<typeof OPTIONS>>
 export async function sitesCommand(args: readonly string[]): Promise<number> {
   const given = namedOptions(args, OPTIONS)
   if (given.effect !== undefined) return askPlans(given)
+  for (const name of OF_EFFECT) {
+    if (given[name] !== undefined) refuse(`--${name}`, 'it has a meaning only together with --effect')
+  }
   const { text, said } = planText(given)
   if (said) console.error(said)
   process.stdout.write(text)
@@ -132,12 +138,17 @@ function planObject(assessed: readonly Assessed[], best: Assessed | null, need: 
   }
 } // prettier-ignore
 
+/** A pattern larger than the value itself is none. */
+function smallestWords(smallest: number): string {
+  return smallest <= 1 ? formatSignificant(100 * smallest, 3) : 'not at all'
+}
+
 function planWords(assessed: readonly Assessed[], best: Assessed | null, { effect, size, repeatability, power, alpha }: Need): string {
   const percent = (share: number): string => formatSignificant(100 * share, 3)
   const { title, size: words } = EFFECTS[effect]
   const rows = assessed.map((entry) => [
     `${entry === best ? '> ' : '  '}${entry.title}`, String(entry.plan.count), formatFixed(100 * entry.detection, 1),
-    percent(entry.smallest), percent(entry.bias * size),
+    smallestWords(entry.smallest), percent(entry.bias * size),
   ])
   return [
     `A ${title} of ${percent(size)} % (${words}), sites that spread by ${percent(repeatability)} %, ${formatFixed(100 * power, 0)} % sure at ${formatFixed(100 * alpha, 0)} % false alarms, by a test of this one shape in its worst direction or place:`,
@@ -158,6 +169,12 @@ function planOf(given: Given): SitePlan {
   if (given['angle-deg'] !== undefined && plan !== 'diameter-sites') {
     refuse('--angle-deg', 'only the line of --diameter-sites has a direction')
   }
+  if (given['spot-mm'] !== undefined && (plan === 'dies' || plan === 'equal-area')) {
+    refuse('--spot-mm', `--${plan} has no outermost circle that a spot could touch`)
+  }
+  for (const name of ['pitch-mm', 'offset-mm'] as const) {
+    if (given[name] !== undefined && plan !== 'dies') refuse(`--${name}`, 'only --dies has a grid of dies')
+  }
   const count = numberOf(plan, given[plan] ?? '')
   if (!Number.isInteger(count)) refuse(`--${plan}`, `${count} is not a whole number`)
   const outer = { outerRadius_mm: radiusOf(given) }
@@ -172,11 +189,14 @@ function planOf(given: Given): SitePlan {
     case 'equal-area':
       return equalAreaPlan({ circles: count, usableRadius_mm: usableRadius(given), startAngle_deg: startOf(given) })
     case 'dies':
-      return diePlan(
-        usableDies({ outline: outlineOf(given), edgeExclusion_mm: exclusionOf(given) }, gridOf(given)),
-        count,
-      )
+      return dieCentres(given, count)
   }
+}
+
+function dieCentres(given: Given, count: number): SitePlan {
+  const dies = usableDies({ outline: outlineOf(given), edgeExclusion_mm: exclusionOf(given) }, gridOf(given))
+  if (count > dies.count) refuse('--dies', `${dies.count} dies lie whole in the usable area, not ${count}`)
+  return diePlan(dies, count)
 }
 
 function gridOf(given: Given): DieGrid {
@@ -193,6 +213,9 @@ function gridOf(given: Given): DieGrid {
 function outlineOf(given: Given): Outline {
   const diameter_mm = numberOf('diameter-mm', given['diameter-mm'] ?? refuse('--diameter-mm', 'give the diameter of the wafer'))
   const flat = given['flat-mm']
+  if (flat !== undefined && !(numberOf('flat-mm', flat) < diameter_mm)) {
+    refuse('--flat-mm', `a flat is shorter than the wafer is wide, ${diameter_mm} mm`)
+  }
   return { shape: 'disc', diameter_mm, ...(flat === undefined ? { fiducial: 'notch' } : { fiducial: 'flat', flatLength_mm: numberOf('flat-mm', flat) }) }
 } // prettier-ignore
 

@@ -23,9 +23,10 @@ function look({ readings, wafers }: HealthInput): readonly HealthFinding[] {
   return [
     {
       check: 'exchanged-columns',
-      severity: 'stops',
+      // A prober that holds the voltage and reads the current writes the very same.
+      severity: 'look',
       sentence: `The voltage is ${formatSignificant(1e3 * Math.abs(voltage_V[0]), 4)} mV at every site while the current varies: the columns of current and voltage look exchanged.`,
-      nextStep: 'Check the names of the two columns under Files, and what the prober exports.',
+      nextStep: 'Unless the prober holds the voltage and reads the current: check the names of the two columns under Files, and what it exports.',
       wafers: [],
       site: wafers[0]?.rows[0] ?? null,
       evidence: { voltageSpread: spreadOf(voltage_V), currentSpread: spreadOf(current_A) },

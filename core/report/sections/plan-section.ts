@@ -35,7 +35,7 @@ export function planSection({ analysis, detailsOf }: ReportContext): Block[] {
         return {
           cells: [
             EFFECTS[effect].title,
-            Number.isFinite(smallest) ? formatSignificant(100 * smallest, 2) : 'not at all',
+            smallest <= 1 ? formatSignificant(100 * smallest, 2) : 'not at all',
             EFFECTS[effect].size,
             formatFixed(100 * meanBias(question), 1),
           ],

@@ -146,12 +146,25 @@ describe('plans beside those of the standard', () => {
     expect(persquare('sites', '--circles', '1', '--effect', 'tilt', '--size-percent', '0.01', '--repeatability-percent', '1', ...WAFER).status).toBe(1) // prettier-ignore
   })
 
+  it('a pattern that only a size beyond the value itself would show is seen not at all', () => {
+    const { stdout } = persquare('sites', '--circles', '1', '--effect', 'spot', '--size-percent', '1', '--repeatability-percent', '90', ...WAFER) // prettier-ignore
+    expect(stdout).toContain('not at all')
+    expect(stdout).not.toMatch(/\d{3,} +/)
+  })
+
   it.each([
     [['--effect', 'wave', '--size-percent', '1', '--repeatability-percent', '1'], /tilt, bowl, edge/],
     [['--effect', 'tilt', '--repeatability-percent', '1'], /give the size/],
     [['--effect', 'tilt', '--size-percent', '-1', '--repeatability-percent', '1'], /above 0/],
     [['--dies', '9'], /--pitch-mm/],
     [['--dies', '9', '--pitch-mm', '10'], /two numbers/],
+    [['--dies', '9000', '--pitch-mm', '10,8'], /dies lie whole in the usable area, not 9000/],
+    [['--circles', '3', '--size-percent', '1'], /only together with --effect/],
+    [['--circles', '3', '--json'], /only together with --effect/],
+    [['--equal-area', '3', '--spot-mm', '1.5'], /no outermost circle/],
+    [['--circles', '3', '--pitch-mm', '10,8'], /only --dies/],
+    [['--circles', '2.5'], /not a whole number/],
+    [['--circles', '3', '--flat-mm', '300'], /shorter than the wafer is wide/],
   ])('refuse %j', (args, why) => {
     const { status, stdout, stderr } = persquare('sites', ...args, ...WAFER)
     expect([status, stdout]).toEqual([2, ''])

@@ -57,7 +57,7 @@ describe('the change with the order of reading', () => {
         // The median is not the centre's value: the share is of a few percent more or less.
         expect(Math.abs(change - drift)).toBeLessThan(6 * standardError + 0.05 * Math.abs(drift))
       }),
-      { numRuns: 60 },
+      { numRuns: 200 },
     )
   })
 

@@ -129,7 +129,7 @@ describe('a fault is found', () => {
     ['a drift on one wafer', { fault: scaled(({ wafer, site }) => (wafer === 4 ? 1 - (0.02 * site) / plan.count : 1)) }, 'drift:look', /^On wafer 4 the readings fall by (1\.[789]|2\.[01])/],
     ['a step from one wafer to the next', { fault: scaled(({ wafer }) => (wafer > 5 ? 1.05 : 1)) }, 'drift:look', /^From wafer 6 on the readings are (4\.\d|5\.\d) % higher/],
     ['one wafer that rectifies', { fault: ({ wafer }, { reverse }) => (wafer === 3 ? { reverse: 0.97 * reverse } : {}) }, 'polarity:look', /^On wafer 3 forward and reverse readings differ by 3\.0 %, in the lot by 0\.0 %/],
-    ['current and voltage exchanged', { fault: (_, { voltage }) => ({ voltage: 5e-4, reverse: -5e-4, current: voltage }) }, 'exchanged-columns:stops', /current and voltage look exchanged/],
+    ['current and voltage exchanged', { fault: (_, { voltage }) => ({ voltage: 5e-4, reverse: -5e-4, current: voltage }) }, 'exchanged-columns:look', /current and voltage look exchanged/],
     ['one wafer at ten times the current', { fault: scaled(({ wafer }) => (wafer === 4 ? 10 : 1)) }, 'units:look', /^Wafer 4 reads ten times off the others/],
     ['one wafer reported as a sheet resistance', { fault: scaled(({ wafer }) => (wafer === 4 ? Math.PI / Math.LN2 : 1)) }, 'units:look', /^Wafer 4 reads π\/ln 2 off the others/],
     ['one of two wafers in another unit', { wafers: 2, fault: scaled(({ wafer }) => (wafer === 2 ? 1000 : 1)) }, 'units:stops', /^Wafer 2 reads a thousand times off the other /],
