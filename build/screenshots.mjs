@@ -17,6 +17,9 @@ const LOT = [
   'station-2-check-wafer.csv',
 ].map((name) => `sample-data/${name}`)
 
+/** Those that the README shows. */
+const SHOWN = ['files-light', 'lot-light', 'wafer-dark', 'trust-light', 'hand-over-light', 'check-wafer-dark']
+
 const stateFolder = await mkdtemp(join(tmpdir(), 'persquare-screenshots-'))
 await mkdir(OUT, { recursive: true })
 const browser = await chromium.launch({
@@ -36,13 +39,17 @@ try {
 /** A person's way through the lot, a picture a step. */
 async function picture(colorScheme, viewport) {
   const page = await browser.newPage({ colorScheme, viewport })
-  const shot = (name) => page.screenshot({ path: join(OUT, `${name}-${colorScheme}.png`) })
+  const shot = async (name) => {
+    if (SHOWN.includes(`${name}-${colorScheme}`))
+      await page.screenshot({ path: join(OUT, `${name}-${colorScheme}.png`) })
+  }
   await page.goto(host.url)
   // The second time round, the window comes back where the first left it.
   await page.getByRole('heading', { level: 1, name: /^TB-0417 is/ }).waitFor()
   await page.keyboard.press('2')
   await page.getByRole('listbox', { name: 'Cassette' }).waitFor()
   await page.waitForFunction(() => document.querySelectorAll('table tbody tr').length >= 25)
+  await page.waitForFunction(() => performance.getEntriesByName('persquare:small-map').length >= 25)
   await shot('lot')
   await page.keyboard.press('n')
   await page.getByRole('heading', { name: /^Working of/ }).waitFor()

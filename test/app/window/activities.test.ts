@@ -31,6 +31,19 @@ describe.skipIf(!hasChromium())('what a person does with a lot', () => {
       expect(await columns.getByRole('combobox', { name: 'Column for voltage_V', exact: true }).inputValue()).toBe('voltage_V')
     }))
 
+  it('is never wider than the window, whatever is selected', () =>
+    withWindow(browser, { files: lotFiles('TB-0417') }, async (page) => {
+      await page.setViewportSize({ width: 1280, height: 720 })
+      await lotIsOpen(page)
+      await page.keyboard.press('n')
+      await page.getByRole('heading', { name: /^Working of/ }).waitFor()
+      for (const key of '12345678') {
+        await page.keyboard.press(key)
+        await page.waitForTimeout(150)
+        expect(await page.locator('.page').evaluate((element) => element.scrollWidth - window.innerWidth), `page ${key}`).toBeLessThanOrEqual(0)
+      }
+    }))
+
   it('brings in a folder, chosen or dropped: its readings are one lot', async () => {
     const folder = await mkdtemp(join(tmpdir(), 'persquare-lot-'))
     const wafer = (id: number): string => ['wafer,site,x_mm,y_mm,v_over_i_ohm', ...[0, 20, 40].map((x, k) => `${id},${k + 1},${x},0,20.${k}`)].join('\n')
