@@ -20,11 +20,16 @@ export function checkOfLot(result: CheckResult, { time_ms }: Readings): CheckOfL
   return { result, standing: Number.isFinite(first) ? standingAt(result, first, last) : standingAt(result, NaN) }
 }
 
+/** An alarm before or while the lot was measured, or at the next occasion after it. */
+export function isMarked({ standing: { state } }: CheckOfLot): boolean {
+  return state === 'alarm' || state === 'doubtful'
+}
+
 /**
  * An alarm marks the lot and doesn't change its verdict: the readings may be right all the same, and whether the lot is
  * held is for a person to say, who must be told.
  */
 export function checkProblems(check: CheckOfLot | null): AnalysisProblem[] {
-  if (check?.standing.state !== 'alarm') return []
+  if (!check || !isMarked(check)) return []
   return [{ kind: 'check-wafer-alarm', sentence: standingWords(check.result, check.standing) }]
 }

@@ -7,7 +7,7 @@ import { UNCERTAINTY_COMPONENTS, type Procedure } from '../procedure/schema'
 import { layerMobility } from './prepare-layer'
 import { CELSIUS_ZERO_K } from '../units/constants'
 import { formatSignificant } from '../units/format'
-import type { CheckOfLot } from './check-of-lot'
+import { isMarked, type CheckOfLot } from './check-of-lot'
 import type { Corrections } from './corrections'
 import type { Repeatability } from './repeatability'
 import type { DieColumns, Quantity, SiteColumns } from './lot-analysis'
@@ -132,7 +132,7 @@ function uncertaintyNotes({ procedure: { uncertainty }, repeatability, gauge }: 
 }
 
 function gaugeNotes({ gauge, check }: NotesInput): string[] {
-  const standing = check && check.standing.state !== 'alarm' ? standingWords(check.result, check.standing) : null
+  const standing = check && !isMarked(check) ? standingWords(check.result, check.standing) : null
   return [
     ...(gauge
       ? [

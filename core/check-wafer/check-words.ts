@@ -42,6 +42,8 @@ export function standingWords({ history }: CheckResult, standing: StandingCheck)
   switch (standing.state) {
     case 'in-control':
       return `The check wafer was in control ${when} (${history.file}).`
+    case 'doubtful':
+      return `The check wafer was in control on ${standing.lastGood}, and raised an alarm on ${standing.when}, the next occasion after the lot (${history.file}): ${standing.alarms[0].sentence} The fault may have begun after the good occasion, before the lot was measured or after: the lot is doubtful. ${standing.alarms[0].nextStep}`
     case 'before-history':
       return `The lot was measured before the check wafer's history begins (${history.file}).`
     case 'alarm':

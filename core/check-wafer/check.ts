@@ -105,7 +105,8 @@ function lagOne(values: readonly number[]): number {
 
 /** How the check wafer stood while something was measured. */
 export interface StandingCheck {
-  readonly state: 'in-control' | 'alarm' | 'before-history'
+  /** doubtful: in control before, and an alarm at the next occasion after; the fault may have begun in between. */
+  readonly state: 'in-control' | 'alarm' | 'doubtful' | 'before-history'
   /** Place in the order of time, from 1, of the occasion that counts; 0 for none. */
   readonly place: number
   readonly when: string
@@ -115,11 +116,14 @@ export interface StandingCheck {
   readonly byTime: boolean
   /** Whether that occasion came after the measurement had begun. */
   readonly isDuring: boolean
+  /** Of a doubtful one: the last occasion that was in control. */
+  readonly lastGood: string | null
 }
 
 /**
  * What was measured from `first_ms` to `last_ms` hangs on the last occasion at or before it began and on those while it
- * went on: an alarm stands until an occasion without one, and the first alarm of these counts, else the last occasion.
+ * went on: an alarm stands until an occasion without one, and the first alarm of these counts, else an alarm at the next
+ * occasion after it, as nobody knows when that fault began, else the last occasion.
  * `first_ms` NaN, or a history without times: the last occasion of all.
  */
 export function standingAt({ history, alarms }: CheckResult, first_ms: number, last_ms = first_ms): StandingCheck {
@@ -128,16 +132,19 @@ export function standingAt({ history, alarms }: CheckResult, first_ms: number, l
   const until = (time_ms: number): number => order.filter((row) => history.time_ms[row] <= time_ms).length
   const before = byTime ? until(first_ms) : order.length
   const end = byTime ? Math.max(before, until(last_ms)) : before
-  if (end === 0) return { state: 'before-history', place: 0, when: '', alarms: [], byTime, isDuring: false }
+  if (end === 0)
+    return { state: 'before-history', place: 0, when: '', alarms: [], byTime, isDuring: false, lastGood: null }
   const alarmed = alarms.find((alarm) => alarm.place >= before && alarm.place <= end)
-  const place = alarmed?.place ?? end
+  const isDoubtful = !alarmed && alarms.some((alarm) => alarm.place === end + 1)
+  const place = alarmed?.place ?? (isDoubtful ? end + 1 : end)
   return {
-    state: alarmed ? 'alarm' : 'in-control',
+    state: alarmed ? 'alarm' : isDoubtful ? 'doubtful' : 'in-control',
     place,
     when: history.when[order[place - 1]],
     alarms: alarms.filter((alarm) => alarm.place === place),
     byTime,
-    isDuring: place > before,
+    isDuring: !isDoubtful && place > before,
+    lastGood: isDoubtful ? history.when[order[end - 1]] : null,
   }
 }
 

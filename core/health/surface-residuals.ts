@@ -16,7 +16,7 @@ export interface WaferResiduals {
 
 const LEAST_SITES = 9
 /** A wafer of more sites is left to its map: the look would take longer than the analysis. */
-const MOST_SITES = 2000
+export const MOST_SITES = 2000
 
 /** Several checks look at the same residuals. */
 const known = new WeakMap<HealthInput, readonly WaferResiduals[]>()

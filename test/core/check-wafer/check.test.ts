@@ -177,7 +177,7 @@ describe('a history', () => {
     const day = (n: number, hour = 12) => Date.UTC(2026, 2, n, hour)
     expect(result.limits.baseline).toBe(10)
     expect(new Set(result.alarms.filter(({ chart }) => chart === 'value').map(({ index }) => index))).toEqual(new Set([11, 12]))
-    expect(standingAt(result, day(10)).state).toBe('in-control')
+    expect(standingAt(result, day(9)).state).toBe('in-control')
     expect(standingAt(result, day(11))).toMatchObject({ state: 'alarm', place: 11, byTime: true })
     expect(standingAt(result, day(12))).toMatchObject({ state: 'alarm', place: 12 })
     expect(standingAt(result, Date.UTC(2026, 1, 1)).state).toBe('before-history')
@@ -187,12 +187,24 @@ describe('a history', () => {
   it('says that a lot is doubtful that an alarm fell into, or that began after one', () => {
     const result = checkHistory(historyOf(made([...steady, 90.2, 90.0, 90.01])), { baseline: 10 })
     const day = (n: number, hour = 12) => Date.UTC(2026, 2, n, hour)
-    expect(standingAt(result, day(9), day(10))).toMatchObject({ state: 'in-control', place: 10, isDuring: true })
+    expect(standingAt(result, day(8), day(9))).toMatchObject({ state: 'in-control', place: 9, isDuring: true, lastGood: null })
     expect(standingAt(result, day(10), day(11))).toMatchObject({ state: 'alarm', place: 11, isDuring: true })
     expect(standingAt(result, day(10), day(13))).toMatchObject({ state: 'alarm', place: 11, isDuring: true })
     expect(standingAt(result, day(11), day(13))).toMatchObject({ state: 'alarm', place: 11, isDuring: false })
     expect(standingAt(result, Date.UTC(2026, 1, 1), day(2))).toMatchObject({ state: 'in-control', place: 2, isDuring: true })
     expect(standingWords(result, standingAt(result, day(10), day(11)))).toMatch(/^The check wafer raised an alarm on 2026-03-11 08:00, while the lot was measured/)
+  })
+
+  it('says that a lot is doubtful too that was measured between a good occasion and an alarm', () => {
+    const result = checkHistory(historyOf(made([...steady, 90.2, 90.0, 90.01])), { baseline: 10 })
+    const day = (n: number) => Date.UTC(2026, 2, n, 12)
+    for (const standing of [standingAt(result, day(10)), standingAt(result, day(9), day(10))]) {
+      expect(standing).toMatchObject({ state: 'doubtful', place: 11, isDuring: false, lastGood: '2026-03-10 08:00' })
+      expect(standing.alarms[0]).toMatchObject({ place: 11, chart: 'value' })
+      expect(standingWords(result, standing)).toMatch(
+        /^The check wafer was in control on 2026-03-10 08:00, and raised an alarm on 2026-03-11 08:00, the next occasion after the lot .*The fault may have begun after the good occasion/,
+      )
+    }
   })
 
   it('leaves out a row that has no place in the order of time, and says which', () => {
