@@ -5,6 +5,7 @@ import { resultJson } from '../../core/analysis/result-json'
 import { run } from '../../core/analysis/run'
 import { CoreError } from '../../core/problems/problem'
 import { parseTime } from '../../core/ingest/parse-time'
+import { refuseAsNode } from './convert-arguments'
 import { lotTable } from './lot-table'
 import { ARTIFACTS, outputFiles, type Artifact } from './output-files'
 import { printProblems } from './print-problems'
@@ -94,7 +95,7 @@ function parse(args: readonly string[]) {
       },
     })
   } catch (error) {
-    return refuse(args.join(' '), error instanceof Error ? error.message : String(error))
+    return refuseAsNode(error, args)
   }
 }
 

@@ -27,12 +27,16 @@ export function namedOptions<const Kinds extends OptionKinds>(args: readonly str
   }
 }
 
-/** What Node says of an option it can't read, in our words where it leaves its value out. */
-function refuseAsNode(error: unknown, args: readonly string[]): never {
+/** What Node says of an argument it can't read, in our words. */
+export function refuseAsNode(error: unknown, args: readonly string[]): never {
   const message = error instanceof Error ? (error.message.split('\n')[0] ?? '') : String(error)
   const name = /'(--?[\w-]+)/.exec(message)?.[1] ?? args.join(' ')
   const isValueMissing = /argument (missing|is ambiguous)/.test(message)
-  return refuse(name, isValueMissing ? 'it needs a value after it' : message)
+  if (isValueMissing) refuse(name, 'it needs a value after it')
+  if (message.startsWith('Unknown option')) refuse(name, 'there is no such option; --help after the command lists them')
+  const stray = /^Unexpected argument '(.*)'/.exec(message)?.[1]
+  if (stray !== undefined) refuse(stray, 'the command takes options alone; --help after it lists them')
+  return refuse(name, message)
 }
 
 /** A value that begins with a minus sign would be taken for an option; joined to its name it is not. Ours have long names alone. */

@@ -1,7 +1,7 @@
 /** Arguments of a command that reads one file and prints what it found: the file's path and the named options. */
 import { parseArgs } from 'node:util'
 import { CoreError } from '../../core/problems/problem'
-import { refuse, type OptionKinds } from './convert-arguments'
+import { refuse, refuseAsNode, type OptionKinds } from './convert-arguments'
 
 type Values<Kinds extends OptionKinds> = {
   readonly [Name in keyof Kinds]?: Kinds[Name]['type'] extends 'boolean' ? boolean : string
@@ -20,6 +20,6 @@ export function oneFile<const Kinds extends OptionKinds>(
     return { path: positionals[0], given: values as Values<Kinds> }
   } catch (error) {
     if (error instanceof CoreError) throw error
-    return refuse(args.join(' '), error instanceof Error ? error.message.split('\n', 1)[0] : String(error))
+    return refuseAsNode(error, args)
   }
 }

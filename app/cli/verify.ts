@@ -5,6 +5,7 @@ import { CoreError } from '../../core/problems/problem'
 import { systemReason } from '../../core/problems/system-reason'
 import { MAX_FILE_BYTES } from '../pdf/pdf-file'
 import { verifyReport } from '../pdf/verify-report'
+import { refuseAsNode } from './convert-arguments'
 import { readInput, type InputFile } from './read-inputs'
 import { verificationJson, verificationText } from './verify-output'
 import { PROGRAM, VERSION } from './version'
@@ -45,6 +46,6 @@ function parse(args: readonly string[]): { path: string; json: boolean } {
     return { path: positionals[0], json: values.json ?? false }
   } catch (error) {
     if (error instanceof CoreError) throw error
-    return refuse(args.join(' '), error instanceof Error ? error.message.split('\n', 1)[0] : String(error))
+    return refuseAsNode(error, args)
   }
 }
