@@ -5,7 +5,7 @@ import type { Plugin } from 'vite'
 /** The folder of the package that a module lies in, from the innermost `node_modules/` on; null for our own. */
 function packageOf(id: string): string | null {
   const path = id.split('\\').join('/').replace(/^\0+/, '')
-  return /^.*\/(node_modules\/(?:@[^/]+\/)?[^/?]+)/.exec(path)?.[1] ?? null
+  return /^(?:.*\/)?(node_modules\/(?:@[^/]+\/)?[^/?]+)/.exec(path)?.[1] ?? null
 }
 
 /** Every worker is a build of its own. */

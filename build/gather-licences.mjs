@@ -4,7 +4,7 @@
  * licences, Chromium's among them, are laid beside it by electron-builder. Fails for a licence that nobody has allowed,
  * and for a package that carries no text of one.
  */
-import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs'
+import { existsSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 
 const ROOT = join(import.meta.dirname, '..')
@@ -19,14 +19,50 @@ const ALLOWED = [
 /** What a person has looked at, and why it may ship. */
 const LOOKED_AT = {
   'dejavu-fonts-ttf': {
+    declared: 'SEE LICENSE IN README.md AND LICENSE',
     licence: 'Bitstream Vera and DejaVu (public domain changes)',
     why: 'fonts that may be bundled and embedded; the text is in its LICENSE',
   },
-  'png-js': { licence: 'MIT', why: 'its package.json names none, its LICENSE is the MIT licence' },
+  'png-js': { declared: undefined, licence: 'MIT', why: 'its package.json names none, its LICENSE is the MIT licence' },
 }
 
 /** They say MIT in package.json and README, and carry no text of it: the standard text with their author's name is taken. */
 const WITHOUT_TEXT = ['brotli', 'dfa', 'fontkit']
+
+/**
+ * A package that is a bundle itself, and names what is in it nowhere but in the package it is made from. Names and
+ * licences as the registry of npm gives them for plotly.js 4.1.1, those of its other bundles among them.
+ */
+const INSIDE = {
+  'plotly.js-cartesian-dist-min': {
+    MIT: '@plotly/point-cluster, @plotly/regl, @turf/area, @turf/centroid, @turf/meta, base64-arraybuffer, country-iso-search, culori, fast-isnumeric, gl-text, has-hover, has-passive-events, is-mobile, mouse-event-offset, native-promise-only, parse-svg-path, point-in-polygon, polybooljs, probe-image-size, regl-error2d, regl-line2d, regl-scatter2d, regl-splom, strongly-connected-components, svg-path-sdf, webgl-context, world-calendars',
+    'BSD-3-Clause (Mike Bostock)':
+      '@plotly/d3, @plotly/d3-sankey, d3-force, d3-format, d3-geo, d3-geo-projection, d3-hierarchy, d3-time, d3-time-format, topojson-client',
+    'ISC (Mike Bostock)': 'd3-interpolate',
+    Zlib: 'gl-mat4',
+  },
+}
+
+function insideWords(name) {
+  const lines = Object.entries(INSIDE[name] ?? {}).map(([licence, names]) => `${licence}: ${names}`)
+  return lines.length > 0 ? `\n\nIt is a bundle, with some of these inside:\n${lines.join('\n')}` : ''
+}
+
+/** At the top of a package and one folder down, where a part of another origin lies. */
+function licenceFiles(folder) {
+  const isLicence = (file) => /^(licen[cs]e|copying|notice)/i.test(file)
+  const below = readdirSync(folder, { withFileTypes: true }).filter(
+    (entry) => entry.isDirectory() && entry.name !== 'node_modules',
+  )
+  return [
+    ...readdirSync(folder).filter(isLicence),
+    ...below.flatMap(({ name }) =>
+      readdirSync(join(folder, name))
+        .filter(isLicence)
+        .map((file) => join(name, file)),
+    ),
+  ].filter((file) => statSync(join(folder, file)).isFile())
+}
 
 const mitText = (holder) => `Copyright (c) ${holder}
 
@@ -52,16 +88,23 @@ function shippedPaths() {
 function entryOf(path) {
   const folder = join(ROOT, path)
   const { name, version, license, author, homepage, repository } = read(join(folder, 'package.json'))
-  const files = readdirSync(folder).filter((file) => /^(licen[cs]e|copying|notice)/i.test(file))
+  const files = licenceFiles(folder)
   const own = files.map((file) => readFileSync(join(folder, file), 'utf8').trim()).join('\n\n')
   const text = own === '' && WITHOUT_TEXT.includes(name) && license === 'MIT' ? mitText(author.name ?? author) : own
   const address = homepage ?? (typeof repository === 'string' ? repository : repository?.url) ?? ''
-  return { name, version, licence: LOOKED_AT[name]?.licence ?? license, text, address }
+  return {
+    name,
+    version,
+    declared: license,
+    licence: LOOKED_AT[name]?.licence ?? license,
+    text: text && text + insideWords(name),
+    address,
+  }
 }
 
 const entries = shippedPaths().map(entryOf)
-const faults = entries.flatMap(({ name, version, licence, text }) => [
-  ...(ALLOWED.includes(licence) || LOOKED_AT[name]
+const faults = entries.flatMap(({ name, version, declared, licence, text }) => [
+  ...(ALLOWED.includes(declared) || (LOOKED_AT[name] && LOOKED_AT[name].declared === declared)
     ? []
     : [`${name} ${version}: nobody has allowed its licence, ${licence}`]),
   ...(text === '' ? [`${name} ${version}: it carries no text of its licence, ${licence}`] : []),

@@ -37,3 +37,12 @@ export const DUAL_THICKNESS = {
   range: 'insulating back, equal pins, no edge within several pitches; 1e-12',
   source: DUAL_THICKNESS_SOURCE,
 } as const satisfies Formula
+
+export const EDGE_AND_THICKNESS = {
+  title: 'Edge factor and thickness factor together',
+  formula:
+    'error of the product = C_edge F/C_exact − 1, C_exact from pins and mirror images with the slab’s own log distance',
+  range: 'a site is flagged where it exceeds 0.1 %',
+  source:
+    'derived: images as L. B. Valdes, Proc. IRE 42 (1954) 420; slab as A. Uhlir, Bell Syst. Tech. J. 34 (1955) 105',
+} as const satisfies Formula

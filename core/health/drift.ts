@@ -10,8 +10,8 @@ import {
 } from './finding'
 import { orderSlopes, sumOf, type OrderSlope } from './order-slopes'
 
-const SOURCE = `H. B. Mann, Econometrica 13 (1945) 245; M. G. Kendall, Rank Correlation Methods (1948); thresholds ${COMMON_PRACTICE}`
-const SOURCE_WITHIN = `R. Frisch, F. V. Waugh, Econometrica 1 (1933) 387; M. C. Lovell, J. Am. Stat. Assoc. 58 (1963) 993; thresholds ${COMMON_PRACTICE}`
+export const DRIFT_AMONG_SOURCE = `H. B. Mann, Econometrica 13 (1945) 245; M. G. Kendall, Rank Correlation Methods (1948); thresholds ${COMMON_PRACTICE}`
+export const DRIFT_WITHIN_SOURCE = `R. Frisch, F. V. Waugh, Econometrica 1 (1933) 387; M. C. Lovell, J. Am. Stat. Assoc. 58 (1963) 993; thresholds ${COMMON_PRACTICE}`
 const SURE = 6
 const SURE_AMONG_WAFERS = 3.5
 /** Of the values: less drift is of no account. */
@@ -51,7 +51,7 @@ function withinLot(slopes: readonly OrderSlope[]): readonly HealthFinding[] {
       wafers: [],
       site: null,
       evidence: { z, relativeChange: change },
-      source: SOURCE_WITHIN,
+      source: DRIFT_WITHIN_SOURCE,
     },
   ]
 } // prettier-ignore
@@ -84,7 +84,7 @@ function withinSome(slopes: readonly OrderSlope[]): readonly HealthFinding[] {
     wafers: [wafer],
     site: rows[0],
     evidence: { relativeChange: change, standardError, ofLot },
-    source: SOURCE_WITHIN,
+    source: DRIFT_WITHIN_SOURCE,
   }))
 } // prettier-ignore
 
@@ -104,7 +104,7 @@ function amongWafers(input: HealthInput): readonly HealthFinding[] {
       wafers: [],
       site: null,
       evidence: { z, relativeChange: change, wafers: n },
-      source: SOURCE,
+      source: DRIFT_AMONG_SOURCE,
     },
   ]
 }

@@ -25,3 +25,10 @@ export const TREND = {
   source:
     'N. R. Draper, H. Smith, Applied Regression Analysis, 3rd ed. (1998) ch. 6 (from memory); Zernike polynomials',
 } as const satisfies Formula
+
+export const OUTLYING_SITE = {
+  title: 'One site apart from the pattern',
+  formula: 'F = g (ν − 1)/(SS_res − g), g = max r²/(1 − h); p times the number of sites',
+  where: 'r the residual and h the leverage of a site in the trend surface, ν its residual degrees of freedom',
+  source: 'R. D. Cook, S. Weisberg, Residuals and Influence in Regression (1982), 2.2 (from memory)',
+} as const satisfies Formula

@@ -5,24 +5,28 @@
 import { COVERAGE, POLARITIES, PROPAGATION, REPEATABILITY } from '../analysis/formulas'
 import { CONTROL_LIMITS, MOVING_AVERAGE, RUNS } from '../check-wafer/formulas'
 import { CONFORMANCE_PROBABILITY, DECISION_RULES, GLOBAL_RISKS } from '../conformity/formulas'
+import { BAR_RESISTANCE } from '../conversion/formulas'
 import { GAUGE_SPREADS, PROBE_BIAS } from '../gauge/formulas'
-import { DUAL, DUAL_THICKNESS, FOUR_TERMINALS, THICKNESS } from '../geometry/formulas'
+import { DUAL, DUAL_THICKNESS, EDGE_AND_THICKNESS, FOUR_TERMINALS, THICKNESS } from '../geometry/formulas'
 import { outlineGeometries } from '../geometry/registry'
+import { DRIFT_AMONG, DRIFT_WITHIN } from '../health/formulas'
 import { JUNCTION_DEPTH, TABULATED_PROFILE } from '../layer/formulas'
 import { layerProfiles } from '../layer/profiles/registry'
 import { layerKinds } from '../layer/registry'
-import { GAUSSIAN_PROCESS, THIN_PLATE_SPLINE, TREND } from '../map/formulas'
+import { GAUSSIAN_PROCESS, OUTLYING_SITE, THIN_PLATE_SPLINE, TREND } from '../map/formulas'
 import { MONTE_CARLO } from '../monte-carlo/formulas'
 import { PLAN_POWER } from '../plan/formulas'
 import { CARRIERS, CONDUCTIVITY, INTRINSIC_DENSITY, TEMPERATURE_COEFFICIENT } from '../silicon/formulas'
 import { mobilityModels } from '../silicon/mobility/registry'
 import type { MobilityModel } from '../silicon/mobility-model'
 import {
-  AREA_WEIGHTED, CAPABILITY, INTERVALS, NORMALITY, OUTLIERS, RADIAL_VARIATION, VARIANCE_COMPONENTS,
+  AREA_WEIGHTED, CAPABILITY, INTERVALS, NORMALITY, OUTLIERS, RADIAL_VARIATION, VARIANCE_COMPONENT_INTERVAL, VARIANCE_COMPONENTS,
+  QUANTILES,
 } from '../statistics/formulas' // prettier-ignore
 import { nonuniformities } from '../statistics/nonuniformity'
 import { formatScientific } from '../units/format'
 import type { Formula } from '../units/formula'
+import { EQUAL_AREA_PLAN, STANDARD_PLANS } from '../wafer/formulas'
 
 export interface FormulaChapter {
   readonly title: string
@@ -34,12 +38,12 @@ export function formulaAppendix(): readonly FormulaChapter[] {
   return [
     {
       title: 'From V and I to sheet resistance',
-      formulas: [POLARITIES, FOUR_TERMINALS, ...outlines(), THICKNESS, DUAL, DUAL_THICKNESS, TEMPERATURE_COEFFICIENT],
+      formulas: [POLARITIES, FOUR_TERMINALS, ...outlines(), THICKNESS, EDGE_AND_THICKNESS, DUAL, DUAL_THICKNESS, TEMPERATURE_COEFFICIENT],
     },
     { title: 'Silicon', formulas: [CONDUCTIVITY, CARRIERS, INTRINSIC_DENSITY, ...mobilityModels.map(mobility)] },
     {
       title: 'Layers',
-      formulas: [...kinds(), ...layerProfiles, TABULATED_PROFILE, JUNCTION_DEPTH],
+      formulas: [...kinds(), ...layerProfiles, TABULATED_PROFILE, JUNCTION_DEPTH, BAR_RESISTANCE],
     },
     {
       title: 'Uncertainty',
@@ -56,11 +60,14 @@ export function formulaAppendix(): readonly FormulaChapter[] {
         NORMALITY,
         CAPABILITY,
         VARIANCE_COMPONENTS,
+        VARIANCE_COMPONENT_INTERVAL,
+        QUANTILES,
       ],
     },
-    { title: 'Between the sites', formulas: [THIN_PLATE_SPLINE, GAUSSIAN_PROCESS, TREND] },
+    { title: 'Between the sites', formulas: [THIN_PLATE_SPLINE, GAUSSIAN_PROCESS, TREND, OUTLYING_SITE] },
+    { title: 'A look at the readings', formulas: [DRIFT_WITHIN, DRIFT_AMONG] },
     { title: 'Judgement', formulas: [CONFORMANCE_PROBABILITY, DECISION_RULES, GLOBAL_RISKS] },
-    { title: 'Gauge study, check wafer, site plans', formulas: [GAUGE_SPREADS, PROBE_BIAS, CONTROL_LIMITS, MOVING_AVERAGE, RUNS, PLAN_POWER] },
+    { title: 'Gauge study, check wafer, site plans', formulas: [GAUGE_SPREADS, PROBE_BIAS, CONTROL_LIMITS, MOVING_AVERAGE, RUNS, STANDARD_PLANS, EQUAL_AREA_PLAN, PLAN_POWER] },
   ]
 } // prettier-ignore
 

@@ -54,3 +54,18 @@ export const VARIANCE_COMPONENTS = {
   where: 'k wafers of n_i sites, N in all; a negative estimate is left as it is',
   source: 'S. R. Searle, G. Casella, C. E. McCulloch, Variance Components (1992) ch. 3 (from memory)',
 } as const satisfies Formula
+
+export const VARIANCE_COMPONENT_INTERVAL = {
+  title: 'Interval of a component of variance',
+  formula: '(MS₁ − MS₂)/n₀ ± modified large-sample limits from the F and χ² quantiles of both mean squares',
+  range: 'approximate: coverage to a point or so of percent',
+  source:
+    'N. Ting, R. K. Burdick, F. A. Graybill, S. Jeyaratnam, T.-F. C. Lu, J. Stat. Comput. Simul. 35 (1990) 135 (from memory)',
+} as const satisfies Formula
+
+export const QUANTILES = {
+  title: 'Median and quantiles',
+  formula:
+    'linear between the sorted values x_k at (k − 1)/(n − 1); the median of an even count is the mean of the middle two',
+  source: 'R. J. Hyndman, Y. Fan, Am. Stat. 50 (1996) 361, definition 7',
+} as const satisfies Formula

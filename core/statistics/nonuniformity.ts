@@ -41,14 +41,14 @@ export const nonuniformities: readonly Nonuniformity[] = [
     id: 'sup',
     title: 'Standard deviation over mean',
     formula: '100 s / mean',
-    source: 'SEMI MF1618, sample uniformity SUP',
+    source: 'SEMI MF1618-1104, sample uniformity SUP',
     percent: ({ mean, standardDeviation }) => percentOf(standardDeviation, mean),
   },
   {
     id: 'hlv',
     title: 'High-low variation',
     formula: '200 (max - min) / (max + min)',
-    source: 'SEMI MF1618, high-low variation HLV',
+    source: 'SEMI MF1618-1104, high-low variation HLV',
     percent: ({ min, max }) => percentOf(max - min, (max + min) / 2),
   },
   {

@@ -33,7 +33,7 @@ function inWords({ floor, lattice, latticeExponent, reference }: typeof electron
 export const arora = {
   id: 'arora',
   title: 'Arora, Hauser and Roulston',
-  formula: 'μ = μ_f T_n^−0.57 + μ_L T^b/(1 + (N/(N_ref T_n^2.4))^α), α = 0.88 T_n^−0.146',
+  formula: 'μ = μ_f T_n^−0.57 + μ_L T^b/(1 + (N/(N_ref T_n^2.4))^α), α = 0.88 T_n^−0.146, T_n = T/300 K',
   coefficients: [`electrons: ${inWords(electronFit)}`, `holes: ${inWords(holeFit)}`],
   source: 'N. D. Arora, J. R. Hauser, D. J. Roulston, IEEE Trans. Electron Devices 29 (1982) 292',
   dopants: ['boron', 'phosphorus', 'arsenic'],

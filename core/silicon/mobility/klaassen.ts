@@ -114,12 +114,12 @@ export const klaassen = {
   id: 'klaassen',
   title: 'Klaassen, unified',
   formula:
-    '1/μ = 1/μ_L + 1/μ_i; μ_L = μ_max T_n^−θ; μ_i = μ_N (N_sc/N_eff) (N_ref/N_sc)^α + μ_C (c/N_eff), c the majority carriers; μ_N = μ_max²/(μ_max − μ_min) T_n^(3α−1.5), μ_C = μ_max μ_min/(μ_max − μ_min) T_n^−½; N_sc with clustering, N_eff = N_sc for majority carriers, G(P) N + c/F(P) for minority ones',
+    '1/μ = 1/μ_L + 1/μ_i; μ_L = μ_max T_n^−θ; μ_i = μ_N (N_sc/N_eff) (N_ref/N_sc)^α + μ_C (c/N_eff), c the majority carriers; μ_N = μ_max²/(μ_max − μ_min) T_n^(3α−1.5), μ_C = μ_max μ_min/(μ_max − μ_min) T_n^−½; T_n = T/300 K; majority carriers: N_sc = N_eff = N*, N* the clustered density; minority carriers: N_sc = N* + c, N_eff = G(P) N* + c/F(P), with the μ_max, μ_min, N_ref, α, θ of boron for holes and of phosphorus for electrons',
   coefficients: [
     `electrons, phosphorus: ${inWords(fits.phosphorus)}`,
     `electrons, arsenic: ${inWords(fits.arsenic)}`,
     `holes, boron: ${inWords(fits.boron)}`,
-    `clustering: donors N (1 + 1/(0.21 + (4e20/N)²)), acceptors N (1 + 1/(0.5 + (7.2e20/N)²))`,
+    `clustering: N* = N (1 + 1/(0.21 + (4e20/N)²)) of donors, N (1 + 1/(0.5 + (7.2e20/N)²)) of acceptors`,
     `P = 1/(2.459/P_CW + 3.828/P_BH), P_CW = 3.97e13 (T_n³/N_sc)^⅔, P_BH = (1.36e20/c) m T_n², m = ${electronMass} for electrons, ${holeMass} for holes`,
     `G = 1 − 0.89233/(0.41372 + P (T_n/m)^0.28227)^0.19778 + 0.005978/(P (m/T_n)^0.72169)^1.80618, held at its minimum below it`,
     `F = (0.7643 P^0.6478 + 2.2999 + 6.5502 m/m′)/(P^0.6478 + 2.367 + r₅ m/m′), m′ of the other carrier, r₅ = ${r5} (Table 2 prints −0.01552, which doesn’t give the paper’s figures)`,
