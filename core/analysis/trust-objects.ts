@@ -75,8 +75,8 @@ export function gaugePart({ gauge }: LotAnalysis): object | null {
 
 export function checkPart(check: CheckOfLot | null): object | null {
   if (!check) return null
-  const { state, when, place, byTime } = check.standing
-  return { standing: { state, when, place, byTime }, ...checkObject(check.result) }
+  const { state, when, lastGood, place, byTime } = check.standing
+  return { standing: { state, when, lastGood, place, byTime }, ...checkObject(check.result) }
 }
 
 /** What a look at the readings brought up; sites by their names. */
