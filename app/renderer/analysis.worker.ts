@@ -39,7 +39,7 @@ async function rehearse({ rehearse: { readings, procedure } }: Rehearsal): Promi
   }
   port.postMessage({ kind: 'rehearsed', result })
 }
-const REHEARSAL_TURNS = 12
+const REHEARSAL_TURNS = 14
 
 async function answer({ added, dropped, readings, procedure, excluded }: Job): Promise<void> {
   for (const id of dropped) kept.delete(id)

@@ -11,7 +11,7 @@ import { mapLayer } from './figures/layers'
 import { lotPictures } from './figures/lot-pictures'
 import { paintSmallMap } from './figures/paint-small-map'
 
-const WAFERS = 25
+const WAFERS = 16
 const RINGS = 3
 const CANVAS_px = 64
 const PAINTING_TURNS = 24

@@ -1,4 +1,5 @@
 /** The site plan that a lot was measured by, with the spread of its sites: what it can be asked about. */
+import { quantile } from '../statistics/quantiles'
 import type { SitePlan } from '../wafer/site-patterns'
 import type { LotAnalysis, WaferAnalysis } from './lot-analysis'
 import { sitePositions } from './site-positions'
@@ -29,10 +30,9 @@ export function planSight(
   const most = wafers.reduce((best, wafer) => (wafer.statistics.count > best.statistics.count ? wafer : best))
   const rows = countingSites(most.sites, sites.flags)
   const pick = (column: Float64Array): Float64Array => Float64Array.from(rows, (i) => column[i])
-  const sorted = [...spreads].sort((a, b) => a - b)
   return {
     plan: { count: rows.length, x_mm: pick(positions.x_mm), y_mm: pick(positions.y_mm) },
     usableRadius_mm: outline.diameter_mm / 2 - procedure.wafer.edgeExclusionMm,
-    repeatability: sorted[sorted.length >> 1],
+    repeatability: quantile(Float64Array.from(spreads), 0.5),
   }
 }

@@ -20,8 +20,9 @@ import { isUsable, type Dies } from './die-grid'
  */
 export function equalAreaPlan({ circles, usableRadius_mm, startAngle_deg = 0 }: { readonly circles: number; readonly usableRadius_mm: number; readonly startAngle_deg?: number }): SitePlan {
   requireRange('circles', circles, '', 1, 200)
+  if (!Number.isInteger(circles)) throw new CoreError({ kind: 'not-applicable', what: 'plan of equal areas', why: `${circles} is no whole number of rings` })
   requireRange('usable radius', usableRadius_mm, 'mm', 1e-3, 1e4)
-  const rings = Array.from({ length: Math.round(circles) }, (_, k) => {
+  const rings = Array.from({ length: circles }, (_, k) => {
     const circle = k + 1
     return { sites: 8 * circle, radius_mm: (usableRadius_mm * Math.sqrt(4 * circle * circle + 1)) / (2 * circles + 1) }
   })

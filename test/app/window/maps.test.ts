@@ -81,8 +81,9 @@ describe.skipIf(!hasChromium())('the maps', () => {
         return [maps[0]!, maps[24]!]
       })
       console.log(`first map ${Math.round(first!)} ms after the drop, all 25 after ${Math.round(all!)} ms`)
-      // The aim is half a second on two cores of its own; a shared machine gets three times that.
-      expect(all).toBeLessThan(1500)
+      // Dropped before the window is at rest: half a second on two cores of its own. `npm run bench:window` measures; this is
+      // for what would be many times slower, on a machine that has other things to do.
+      expect(all).toBeLessThan(3000)
     }))
 
   it('a wafer of 100 000 sites pans and zooms without a halt', () =>
