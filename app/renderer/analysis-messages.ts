@@ -16,7 +16,8 @@ export interface Job {
 
 /** A run ahead of the first lot, so that the pipeline is compiled and its tables are made; its files are not kept. */
 export interface Rehearsal {
-  readonly rehearse: { readonly readings: OpenedFile; readonly procedure: OpenedFile }
+  /** Lots from small to large: the engine is slow with what it sees first. */
+  readonly rehearse: { readonly lots: readonly OpenedFile[]; readonly procedure: OpenedFile }
 }
 
 export interface FileUse {

@@ -25,8 +25,8 @@ export interface Analyzer {
   analyze(readings: readonly OpenedFile[], procedure: OpenedFile, options?: AnalysisOptions): RunningAnalysis
   /** Starts the worker ahead of the first file. */
   warm(): void
-  /** Has an idle worker run through a made-up lot, so that the first real one finds it fast; null where it isn't idle. */
-  rehearse(readings: OpenedFile, procedure: OpenedFile): Promise<RunResult | null>
+  /** Has an idle worker run through made-up lots, from small to large, so that the first real one finds it fast; null where it isn't idle. */
+  rehearse(lots: readonly OpenedFile[], procedure: OpenedFile): Promise<RunResult | null>
   /** Ends the worker; the next call starts another. */
   close(): void
 }
@@ -59,13 +59,13 @@ export function createAnalyzer(newWorker: () => WorkerLike = newAnalysisWorker):
     rehearsing = null
   }
 
-  function rehearse(readings: OpenedFile, procedure: OpenedFile): Promise<RunResult | null> {
+  function rehearse(lots: readonly OpenedFile[], procedure: OpenedFile): Promise<RunResult | null> {
     if (running || rehearsing) return Promise.resolve(null)
     const own = (worker ??= newWorker())
     const mine = (rehearsing = ending())
     own.onmessage = ({ data }: MessageEvent<Report>) => rehearsed(data.kind === 'rehearsed' ? data.result : null)
     own.onerror = close
-    own.postMessage({ rehearse: { readings, procedure } } satisfies Rehearsal)
+    own.postMessage({ rehearse: { lots, procedure } } satisfies Rehearsal)
     return mine.result
   }
 

@@ -1,6 +1,6 @@
 /** Runs core's pipeline beside the window, one job at a time. */
 import type { LotAnalysis } from '../../core/analysis/lot-analysis'
-import { run, type RunInput } from '../../core/analysis/run'
+import { run, type RunInput, type RunResult } from '../../core/analysis/run'
 import { partBrought } from '../contract/brought-files'
 import type { FileUse, Job, Rehearsal, Report } from './analysis-messages'
 import { sha256 } from './formats/files'
@@ -30,16 +30,18 @@ port.onmessage = ({ data }) => {
 }
 
 /** The engine compiles what it has seen run often; a turn is short, and a real job goes before the next. */
-async function rehearse({ rehearse: { readings, procedure } }: Rehearsal): Promise<void> {
-  const input = { readings: [{ ...readings, sha256: '' }], procedure }
-  let result = run(input)
-  for (let turn = 1; turn < REHEARSAL_TURNS && jobs === 0; turn++) {
-    await new Promise((resolve) => setTimeout(resolve))
-    if (jobs === 0) result = run(input)
+async function rehearse({ rehearse: { lots, procedure } }: Rehearsal): Promise<void> {
+  let result: RunResult = { analysis: null, problems: [] }
+  for (const lot of lots) {
+    const input = { readings: [{ ...lot, sha256: '' }], procedure }
+    for (let turn = 0; turn < TURNS_A_LOT && jobs === 0; turn++) {
+      result = run(input)
+      await new Promise((resolve) => setTimeout(resolve))
+    }
   }
   port.postMessage({ kind: 'rehearsed', result })
 }
-const REHEARSAL_TURNS = 14
+const TURNS_A_LOT = 8
 
 async function answer({ added, dropped, readings, procedure, excluded }: Job): Promise<void> {
   for (const id of dropped) kept.delete(id)

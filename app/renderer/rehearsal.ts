@@ -11,14 +11,15 @@ import { mapLayer } from './figures/layers'
 import { lotPictures } from './figures/lot-pictures'
 import { paintSmallMap } from './figures/paint-small-map'
 
-const WAFERS = 16
+/** A few wafers first, since the first turns are slow; then as many as a cassette holds. */
+const WAFERS = [4, 25]
 const RINGS = 3
 const CANVAS_px = 64
 const PAINTING_TURNS = 24
 
 /** Call when the window is at rest. */
 export async function rehearse(): Promise<void> {
-  const found = await lotAnalyzer.rehearse(rehearsalReadings(), rehearsalProcedure())
+  const found = await lotAnalyzer.rehearse(WAFERS.map(rehearsalReadings), rehearsalProcedure())
   if (found?.analysis) await paintAside(found.analysis)
 }
 
@@ -35,9 +36,9 @@ async function paintAside(analysis: LotAnalysis): Promise<void> {
   }
 }
 
-export function rehearsalReadings(): OpenedFile {
+export function rehearsalReadings(wafers: number): OpenedFile {
   const rows = ['lot: rehearsal', '', 'wafer,slot,site,x_mm,y_mm,current_A,voltage_V,current_rev_A,voltage_rev_V,temperature_C,time']
-  for (let wafer = 1; wafer <= WAFERS; wafer++) {
+  for (let wafer = 1; wafer <= wafers; wafer++) {
     for (let ring = 0, site = 0; ring <= RINGS; ring++) {
       for (let k = 0; k < Math.max(1, 8 * ring); k++) {
         const angle = (2 * Math.PI * k) / (8 * ring || 1)
