@@ -111,7 +111,7 @@ function comparePlain(): { us: number; sheetDiffers: number; concentrationDiffer
 
 const asked = process.argv.slice(2).map(Number)
 if (asked.some((sites) => !(sites >= 1 && sites <= 6e6))) {
-  console.error('npm run bench -- SITES ...: each from 1 to 6000000 (a text of more is longer than a string can be)')
+  console.error('npm run bench -- SITES ...: each from 1 to 6000000')
   process.exit(2)
 }
 console.log('sites      bare parse    pipeline    ratio    per site   peak memory, the text and its bytes among it')

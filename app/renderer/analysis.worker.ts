@@ -22,7 +22,8 @@ let jobs = 0
 
 port.onmessage = ({ data }) => {
   const failed = (error: unknown) => port.postMessage({ kind: 'failed', why: String(error) })
-  if ('rehearse' in data) void rehearse(data).catch(failed)
+  // A rehearsal that fails is none; it must not be taken for the job that may have come meanwhile.
+  if ('rehearse' in data) void rehearse(data).catch(() => port.postMessage({ kind: 'rehearsed', result: NOTHING }))
   else {
     jobs++
     answer(data).catch(failed)
@@ -31,7 +32,7 @@ port.onmessage = ({ data }) => {
 
 /** The engine compiles what it has seen run often; a turn is short, and a real job goes before the next. */
 async function rehearse({ rehearse: { lots, procedure } }: Rehearsal): Promise<void> {
-  let result: RunResult = { analysis: null, problems: [] }
+  let result = NOTHING
   for (const lot of lots) {
     const input = { readings: [{ ...lot, sha256: '' }], procedure }
     for (let turn = 0; turn < TURNS_A_LOT && jobs === 0; turn++) {
@@ -39,9 +40,11 @@ async function rehearse({ rehearse: { lots, procedure } }: Rehearsal): Promise<v
       await new Promise((resolve) => setTimeout(resolve))
     }
   }
-  port.postMessage({ kind: 'rehearsed', result })
+  // Once there is a real lot, the page has better to do than to paint a made-up one.
+  port.postMessage({ kind: 'rehearsed', result: jobs === 0 ? result : NOTHING })
 }
 const TURNS_A_LOT = 8
+const NOTHING: RunResult = { analysis: null, problems: [] }
 
 async function answer({ added, dropped, readings, procedure, excluded }: Job): Promise<void> {
   for (const id of dropped) kept.delete(id)

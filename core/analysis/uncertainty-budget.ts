@@ -1,18 +1,14 @@
 /** From the lines of a budget to an expanded uncertainty, of a site or of a mean of sites. */
 import { normalQuantile } from '../numeric/normal'
 import { studentQuantile } from '../numeric/distributions'
+import type { Contribution } from './contributions'
 
 /** What one component does to the judged quantity. */
-export interface BudgetLine {
+export interface BudgetLine extends Pick<
+  Contribution,
+  'title' | 'shared' | 'u' | 'unit' | 'degreesOfFreedom' | 'evaluation'
+> {
   readonly component: string
-  readonly title: string
-  readonly shared: boolean
-  /** Standard uncertainty of the component itself, in `unit`. */
-  readonly u: number
-  readonly unit: string
-  /** Infinite where it is known well. */
-  readonly degreesOfFreedom: number
-  readonly evaluation: 'A' | 'B'
   /** What a unit of the component does to the judged quantity, relative [1/unit]. */
   readonly sensitivity: number
   /** Relative effect on the judged quantity: derivative times standard uncertainty, over the value [-]. */

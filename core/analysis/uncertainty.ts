@@ -23,6 +23,9 @@ export interface SiteUncertainties {
   readonly uIndependent: Float64Array
 }
 
+/**
+ * @param judged  which of the two quantities the shared and independent parts are of
+ */
 export function propagate(
   parts: readonly Contribution[],
   layer: LayerColumns,

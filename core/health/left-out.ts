@@ -2,7 +2,7 @@
 import { COMMON_PRACTICE, type HealthCheck, type HealthFinding, type HealthInput } from './finding'
 import { MOST_SITES } from './surface-residuals'
 
-export const leftOut: HealthCheck = { id: 'left-out', title: 'Wafers of too many sites to look at', look }
+export const leftOut: HealthCheck = { id: 'left-out', title: 'Number of sites', look }
 
 function look({ wafers }: HealthInput): readonly HealthFinding[] {
   const long = wafers.filter(({ rows }) => rows.length > MOST_SITES)

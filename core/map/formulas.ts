@@ -21,7 +21,7 @@ export const TREND = {
   title: 'Trend surface of the patterns',
   formula:
     'value = Σ a_j Z_j(r/R, θ) by least squares, Z_j orthonormal Zernike polynomials to degree 4; share of a pattern = its sequential sum of squares over the total',
-  where: 'tilt j = 1, 2; bowl j = 4; R the radius of the usable area',
+  where: 'tilt j = 1, 2; bowl j = 4; R the larger of the usable radius and that of the outermost site',
   source:
     'N. R. Draper, H. Smith, Applied Regression Analysis, 3rd ed. (1998) ch. 6 (from memory); Zernike polynomials',
 } as const satisfies Formula
